@@ -1,0 +1,13 @@
+import { defineConfig } from 'vitest/config'
+
+// astro:env reads the process; tests must never open a real data folder.
+process.env.DWELLHOUR_DATA_DIR = '/nonexistent-dwellhour-test-data'
+
+export default defineConfig({
+  test: {
+    include: ['tests/**/*.test.ts'],
+    exclude: ['tests/e2e/**'],
+    environment: 'node',
+    testTimeout: 20_000,
+  },
+})
