@@ -1,4 +1,6 @@
 /** What carries and protects a load, and the verdicts of screening it against a country's rule profile. */
+import type { Controller } from '../controller/types.ts'
+import type { TankSpec } from '../tank/types.ts'
 
 export type ProfileId = 'us-nec-2023' | 'gb-bs7671' | 'iec-60364'
 
@@ -56,4 +58,11 @@ export interface Check {
   readonly caution: string
   /** The limit is from memory: shown as "confirm against your code", never decides a pass alone. */
   readonly confirmAgainstCode: boolean
+}
+
+/** Everything installed in a unit, as one revision records it. */
+export interface Installation {
+  readonly load: { readonly kind: 'storage-heater'; readonly tank: TankSpec }
+  readonly controller: Controller
+  readonly circuit: Circuit
 }

@@ -1,0 +1,37 @@
+/** The edge of plain forms: an AppError becomes the result a page can show beside its fields. */
+import { ActionError, type ActionErrorCode } from 'astro:actions'
+import { AppError, type AppErrorCode, type FieldProblem } from './app-error.ts'
+import { logUnknown } from './to-response.ts'
+
+const ACTION_CODE_OF: Readonly<Record<AppErrorCode, ActionErrorCode>> = {
+  'not-signed-in': 'UNAUTHORIZED',
+  forbidden: 'FORBIDDEN',
+  'not-found': 'NOT_FOUND',
+  conflict: 'CONFLICT',
+  expired: 'GONE',
+  'too-large': 'CONTENT_TOO_LARGE',
+  invalid: 'UNPROCESSABLE_CONTENT',
+  limited: 'TOO_MANY_REQUESTS',
+}
+
+export type FormOutcome<T> =
+  { readonly ok: true; readonly value: T } | { readonly ok: false; readonly message: string; readonly fields: readonly FieldProblem[] }
+
+/** Field problems are a value for the form; everything else is an ActionError. */
+export async function runForm<T>(work: () => Promise<T>): Promise<FormOutcome<T>> {
+  try {
+    return { ok: true, value: await work() }
+  } catch (error) {
+    if (error instanceof AppError) {
+      if (error.code === 'not-found' || error.code === 'forbidden' || error.code === 'not-signed-in') {
+        throw new ActionError({ code: ACTION_CODE_OF[error.code], message: error.message })
+      }
+      return { ok: false, message: error.message, fields: error.details.fields ?? [] }
+    }
+    const errorId = logUnknown(error)
+    throw new ActionError({
+      code: 'INTERNAL_SERVER_ERROR',
+      message: `Something failed here. Nothing was changed. Its id in the log is ${errorId}.`,
+    })
+  }
+}
