@@ -46,7 +46,7 @@ interface DaySteps {
   readonly toElapsedMin: (minuteOfDay: number) => number
 }
 
-/** On-intervals that touch the day, yesterday's over midnight included, clipped to `[−720, 2,160)`, in order, merged. */
+/** On-intervals of the day and of the day before it (negative minutes), in order, merged. */
 function dayIntervals({ steps, day, aheadMin, toElapsedMin }: DaySteps): readonly MinuteInterval[] {
   const found: MinuteInterval[] = []
   for (const shift of [-1, 0]) {
@@ -56,7 +56,7 @@ function dayIntervals({ steps, day, aheadMin, toElapsedMin }: DaySteps): readonl
       // A clock that is ahead switches early.
       const onMin = step.onMin - aheadMin + shift * MIN_PER_DAY
       const offMin = step.offMin - aheadMin + shift * MIN_PER_DAY
-      if (offMin > 0 || shift === 0) found.push({ startMin: elapsed(onMin, toElapsedMin), endMin: elapsed(offMin, toElapsedMin) })
+      found.push({ startMin: elapsed(onMin, toElapsedMin), endMin: elapsed(offMin, toElapsedMin) })
     }
   }
   return merge(found)
