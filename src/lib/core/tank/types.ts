@@ -97,6 +97,8 @@ export interface Readiness {
   readonly energyInKwh: number
   readonly energyDeliveredKwh: number
   readonly energyLostKwh: number
+  /** When the element is really on, with the run to expect. */
+  readonly heating: readonly (MinuteInterval & { readonly powerW: number })[]
   /** Sampled every `sampleMin` over the day for charts. */
   readonly trace: {
     readonly sampleMin: number

@@ -1,0 +1,134 @@
+/** What is said about one need once the day's runs stand: ready or short, by how much, from when, and the window of its run. */
+import type { MinuteInterval } from '../time/types.ts'
+import { type Cycle, drawsOf, earliestMin, minutesWanted, needEndMin } from './cycle.ts'
+import { SERVED_MARGIN_K, WINDOW_LENGTH_MIN } from './defaults.ts'
+import { nextBestReadyBy } from './next-best.ts'
+import type { Plan } from './readiness.ts'
+import { simulate } from './simulate.ts'
+import type { StartChoice } from './start-by.ts'
+import type { NeedOutcome, ShowerNeed, UnitDay } from './types.ts'
+
+interface NeedCase {
+  readonly day: UnitDay
+  readonly cycle: Cycle
+  readonly index: number
+  readonly need: ShowerNeed
+  readonly served: number
+  /** Shortest sufficient run, or `null`. */
+  readonly required: number | null
+  readonly plan: Plan
+}
+
+export function needOutcome({ day, cycle, index, need, served, required, plan }: NeedCase): NeedOutcome {
+  const wanted = minutesWanted(need)
+  const ready = served >= wanted - 1e-6
+  const impossible = cannotEver(day, need)
+  const chosenRunMin = day.runs.kind === 'pressed' ? day.runs.guaranteedMin : clockedMin({ cycle, index, need, on: day.runs.onIntervals })
+  const own = runOf({ day, cycle, index, need, choice: plan.choices[index] })
+  const status = ready ? 'ready' : impossible || required === null ? 'impossible' : 'short'
+  // A short clocked run may be long enough and yet come at the wrong hour: it is short by at least a minute.
+  const shortfallMin = status === 'short' && required !== null ? Math.max(1, Math.ceil(required - chosenRunMin)) : 0
+  const longestMin = day.runs.kind === 'pressed' ? (day.runs.longestMin ?? day.runs.expectedMin) : 0
+  return {
+    need,
+    status,
+    reason: reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked: day.runs.kind === 'clocked' }),
+    minutesWanted: wanted,
+    minutesServed: Math.min(served, wanted),
+    requiredRunMin: required,
+    chosenRunMin,
+    shortfallMin,
+    startByMin: own?.startMin ?? null,
+    runWindow: own && {
+      earliestStartMin: day.runs.kind === 'pressed' ? Math.max(earliestMin(cycle, index), own.startMin - WINDOW_LENGTH_MIN) : own.startMin,
+      latestStartMin: own.startMin,
+      endMin: day.runs.kind === 'pressed' ? own.startMin + longestMin : own.endMin,
+    },
+    run: own,
+    readyAtMin: ready && own ? readyAt({ cycle, need, own, plan }) : null,
+    nextBestReadyByMin: status === 'short' ? nextBestReadyBy(day, need) : [],
+  }
+}
+
+/** Why no run whatever could serve the need, or `null`. */
+export function cannotEver({ tank }: UnitDay, need: ShowerNeed): string | null {
+  if (!tank.upperElement && !tank.lowerElement) return 'The tank has no element on record.'
+  if (tank.setPointC < need.useTemperatureC - SERVED_MARGIN_K)
+    return `The thermostat is set to ${tank.setPointC} °C, below the ${need.useTemperatureC} °C wanted.`
+  return null
+}
+
+interface Reason {
+  readonly status: NeedOutcome['status']
+  readonly impossible: string | null
+  readonly required: number | null
+  readonly chosenRunMin: number
+  readonly shortfallMin: number
+  readonly clocked: boolean
+}
+
+function reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked }: Reason): string {
+  if (status === 'ready') return ''
+  if (impossible) return impossible
+  if (required === null) return 'No run of up to 12 hours serves this: the tank is too small for it.'
+  const chosen = Math.floor(chosenRunMin)
+  if (clocked && chosen >= required) return `The switch is on for ${chosen} min before the need, but not at the right hours.`
+  return `Needs a run of ${required} min; ${clocked ? 'the switch is on for' : 'the timer can be counted on for'} ${chosen} min: ${shortfallMin} min short.`
+}
+
+interface OwnRun {
+  readonly day: UnitDay
+  readonly cycle: Cycle
+  readonly index: number
+  readonly need: ShowerNeed
+  readonly choice: StartChoice | undefined
+}
+
+function runOf({ day, cycle, index, need, choice }: OwnRun): MinuteInterval | null {
+  if (day.runs.kind === 'pressed') return choice ? { startMin: choice.startMin, endMin: choice.startMin + day.runs.expectedMin } : null
+  const from = earliestMin(cycle, index)
+  return day.runs.onIntervals.filter((on) => on.endMin > from && on.startMin < needEndMin(need)).at(-1) ?? null
+}
+
+/** On-time of a clock between the need before and the end of this one. */
+function clockedMin({
+  cycle,
+  index,
+  need,
+  on,
+}: {
+  readonly cycle: Cycle
+  readonly index: number
+  readonly need: ShowerNeed
+  readonly on: readonly MinuteInterval[]
+}): number {
+  const from = earliestMin(cycle, index)
+  return on.reduce((sum, interval) => sum + Math.max(0, Math.min(interval.endMin, needEndMin(need)) - Math.max(interval.startMin, from)), 0)
+}
+
+/** First minute from which the outlet stays warm enough to begin, in the plan's own simulation; the need's start at the latest. */
+function readyAt({
+  cycle,
+  need,
+  own,
+  plan,
+}: {
+  readonly cycle: Cycle
+  readonly need: ShowerNeed
+  readonly own: MinuteInterval
+  readonly plan: Plan
+}): number {
+  let readyMin: number | null = null
+  simulate(cycle.tank, plan.state, {
+    startMin: cycle.startMin,
+    endMin: Math.max(need.readyByMin, cycle.startMin + 1),
+    on: plan.on,
+    draws: cycle.needs.filter((other) => other.readyByMin < need.readyByMin).flatMap(drawsOf),
+    sample: (minute, state) => {
+      const warm = (state.nodesC[0] ?? 0) >= need.useTemperatureC - SERVED_MARGIN_K
+      if (!warm) readyMin = null
+      else if (minute >= own.startMin && readyMin === null) readyMin = minute
+    },
+  })
+  return Math.min(readyMin ?? need.readyByMin, need.readyByMin)
+}
