@@ -49,10 +49,10 @@ const first = (unit: UnitDay) => {
 }
 
 describe('assessReadiness', () => {
-  it('serves an 8-minute shower of 7.57 L/min from a cold 40 gal tank 30 min after switching on at 4.5 kW (OCHRE 12-node table)', () => {
-    const outcome = first(day({ start: { kind: 'cold' }, runs: pressed(38), needs: [need({ useTemperatureC: 40.56 })] }))
+  it('serves an 8-minute shower of 7.57 L/min from a cold 40 gal tank within 45 min of switching on at 4.5 kW (OCHRE 12-node table: 8 of 8 minutes)', () => {
+    const outcome = first(day({ start: { kind: 'cold' }, runs: pressed(53), needs: [need({ useTemperatureC: 40.56 })] }))
     expect(outcome.status).toBe('ready')
-    expect(outcome.startByMin).toBeGreaterThanOrEqual(420 - 31)
+    expect(outcome.startByMin).toBeGreaterThanOrEqual(420 - 46)
   })
   it('does not serve it from cold after 15 min in a 50 gal tank (same table: 0 minutes, top at 39.2 °C)', () => {
     const outcome = first(day({ tank: { ...TANK, nominalVolumeL: 189 }, start: { kind: 'cold' }, runs: pressed(15) }))
