@@ -8,8 +8,6 @@ export interface HygieneFinding {
   /** Share of the week the coldest node spent in the growth range. */
   readonly growthRangeFraction: number
   readonly growthRangeHours: number
-  /** Run that would pasteurise, from the week's coldest state; `null` with reason when the set point forbids it. */
-  readonly pasteurisingRunMin: number | null
   readonly reason: string
   readonly sources: readonly string[]
 }
