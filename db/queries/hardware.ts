@@ -116,14 +116,24 @@ export async function listCurrentHardware(db: OrgDb, propertyId: PropertyId): Pr
     ])
     .orderBy('measured_duration.measured_at_ms')
     .execute()
-  const rowsByUnit = Map.groupBy(rows, (row) => row.unit_id)
-  const readingsByUnit = Map.groupBy(readings, (reading) => reading.unit_id)
+  const rowsByUnit = byUnit(rows)
+  const readingsByUnit = byUnit(readings)
   const current = new Map<UnitId, HardwareRecord>()
   for (const [unitId, revisions] of rowsByUnit) {
     const newest = toRecords(revisions, readingsByUnit.get(unitId) ?? []).at(-1)
     if (newest) current.set(unitId, newest)
   }
   return current
+}
+
+function byUnit<Row extends { readonly unit_id: UnitId }>(rows: readonly Row[]): ReadonlyMap<UnitId, readonly Row[]> {
+  const grouped = new Map<UnitId, Row[]>()
+  for (const row of rows) {
+    const group = grouped.get(row.unit_id)
+    if (group) group.push(row)
+    else grouped.set(row.unit_id, [row])
+  }
+  return grouped
 }
 
 export interface NewRevision {
