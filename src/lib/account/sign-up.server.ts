@@ -1,0 +1,62 @@
+/** Signs a person up and mails the confirmation link; an address that is known gets a mail that says so, and the page the same answer. */
+import { addAccountToken, addPerson, changePerson, type Connection, findPersonByEmail } from '#db/queries/account.ts'
+import { hashToken } from '#lib/auth/kysely-adapter.server.ts'
+import { hashPassword } from '#lib/auth/password.server.ts'
+import { processConfig } from '#lib/config.server.ts'
+import { parseInput } from '#lib/http/parse.ts'
+import { letter } from '#lib/mail/letter.ts'
+import { queueAccountMail } from '#lib/mail/queue-message.server.ts'
+import { signUpSchema } from './schemas.ts'
+import { CONFIRM_HOURS, expiryMs, newToken } from './tokens.server.ts'
+
+export async function signUp(db: Connection, { input, nowMs }: { readonly input: unknown; readonly nowMs: number }): Promise<void> {
+  const { name, email, password } = parseInput(signUpSchema, input)
+  const passwordHash = await hashPassword(password)
+  const { baseUrl } = processConfig()
+  await db.transaction().execute(async (trx) => {
+    const known = await findPersonByEmail(trx, email)
+    if (known?.email_confirmed_at_ms) {
+      const { text, html } = letter({
+        title: 'You already have an account',
+        paragraphs: ['Somebody, perhaps you, signed up with this address. You have an account already, so nothing was changed.'],
+        actions: [{ label: 'Sign in', url: `${baseUrl}/sign-in` }],
+        footer: ['If it was not you, there is nothing to do.'],
+      })
+      await queueAccountMail(trx, {
+        toEmail: email,
+        kind: 'confirm',
+        cause: `known:${nowMs}`,
+        subject: 'You already have a Dwellhour account',
+        text,
+        html,
+        nowMs,
+      })
+      return
+    }
+    const personId = known?.id ?? (await addPerson(trx, { email, name, passwordHash, emailConfirmedAtMs: null, createdAtMs: nowMs }))
+    if (known) await changePerson(trx, known.id, { name, passwordHash })
+    const token = newToken()
+    await addAccountToken(trx, {
+      tokenHash: hashToken(token),
+      personId,
+      purpose: 'confirm',
+      expiresAtMs: expiryMs(nowMs, CONFIRM_HOURS),
+      createdAtMs: nowMs,
+    })
+    const { text, html } = letter({
+      title: 'Confirm your address',
+      paragraphs: ['Press the button to confirm that this address is yours. Then you can sign in.'],
+      actions: [{ label: 'Confirm my address', url: `${baseUrl}/confirm/${token}` }],
+      footer: [`The link works once, for ${CONFIRM_HOURS} hours.`, 'If you did not sign up, ignore this mail.'],
+    })
+    await queueAccountMail(trx, {
+      toEmail: email,
+      kind: 'confirm',
+      cause: hashToken(token),
+      subject: 'Confirm your address for Dwellhour',
+      text,
+      html,
+      nowMs,
+    })
+  })
+}

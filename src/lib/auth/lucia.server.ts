@@ -1,0 +1,28 @@
+/** Sessions of signed-in people: Lucia with the Kysely store; the cookie is http-only, same-site, secure where the address is https. */
+import { Lucia, TimeSpan } from 'lucia'
+import { processConfig } from '#lib/config.server.ts'
+import { database } from '#lib/database.server.ts'
+import { KyselyAdapter } from './kysely-adapter.server.ts'
+
+export const SESSION_DAYS = 30
+
+const make = () =>
+  new Lucia(new KyselyAdapter(database), {
+    sessionExpiresIn: new TimeSpan(SESSION_DAYS, 'd'),
+    sessionCookie: {
+      name: 'dwellhour_session',
+      attributes: { sameSite: 'lax', secure: processConfig().baseUrl.startsWith('https:'), path: '/' },
+    },
+    getUserAttributes: ({ email, name }) => ({ email, name }),
+  })
+
+let made: ReturnType<typeof make> | null = null
+/** Made at first use, so that a build needs no settings. */
+export const lucia = () => (made ??= make())
+
+declare module 'lucia' {
+  interface Register {
+    Lucia: ReturnType<typeof make>
+    DatabaseUserAttributes: { readonly email: string; readonly name: string }
+  }
+}
