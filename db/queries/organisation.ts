@@ -77,10 +77,9 @@ export interface Access {
   readonly role: 'electrician' | 'owner'
 }
 
-export async function listAccess(db: OrgDb, propertyId?: PropertyId): Promise<readonly Access[]> {
+export async function listAccess(db: OrgDb): Promise<readonly Access[]> {
   const rows = await db
     .selectFrom('property_access')
-    .$if(propertyId !== undefined, (query) => query.where('property_access.property_id', '=', propertyId as PropertyId))
     .select(['property_access.person_id', 'property_access.property_id', 'property_access.role'])
     .execute()
   return rows.map((row) => ({ personId: row.person_id, propertyId: row.property_id, role: row.role }))

@@ -1,0 +1,77 @@
+/** Invites a person by e-mail to a role: the link expires, works once, and only its hash is stored. */
+import { type InvitationId, parsePropertyId, parseTenancyId } from '#db/ids.ts'
+import { inTransaction, type OrgDb } from '#db/org-db.ts'
+import { addAudit } from '#db/queries/audit.ts'
+import { addInvitation } from '#db/queries/organisation.ts'
+import { findProperty } from '#db/queries/property.ts'
+import { findTenancy } from '#db/queries/tenancy.ts'
+import { expiryMs, newToken } from '#lib/account/tokens.server.ts'
+import { hashToken } from '#lib/auth/kysely-adapter.server.ts'
+import { actingPerson, requireRole } from '#lib/auth/permission.ts'
+import { processConfig } from '#lib/config.server.ts'
+import { invalid, notFound } from '#lib/http/app-error.ts'
+import { parseInput } from '#lib/http/parse.ts'
+import { letter } from '#lib/mail/letter.ts'
+import { queueMessage } from '#lib/mail/queue-message.server.ts'
+import { INVITATION_DAYS, inviteSchema } from './schemas.ts'
+
+const WHAT: Readonly<Record<string, string>> = {
+  landlord: 'to run its buildings',
+  tenant: 'to set when you want hot water, and to be told when to start your heater',
+  electrician: 'to see the units that need you and record what is installed',
+  owner: 'to receive one page a month about cost, energy and what was fixed',
+}
+
+export async function invitePerson(
+  db: OrgDb,
+  { input, organisationName, nowMs }: { readonly input: unknown; readonly organisationName: string; readonly nowMs: number },
+): Promise<InvitationId> {
+  requireRole(db, ['landlord'], 'invite people')
+  const fields = parseInput(inviteSchema, input)
+  const propertyId = fields.propertyId ? parsePropertyId(fields.propertyId) : null
+  const tenancyId = fields.tenancyId ? parseTenancyId(fields.tenancyId) : null
+  if (fields.role === 'tenant' && !tenancyId)
+    throw invalid([{ field: 'role', message: 'A tenant is invited from their unit’s page, so that the invitation knows the unit.' }])
+  if ((fields.role === 'electrician' || fields.role === 'owner') && !propertyId)
+    throw invalid([{ field: 'propertyId', message: 'Choose the property they may see.' }])
+  return inTransaction(db, async (trx) => {
+    const property = propertyId ? await findProperty(trx, propertyId) : null
+    const tenancy = tenancyId ? await findTenancy(trx, tenancyId) : null
+    if (propertyId && !property) throw notFound('property')
+    if (tenancyId && !tenancy) throw notFound('tenancy')
+    const token = newToken()
+    const expiresAtMs = expiryMs(nowMs, INVITATION_DAYS * 24)
+    const { email, name, role } = fields
+    const id = await addInvitation(trx, {
+      email,
+      name,
+      role,
+      propertyId,
+      tenancyId,
+      tokenHash: hashToken(token),
+      createdAtMs: nowMs,
+      expiresAtMs,
+      invitedBy: actingPerson(db),
+    })
+    const { text, html } = letter({
+      title: `${organisationName} invites you`,
+      paragraphs: [`Hello ${name}, ${organisationName} invites you ${WHAT[role] ?? ''}${property ? ` at ${property.name}` : ''}.`],
+      actions: [{ label: 'Accept the invitation', url: `${processConfig().baseUrl}/invitation/${token}` }],
+      footer: [`The link works once, for ${INVITATION_DAYS} days.`],
+    })
+    await queueMessage(trx, {
+      propertyId,
+      unitId: tenancy?.unitId ?? null,
+      personId: null,
+      toEmail: email,
+      kind: 'invitation',
+      cause: id,
+      subject: `${organisationName} invites you to Dwellhour`,
+      text,
+      html,
+      nowMs,
+    })
+    await addAudit(trx, { atMs: nowMs, action: 'invite', subjectKind: 'invitation', subjectId: id, after: { role, propertyId, tenancyId } })
+    return id
+  })
+}
