@@ -1,0 +1,39 @@
+/** Units of a property through the model, one by one, outside any transaction; a unit that cannot be computed is an answer, not an end. */
+import { setImmediate } from 'node:timers/promises'
+import type { Assess } from './assessment-cache.ts'
+import { evaluateDay } from './evaluate-day.ts'
+import type { Finding } from './evidence.ts'
+import { unitFindings } from './findings.ts'
+import type { PropertyInputs, UnitInputs } from './load-inputs.server.ts'
+import type { DayResult } from './types.ts'
+import { durationOf } from './unit-day.ts'
+
+export type UnitResult =
+  | {
+      readonly status: 'evaluated'
+      readonly inputs: UnitInputs
+      readonly days: readonly DayResult[]
+      readonly findings: readonly Finding[]
+    }
+  | { readonly status: 'failed'; readonly inputs: UnitInputs; readonly error: unknown }
+
+export async function* evaluateUnits({ site, contexts, units }: PropertyInputs, assess: Assess): AsyncGenerator<UnitResult> {
+  for (const inputs of units) {
+    // The model is synchronous; between units other work of the process gets its turn.
+    await setImmediate()
+    yield evaluateOne({ site, contexts }, inputs, assess)
+  }
+}
+
+export function evaluateOne({ site, contexts }: Pick<PropertyInputs, 'site' | 'contexts'>, inputs: UnitInputs, assess: Assess): UnitResult {
+  const { hardware, wants } = inputs
+  try {
+    const duration = hardware && durationOf(hardware)
+    const days = contexts.map((context, index) =>
+      evaluateDay({ site, context, hardware, duration, wants: wants[index] ?? { kind: 'nobody' } }, assess),
+    )
+    return { status: 'evaluated', inputs, days, findings: unitFindings({ site, hardware, duration, wants, days }) }
+  } catch (error) {
+    return { status: 'failed', inputs, error }
+  }
+}

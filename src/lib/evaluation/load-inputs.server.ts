@@ -1,0 +1,102 @@
+/** Reads what an evaluation needs: a whole property in six statements whatever its size, or one unit alone. */
+import type { TenancyId, UnitId } from '#db/ids.ts'
+import type { OrgDb } from '#db/org-db.ts'
+import { currentHardware, type HardwareRecord, listCurrentHardware } from '#db/queries/hardware.ts'
+import { currentPreferences, findPreference, type Preference } from '#db/queries/preference.ts'
+import type { Property } from '#db/queries/property.ts'
+import { findTariff } from '#db/queries/tariff.ts'
+import { listTenancies, listTenanciesBetween, type Tenancy } from '#db/queries/tenancy.ts'
+import { listUnits, type Unit } from '#db/queries/unit.ts'
+import { addDays, civilOf } from '#lib/core/time/civil.ts'
+import type { Day } from '#lib/core/time/types.ts'
+import { dayContext } from './day-context.ts'
+import type { DayContext, Site, UnitHardware, Wants } from './types.ts'
+
+/** Today and the seven local days after it. */
+export const HORIZON_DAYS = 8
+
+export interface UnitInputs {
+  readonly unit: Unit
+  readonly hardware: UnitHardware | null
+  /** In step with the contexts. */
+  readonly wants: readonly Wants[]
+}
+export interface PropertyInputs {
+  readonly property: Property
+  readonly site: Site
+  readonly contexts: readonly DayContext[]
+  readonly fromDay: Day
+  /** Exclusive. */
+  readonly toDay: Day
+  readonly units: readonly UnitInputs[]
+}
+
+export async function siteOf(db: OrgDb, property: Property): Promise<Site> {
+  const { zone, supplyVoltageV, phases, serviceRatingA, baseLoadW, climate, ruleProfile, hygienePolicy, tariffId } = property
+  const tariff = tariffId ? await findTariff(db, tariffId) : null
+  return {
+    zone,
+    supplyVoltageV,
+    phases: phases === 3 ? 3 : 1,
+    serviceRatingA,
+    baseLoadW,
+    climate,
+    ruleProfile,
+    hygienePolicy,
+    tariff,
+  }
+}
+
+interface Horizon {
+  readonly property: Property
+  readonly nowMs: number
+  readonly days: number
+}
+
+async function horizon(db: OrgDb, { property, nowMs, days }: Horizon): Promise<Omit<PropertyInputs, 'units'>> {
+  const site = await siteOf(db, property)
+  const fromDay = civilOf(nowMs, property.zone).day
+  const contexts = Array.from({ length: days }, (_, index) => dayContext(site, addDays(fromDay, index)))
+  return { property, site, contexts, fromDay, toDay: addDays(fromDay, days) }
+}
+
+export async function propertyInputs(db: OrgDb, asked: Horizon): Promise<PropertyInputs> {
+  const frame = await horizon(db, asked)
+  const { id } = asked.property
+  const units = await listUnits(db, id)
+  const hardware = await listCurrentHardware(db, id)
+  const tenancies = await listTenanciesBetween(db, id, { fromDay: frame.fromDay, toDay: frame.toDay })
+  const preferences = await currentPreferences(db, id)
+  const byUnit = new Map<UnitId, Tenancy[]>()
+  for (const tenancy of tenancies) byUnit.set(tenancy.unitId, [...(byUnit.get(tenancy.unitId) ?? []), tenancy])
+  return {
+    ...frame,
+    units: units.map((unit) => ({
+      unit,
+      hardware: toHardware(hardware.get(unit.id) ?? null),
+      wants: frame.contexts.map((context) => wantsOn(context.day, byUnit.get(unit.id) ?? [], preferences)),
+    })),
+  }
+}
+
+export async function unitInputs(db: OrgDb, asked: Horizon, unit: Unit): Promise<PropertyInputs> {
+  const frame = await horizon(db, asked)
+  const hardware = toHardware(await currentHardware(db, unit.id))
+  const tenancies = await listTenancies(db, unit.id)
+  const preferences = new Map<TenancyId, Preference>()
+  for (const tenancy of tenancies) {
+    const preference = await findPreference(db, tenancy.id)
+    if (preference) preferences.set(tenancy.id, preference)
+  }
+  return { ...frame, units: [{ unit, hardware, wants: frame.contexts.map((context) => wantsOn(context.day, tenancies, preferences)) }] }
+}
+
+const toHardware = (record: HardwareRecord | null): UnitHardware | null =>
+  record && { recordId: record.id, installation: record.installation, measured: record.measured, recordedAtMs: record.recordedAtMs }
+
+function wantsOn(day: Day, tenancies: readonly Tenancy[], preferences: ReadonlyMap<TenancyId, Preference>): Wants {
+  const tenancy = tenancies.find((one) => one.fromDay <= day && (one.toDay === null || day < one.toDay))
+  if (!tenancy) return { kind: 'nobody' }
+  const preference = preferences.get(tenancy.id)
+  return preference ? { kind: 'week', week: preference.week, willing: preference.willing } : { kind: 'not-said' }
+}
