@@ -11,5 +11,7 @@ declare namespace App {
     db: import('#db/org-db.ts').OrgDb | null
     /** The instant at which the request came in. */
     nowMs: number
+    /** Set when an unexpected error is shown: its id in the log. */
+    errorId?: string
   }
 }

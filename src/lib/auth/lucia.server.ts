@@ -22,7 +22,7 @@ export const lucia = () => (made ??= make())
 
 declare module 'lucia' {
   interface Register {
-    Lucia: ReturnType<typeof make>
+    Lucia: Lucia<Record<never, never>, { readonly email: string; readonly name: string }>
     DatabaseUserAttributes: { readonly email: string; readonly name: string }
   }
 }

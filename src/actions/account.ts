@@ -1,0 +1,67 @@
+/** Forms of accounts: sign up, in and out, reset, found an organisation, accept an invitation. They work without client script. */
+import { defineAction, type ActionAPIContext } from 'astro:actions'
+import { createOrganisation } from '#lib/organisation/create-organisation.server.ts'
+import { AppError } from '#lib/http/app-error.ts'
+import { acceptInvitation } from '#lib/invitation/accept-invitation.server.ts'
+import { startSession } from '#lib/auth/start-session.server.ts'
+import { lucia } from '#lib/auth/lucia.server.ts'
+import { database } from '#lib/database.server.ts'
+import { formFields } from '#lib/http/form.ts'
+import { runForm } from '#lib/http/to-action-error.ts'
+import { requestReset, resetPassword } from '#lib/account/reset-password.server.ts'
+import { signIn } from '#lib/account/sign-in.server.ts'
+import { signUp } from '#lib/account/sign-up.server.ts'
+
+const signedIn = ({ locals }: ActionAPIContext) => {
+  if (!locals.user) throw new AppError('not-signed-in', 'Your session has ended. Sign in again.')
+  return locals.user
+}
+
+export const account = {
+  signUp: defineAction({
+    accept: 'form',
+    handler: (form, { locals }) => runForm(() => signUp(database(), { input: formFields(form), nowMs: locals.nowMs })),
+  }),
+  signIn: defineAction({
+    accept: 'form',
+    handler: (form, context) =>
+      runForm(async () => {
+        const personId = await signIn(database(), { input: formFields(form), address: context.clientAddress, nowMs: context.locals.nowMs })
+        await startSession(context.cookies, personId)
+      }),
+  }),
+  requestReset: defineAction({
+    accept: 'form',
+    handler: (form, { locals }) => runForm(() => requestReset(database(), { input: formFields(form), nowMs: locals.nowMs })),
+  }),
+  resetPassword: defineAction({
+    accept: 'form',
+    handler: (form, { locals }) => runForm(() => resetPassword(database(), { input: formFields(form), nowMs: locals.nowMs })),
+  }),
+  signOutEverywhere: defineAction({
+    accept: 'form',
+    handler: (_form, context) =>
+      runForm(async () => {
+        await lucia().invalidateUserSessions(signedIn(context).id)
+        const blank = lucia().createBlankSessionCookie()
+        context.cookies.set(blank.name, blank.value, blank.attributes)
+      }),
+  }),
+  createOrganisation: defineAction({
+    accept: 'form',
+    handler: (form, context) =>
+      runForm(async () =>
+        createOrganisation(database(), { personId: signedIn(context).id, input: formFields(form), nowMs: context.locals.nowMs }),
+      ),
+  }),
+  acceptInvitation: defineAction({
+    accept: 'form',
+    handler: (form, { locals, cookies }) =>
+      runForm(async () => {
+        const input = formFields(form)
+        const accepted = await acceptInvitation(database(), { token: input.token ?? '', signedIn: locals.user, input, nowMs: locals.nowMs })
+        if (!locals.user) await startSession(cookies, accepted.personId)
+        return { slug: accepted.slug }
+      }),
+  }),
+}
