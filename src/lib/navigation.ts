@@ -24,6 +24,7 @@ export function roomsFor({ slug, roles, property }: Place): readonly Room[] {
         { label: 'Units', href: `${house}/units` },
         { label: 'Flags', href: `${house}/flags` },
         { label: 'Tariff', href: `${house}/tariff` },
+        { label: 'Settings', href: `${house}/settings` },
       )
     } else {
       rooms.push({ label: 'Properties', href: `${root}/` })
