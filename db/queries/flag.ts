@@ -1,6 +1,6 @@
 /** Reads and writes of flags: findings about a unit or a property that somebody must act on. */
 import type { FlagKind } from '../enums.ts'
-import type { FlagId, PersonId, PropertyId, UnitId } from '../ids.ts'
+import type { FlagId, PersonId, PropertyId, UnitId, VisitId } from '../ids.ts'
 import { fromJson, toJson } from '../json.ts'
 import type { OrgDb, OrgTrx } from '../org-db.ts'
 import type { FlagRow, FlagTable } from '../tables/flag.ts'
@@ -194,7 +194,26 @@ export async function openFlagAgain(db: OrgTrx, id: FlagId): Promise<void> {
     .execute()
 }
 
-/** Lifts a dismissal before its day without opening the flag; used when another flag of its kind is already open. */
-export async function endDismissal(db: OrgTrx, id: FlagId, day: string): Promise<void> {
-  await db.updateTable('flag', { dismissed_until: day }).where('id', '=', id).execute()
+/** A visit that is planned for a flag. */
+export interface PlannedVisit {
+  readonly flagId: FlagId
+  readonly visitId: VisitId
+  readonly electricianName: string
+  readonly dueDay: string | null
+}
+
+/** Planned visits of a property with the flags they answer, one row a flag. */
+export async function listPlannedVisits(db: OrgDb, propertyId: PropertyId): Promise<readonly PlannedVisit[]> {
+  const rows = await db
+    .selectFrom('visit_flag')
+    .innerJoin('visit', (join) =>
+      join.onRef('visit.organisation_id', '=', 'visit_flag.organisation_id').onRef('visit.id', '=', 'visit_flag.visit_id'),
+    )
+    .innerJoin('person', 'person.id', 'visit.electrician_id')
+    .where('visit.property_id', '=', propertyId)
+    .where('visit.state', '=', 'planned')
+    .select(['visit_flag.flag_id', 'visit.id', 'person.name', 'visit.due_day'])
+    .orderBy('visit.due_day')
+    .execute()
+  return rows.map((row) => ({ flagId: row.flag_id, visitId: row.id, electricianName: row.name, dueDay: row.due_day }))
 }
