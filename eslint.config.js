@@ -66,11 +66,14 @@ export default tseslint.config(
   {
     files: ['src/pages/**', 'src/components/**/*.astro', 'src/layouts/**', 'src/actions/**'],
     rules: {
-      'no-restricted-imports': [
+      '@typescript-eslint/no-restricted-imports': [
         'error',
         {
           patterns: [
-            to('^kysely$|^better-sqlite3$|^#db/(queries|connection)', 'Pages and actions call src/lib/<feature>; SQL stays in db.'),
+            {
+              ...to('^kysely$|^better-sqlite3$|^#db/(queries|connection)', 'Pages and actions call src/lib/<feature>; SQL stays in db.'),
+              allowTypeImports: true,
+            },
           ],
         },
       ],
