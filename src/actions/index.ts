@@ -1,6 +1,9 @@
 /** All plain forms of the product. */
 import { account } from './account.ts'
+import { flag } from './flag.ts'
 import { people } from './people.ts'
 import { property } from './property.ts'
+import { roster } from './roster.ts'
+import { tariff } from './tariff.ts'
 
-export const server = { account, people, property }
+export const server = { account, flag, people, property, roster, tariff }

@@ -6,3 +6,11 @@ export const formFields = (form: FormData): Record<string, string> =>
 export function safeNext(next: string | null): string | null {
   return next && /^\/(?![/\\])[^\s]*$/.test(next) && !next.startsWith('/sign-') ? next : null
 }
+
+/** A file's text, or what was pasted where no file was chosen. */
+export async function fileOrText(form: FormData, name: string): Promise<string> {
+  const file = form.get(`${name}-file`)
+  if (file instanceof File && file.size > 0) return file.text()
+  const pasted = form.get(name)
+  return typeof pasted === 'string' ? pasted : ''
+}

@@ -1,0 +1,22 @@
+/** A unit's line in the table and the words of its state. Plain values: islands import it. */
+import type { StripDay } from '#lib/strip/types.ts'
+
+export interface UnitLine {
+  readonly code: string
+  readonly href: string
+  readonly floor: number | null
+  readonly tenant: string
+  readonly controller: string
+  /** Elapsed minutes of tomorrow, for sorting; the words are what is shown. */
+  readonly startByMin: number | null
+  readonly readyBy: string
+  readonly startBy: string
+  readonly state: string
+  /** 0 dangerous … 4 nothing to do, for sorting. */
+  readonly urgency: number
+  readonly strip: StripDay | null
+}
+export interface UnitsPage {
+  readonly day: string
+  readonly units: readonly UnitLine[]
+}
