@@ -5,5 +5,6 @@ import { people } from './people.ts'
 import { property } from './property.ts'
 import { roster } from './roster.ts'
 import { tariff } from './tariff.ts'
+import { tenancy } from './tenancy.ts'
 
-export const server = { account, flag, people, property, roster, tariff }
+export const server = { account, flag, people, property, roster, tariff, tenancy }
