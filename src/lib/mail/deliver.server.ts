@@ -1,23 +1,31 @@
 /**
  * Delivers the outbox: at most once a letter. `sending` is committed before the SMTP dialogue and `sent` after it; a worker
- * that dies in between leaves `sending`, which the next start turns into `ambiguous`. A refusal for now (4xx, no
- * connection) is tried again later; a refusal for good (5xx) is `failed`.
+ * that dies in between leaves `sending`, which the next one turns into `ambiguous`. A refusal for now (4xx, no connection)
+ * is tried again later; a refusal for good (5xx) is `failed`. One worker delivers at a time, by a lease.
  */
 import type { Kysely } from 'kysely'
-import { claimDueLetter, type DueLetter, type Delivery, markInterrupted, settleLetter } from '#db/queries/mail.ts'
+import { changeLease, findLease, takeLease } from '#db/queries/job.ts'
+import { claimDueLetter, type Delivery, type DueLetter, hasWork, markInterrupted, settleLetter } from '#db/queries/outbox.ts'
 import type { Database } from '#db/schema.ts'
-import type { Transport } from './transport.server.ts'
+import { holderIsGone } from '#lib/jobs/holder.server.ts'
+import { log } from '#lib/log.server.ts'
+import { LETTER_DEADLINE_MS, type Transport } from './transport.server.ts'
 
-/** Five tries over about a day: 1, 5, 25 and 125 minutes, then 10 hours. */
-const MAX_ATTEMPTS = 6
+/** Six tries over about half a day: pauses of 1, 5, 25, 125 and 625 minutes. */
+export const MAX_ATTEMPTS = 6
 const FIRST_RETRY_MS = 60_000
 const RETRY_GROWTH = 5
+
+const OUTBOX_LEASE = { job: 'mail', scope: 'outbox', period: 'one at a time' } as const
+/** Renewed before each letter, so it outlasts one dialogue and a pause of the process. */
+const LEASE_MS = LETTER_DEADLINE_MS + 180_000
 
 export interface DeliverOptions {
   readonly db: Kysely<Database>
   readonly transport: Transport
+  readonly holder: string
   readonly now: () => number
-  /** Stops after this many letters, so that a tick stays short. */
+  /** Stops after this many letters, so that a round stays short. */
   readonly limit: number
 }
 export interface DeliverCounts {
@@ -27,46 +35,67 @@ export interface DeliverCounts {
   readonly ambiguous: number
 }
 
-export async function deliverMail({ db, transport, now, limit }: DeliverOptions): Promise<DeliverCounts> {
-  const counts = { sent: 0, retried: 0, failed: 0, ambiguous: 0 }
-  for (let letters = 0; letters < limit; letters++) {
-    const letter = await claimDueLetter(db, now())
-    if (!letter) break
-    const delivery = await attempt(letter, transport, now())
-    await settleLetter(db, letter, delivery)
-    counts[
-      delivery.state === 'queued' ? 'retried' : delivery.state === 'sent' ? 'sent' : delivery.state === 'ambiguous' ? 'ambiguous' : 'failed'
-    ] += 1
+const NOTHING: DeliverCounts = { sent: 0, retried: 0, failed: 0, ambiguous: 0 }
+
+/** One round: what is due now, at most `limit` letters. Answers zeros when another worker is delivering. */
+export async function deliverMail(options: DeliverOptions): Promise<DeliverCounts> {
+  const { db, transport, holder, now, limit } = options
+  if (!(await hasWork(db, now()))) return NOTHING
+  const interrupted = await takeOutbox(db, holder, now())
+  if (interrupted === null) return NOTHING
+  const counts = { ...NOTHING, ambiguous: interrupted }
+  try {
+    for (let letters = 0; letters < limit; letters++) {
+      if (!(await changeLease(db, { ...OUTBOX_LEASE, heldBy: holder }, { leaseUntilMs: now() + LEASE_MS }))) break
+      const letter = await claimDueLetter(db, now())
+      if (!letter) break
+      const delivery = await attempt(letter, transport, now)
+      await settleLetter(db, letter, delivery)
+      counts[COUNTED_AS[delivery.state]] += 1
+    }
+  } finally {
+    await changeLease(db, { ...OUTBOX_LEASE, heldBy: holder }, { leaseUntilMs: 0 })
   }
+  if (Object.values(counts).some((count) => count > 0)) log.info({ job: 'mail', counts }, 'post delivered')
   return counts
 }
 
-/** Run once when a worker starts, while no other worker sends. */
-export const settleInterrupted = (db: Kysely<Database>): Promise<number> => markInterrupted(db)
+/** The number of letters found interrupted, or `null` while somebody else delivers. */
+const takeOutbox = (db: Kysely<Database>, holder: string, nowMs: number): Promise<number | null> =>
+  db.transaction().execute(async (trx) => {
+    const lease = await findLease(trx, OUTBOX_LEASE)
+    if (lease && lease.leaseUntilMs > nowMs && !holderIsGone(lease.holder)) return null
+    await takeLease(trx, OUTBOX_LEASE, { organisationId: null, holder, leaseUntilMs: nowMs + LEASE_MS })
+    return markInterrupted(trx)
+  })
 
-async function attempt(letter: DueLetter, transport: Transport, nowMs: number): Promise<Delivery> {
-  const outcome = await transport(letter)
+type AttemptState = 'sent' | 'queued' | 'failed' | 'ambiguous'
+const COUNTED_AS: Readonly<Record<AttemptState, keyof DeliverCounts>> = {
+  sent: 'sent',
+  queued: 'retried',
+  failed: 'failed',
+  ambiguous: 'ambiguous',
+}
+
+async function attempt(letter: DueLetter, transport: Transport, now: () => number): Promise<Delivery & { readonly state: AttemptState }> {
+  const outcome = await transport.send(letter)
+  const nowMs = now()
+  const ended = { sentAtMs: null, nextAttemptAtMs: nowMs }
   switch (outcome.kind) {
     case 'sent':
-      return { state: 'sent', error: null, sentAtMs: nowMs, nextAttemptAtMs: nowMs }
+      return { ...ended, state: 'sent', error: null, sentAtMs: nowMs }
     case 'unknown':
-      return { state: 'ambiguous', error: outcome.reason, sentAtMs: null, nextAttemptAtMs: nowMs }
+      return { ...ended, state: 'ambiguous', error: outcome.reason }
     case 'refused':
-      return { state: 'failed', error: outcome.reason, sentAtMs: null, nextAttemptAtMs: nowMs }
-    case 'try-later': {
-      if (letter.attempts >= MAX_ATTEMPTS)
-        return {
-          state: 'failed',
-          error: `Given up after ${letter.attempts} tries: ${outcome.reason}`,
-          sentAtMs: null,
-          nextAttemptAtMs: nowMs,
-        }
-      return {
-        state: 'queued',
-        error: outcome.reason,
-        sentAtMs: null,
-        nextAttemptAtMs: nowMs + FIRST_RETRY_MS * RETRY_GROWTH ** (letter.attempts - 1),
-      }
-    }
+      return { ...ended, state: 'failed', error: outcome.reason }
+    case 'try-later':
+      return letter.attempts >= MAX_ATTEMPTS
+        ? { ...ended, state: 'failed', error: `Given up after ${letter.attempts} tries. ${outcome.reason}` }
+        : {
+            ...ended,
+            state: 'queued',
+            error: outcome.reason,
+            nextAttemptAtMs: nowMs + FIRST_RETRY_MS * RETRY_GROWTH ** (letter.attempts - 1),
+          }
   }
 }

@@ -1,7 +1,7 @@
 /** Puts a letter into the outbox inside the transaction of what caused it; the same recipient, kind and cause never twice. */
 import type { Transaction } from 'kysely'
 import type { OrgTrx } from '#db/org-db.ts'
-import { addAccountMail, addMessage, type Letter, type OrganisationLetter, type Queued } from '#db/queries/mail.ts'
+import { addAccountMail, addMessage, type Letter, type OrganisationLetter, type Queued } from '#db/queries/message.ts'
 import type { Database } from '#db/schema.ts'
 import { processConfig } from '#lib/config.server.ts'
 
