@@ -44,3 +44,7 @@ export async function organisationsForJob(db: Kysely<Database>, jobName: string)
   const rows = await db.selectFrom('organisation').select(['id', 'slug']).orderBy('id').execute()
   return rows.map((row) => ({ slug: row.slug, db: orgDb(db, mint(row.id, { kind: 'job', name: jobName })) }))
 }
+
+/** Scope of a signed link whose signature has been checked: it acts as the letter's own job, on what the link names. */
+export const openForLink = (db: Kysely<Database>, organisationId: OrganisationId): OrgDb =>
+  orgDb(db, mint(organisationId, { kind: 'job', name: 'signed-link' }))

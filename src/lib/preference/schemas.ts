@@ -35,3 +35,5 @@ export const willingSchema = z
   .array(z.strictObject({ fromMinuteOfDay: z.number().int().min(0).max(1_439), toMinuteOfDay: z.number().int().min(1).max(1_440) }))
   .max(4)
 export type Willing = z.infer<typeof willingSchema>
+
+export const preferenceSchema = z.strictObject({ week: weekSchema, willing: willingSchema })

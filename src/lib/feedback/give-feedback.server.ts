@@ -1,0 +1,28 @@
+/** A tenant's word on a day of their own tenancy: from the card when signed in, or from the signed link of a tip. */
+import type { TenancyId } from '#db/ids.ts'
+import { inTransaction, type OrgDb } from '#db/org-db.ts'
+import { addAudit } from '#db/queries/audit.ts'
+import { putFeedback } from '#db/queries/feedback.ts'
+import { findTenancy } from '#db/queries/tenancy.ts'
+import { parseInput } from '#lib/http/parse.ts'
+import { notFound } from '#lib/http/app-error.ts'
+import { feedbackSchema } from './schemas.ts'
+
+export interface GiveFeedback {
+  readonly tenancyId: TenancyId
+  readonly input: unknown
+  readonly nowMs: number
+}
+
+export async function giveFeedback(db: OrgDb, { tenancyId, input, nowMs }: GiveFeedback): Promise<void> {
+  const { day, verdict } = parseInput(feedbackSchema, input)
+  const { actor } = db.scope
+  await inTransaction(db, async (trx) => {
+    const tenancy = await findTenancy(trx, tenancyId)
+    // A job's scope stands for a verified link, which names the tenancy itself.
+    if (!tenancy || (actor.kind === 'person' && tenancy.personId !== actor.personId)) throw notFound('tenancy')
+    if (day < tenancy.fromDay || (tenancy.toDay !== null && day >= tenancy.toDay)) throw notFound('day of this tenancy')
+    await putFeedback(trx, { tenancyId, day, verdict }, nowMs)
+    await addAudit(trx, { atMs: nowMs, action: 'say', subjectKind: 'feedback', subjectId: tenancyId, after: { day, verdict } })
+  })
+}
