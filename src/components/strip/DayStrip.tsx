@@ -13,5 +13,5 @@ interface Props {
 export function DayStrip({ day, widthPx, labels = true, role = 'image' }: Props) {
   const svg = useMemo(() => dayStripSvg(day, { widthPx, colours: THEME_COLOURS, labels, role }), [day, widthPx, labels, role])
   // The markup is made of numbers and our own words only, by `dayStripSvg`.
-  return <span className="block max-w-full [&>svg]:block [&>svg]:h-auto [&>svg]:max-w-full" dangerouslySetInnerHTML={{ __html: svg }} />
+  return <span className="block max-w-full [&>svg]:block [&>svg]:h-auto [&>svg]:w-full" dangerouslySetInnerHTML={{ __html: svg }} />
 }
