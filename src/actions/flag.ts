@@ -6,6 +6,7 @@ import { formFields } from '#lib/http/form.ts'
 import { openedIn } from '#lib/http/opened.ts'
 import { runForm } from '#lib/http/to-action-error.ts'
 import { assignVisit } from '#lib/visit/assign-visit.server.ts'
+import { assignVisit } from '#lib/visit/assign-visit.server.ts'
 
 export const flag = {
   dismiss: defineAction({
@@ -30,6 +31,15 @@ export const flag = {
       runForm(async () => {
         const { db, organisation, nowMs } = openedIn(locals)
         const { flagId, ...fields } = formFields(form)
+        await assignVisit(db, { input: { ...fields, flagIds: [flagId] }, organisationSlug: organisation.slug, nowMs })
+      }),
+  }),
+  assign: defineAction({
+    accept: 'form',
+    handler: (form, { locals }) =>
+      runForm(async () => {
+        const { db, organisation, nowMs } = openedIn(locals)
+        const { flagId = '', ...fields } = formFields(form)
         await assignVisit(db, { input: { ...fields, flagIds: [flagId] }, organisationSlug: organisation.slug, nowMs })
       }),
   }),
