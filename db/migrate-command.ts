@@ -1,15 +1,14 @@
-/** `npm run db:migrate`: makes the data folder and brings its database to the newest schema. */
-import { mkdirSync } from 'node:fs'
-import { processConfig } from '#lib/config.server.ts'
+/** `npm run db:migrate`: brings the database to the newest schema; the server's start does the same. */
+import { command } from './command.ts'
 import { openDatabase } from './connection.ts'
 import { migrateToLatest } from './migrate.ts'
 
-const { dataDir, databaseFile } = processConfig()
-mkdirSync(dataDir, { recursive: true })
-const db = openDatabase(databaseFile)
-try {
-  const ran = await migrateToLatest(db)
-  process.stdout.write(ran.length === 0 ? 'The database is up to date.\n' : `Migrated: ${ran.join(', ')}.\n`)
-} finally {
-  await db.destroy()
-}
+await command(async ({ databaseFile }) => {
+  const db = openDatabase(databaseFile)
+  try {
+    const names = await migrateToLatest(db)
+    if (names.length > 0) console.log(`Database brought up to date: ${names.join(', ')}.`)
+  } finally {
+    await db.destroy()
+  }
+})

@@ -10,6 +10,7 @@ const schema = z.object({
   DWELLHOUR_SMTP_URL: z.url({ protocol: /^smtps?$/ }).optional(),
   DWELLHOUR_MAIL_FROM: z.string().min(3).default('Dwellhour <post@dwellhour.example>'),
   DWELLHOUR_SECRET: z.string().min(32).optional(),
+  DWELLHOUR_DEMO: z.enum(['on', 'off']).default('on'),
   DWELLHOUR_LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'silent']).default('info'),
 })
 
@@ -26,6 +27,8 @@ export interface Config {
   /** Signs links in mail; `null`: one is made and kept in the data folder. */
   readonly secret: string | null
   readonly logLevel: string
+  /** Whether an empty database is filled with the demo at start. */
+  readonly demo: boolean
 }
 
 export type ConfigOutcome =
@@ -52,6 +55,7 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
       mailFrom: value.DWELLHOUR_MAIL_FROM,
       secret: value.DWELLHOUR_SECRET ?? null,
       logLevel: value.DWELLHOUR_LOG_LEVEL,
+      demo: value.DWELLHOUR_DEMO === 'on',
     },
   }
 }

@@ -1,0 +1,56 @@
+/** The worker: runs each job at start, to make up what was missed, and then at its own times; never two rounds of one job at once. */
+import { schedule } from 'node-cron'
+import type { JobCounts } from '#db/queries/job.ts'
+import { log } from '#lib/log.server.ts'
+import type { Job, Worker } from './job.ts'
+
+export interface RunningWorker {
+  /** Starts nothing new and waits for what runs, at most `patienceMs`. */
+  stop(patienceMs: number): Promise<void>
+}
+
+export function startWorker(jobs: readonly Job[], worker: Worker): RunningWorker {
+  const running = new Map<string, Promise<void>>()
+  let stopping = false
+  const round = (job: Job) => {
+    if (stopping || running.has(job.name)) return
+    const done = guarded(job, worker).finally(() => running.delete(job.name))
+    running.set(job.name, done)
+  }
+  const tasks = jobs.map((job) => schedule(job.cron, () => round(job), { timezone: 'UTC', suppressMissedWarning: true }))
+  for (const job of jobs) round(job)
+  return {
+    async stop(patienceMs) {
+      stopping = true
+      for (const task of tasks) await task.destroy()
+      const patience = new Promise<void>((resolve) => setTimeout(resolve, patienceMs).unref())
+      await Promise.race([Promise.all(running.values()), patience])
+    },
+  }
+}
+
+/** A round's failure is logged; the next one comes at the job's next time. */
+async function guarded(job: Job, worker: Worker): Promise<void> {
+  try {
+    await job.run(worker)
+  } catch (error) {
+    log.error(
+      { job: job.name, err: { reason: String(error), stack: error instanceof Error ? error.stack : undefined } },
+      'job round failed',
+    )
+  }
+}
+
+/** Rounds until one has nothing left to do; the sum of what they did. */
+export async function drain(job: Job, worker: Worker): Promise<JobCounts> {
+  const total: Record<string, number> = {}
+  for (let rounds = 0; rounds < MOST_ROUNDS; rounds++) {
+    const counts = await job.run(worker)
+    for (const [name, count] of Object.entries(counts)) total[name] = (total[name] ?? 0) + count
+    // Only the post comes in rounds; a job of periods has gone through all of them in one.
+    if (job.name !== 'mail' || Object.values(counts).every((count) => count === 0)) break
+  }
+  return total
+}
+
+const MOST_ROUNDS = 1_000
