@@ -24,6 +24,7 @@ export async function backupDatabase({ databaseFile, folder, nowMs, keep }: Back
   mkdirSync(folder, { recursive: true, mode: 0o700 })
   const file = join(folder, `dwellhour-${stamp(nowMs)}.sqlite`)
   const unfinished = `${file}.unfinished`
+  rmSync(unfinished, { force: true })
   const source = new SQLite(databaseFile, { readonly: true, fileMustExist: true })
   try {
     await source.backup(unfinished)
@@ -55,15 +56,19 @@ export function restoreDatabase(options: {
 }): RestoreOutcome {
   const { databaseFile, backupFile, nowMs } = options
   if (!existsSync(backupFile)) return { status: 'refused', reason: `There is no file ${backupFile}.` }
-  const problem = problemOf(backupFile)
-  if (problem) return { status: 'refused', reason: `${basename(backupFile)} is not a sound backup: ${problem}.` }
   mkdirSync(dirname(databaseFile), { recursive: true, mode: 0o700 })
-  const exists = existsSync(databaseFile)
-  if (exists && !closeJournal(databaseFile)) {
-    return { status: 'refused', reason: 'The database is in use. Stop the server and the worker, then restore again. Nothing was changed.' }
-  }
   const incoming = `${databaseFile}.incoming`
   copyFileSync(backupFile, incoming)
+  const problem = problemOf(incoming)
+  if (problem) {
+    rmSync(incoming)
+    return { status: 'refused', reason: `${basename(backupFile)} is not a sound backup: ${problem}. Nothing was changed.` }
+  }
+  const exists = existsSync(databaseFile)
+  if (exists && !closeJournal(databaseFile)) {
+    rmSync(incoming)
+    return { status: 'refused', reason: 'The database is in use. Stop the server and the worker, then restore again. Nothing was changed.' }
+  }
   const keptAside = exists ? `${databaseFile}.before-restore-${stamp(nowMs)}` : null
   if (keptAside) renameSync(databaseFile, keptAside)
   renameSync(incoming, databaseFile)
@@ -86,10 +91,11 @@ function closeJournal(databaseFile: string): boolean {
   }
 }
 
-/** What is wrong with a copy, or `null`. */
-function problemOf(file: string): string | null {
-  const sqlite = new SQLite(file, { readonly: true, fileMustExist: true })
+/** What is wrong with a copy of ours, or `null`. It leaves WAL mode, so that the copy is one file with nothing beside it. */
+function problemOf(copy: string): string | null {
+  const sqlite = new SQLite(copy, { fileMustExist: true })
   try {
+    sqlite.pragma('journal_mode = DELETE')
     const check = String(sqlite.pragma('quick_check', { simple: true }))
     if (check !== 'ok') return check
     const tables = sqlite.prepare("select count(*) as count from sqlite_schema where name in ('kysely_migration', 'organisation')")
