@@ -82,10 +82,15 @@ export default tseslint.config(
   {
     files: ['src/components/**/*.tsx', 'src/lib/**/view.ts', 'src/lib/**/schemas.ts', 'src/lib/http/client.ts'],
     rules: {
-      'no-restricted-imports': [
+      '@typescript-eslint/no-restricted-imports': [
         'error',
         {
-          patterns: [to('^#db/(?!enums|ids)|\.server|^node:', 'This runs in the browser: no database, no server module.')],
+          patterns: [
+            {
+              ...to('^#db/(?!enums|ids)|\.server|^node:', 'This runs in the browser: no database, no server module.'),
+              allowTypeImports: true,
+            },
+          ],
         },
       ],
     },

@@ -6,7 +6,6 @@ import { formFields } from '#lib/http/form.ts'
 import { openedIn } from '#lib/http/opened.ts'
 import { runForm } from '#lib/http/to-action-error.ts'
 import { assignVisit } from '#lib/visit/assign-visit.server.ts'
-import { assignVisit } from '#lib/visit/assign-visit.server.ts'
 
 export const flag = {
   dismiss: defineAction({
@@ -23,15 +22,6 @@ export const flag = {
       runForm(() => {
         const { db, nowMs } = openedIn(locals)
         return reopenFlag(db, { input: formFields(form), nowMs })
-      }),
-  }),
-  assign: defineAction({
-    accept: 'form',
-    handler: (form, { locals }) =>
-      runForm(async () => {
-        const { db, organisation, nowMs } = openedIn(locals)
-        const { flagId, ...fields } = formFields(form)
-        await assignVisit(db, { input: { ...fields, flagIds: [flagId] }, organisationSlug: organisation.slug, nowMs })
       }),
   }),
   assign: defineAction({

@@ -6,5 +6,6 @@ import { property } from './property.ts'
 import { roster } from './roster.ts'
 import { tariff } from './tariff.ts'
 import { tenancy } from './tenancy.ts'
+import { tenant } from './tenant.ts'
 
-export const server = { account, flag, people, property, roster, tariff, tenancy }
+export const server = { account, flag, people, property, roster, tariff, tenancy, tenant }
