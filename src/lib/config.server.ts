@@ -14,6 +14,8 @@ const schema = z.object({
   DWELLHOUR_LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'silent']).default('info'),
 })
 
+const LOOPBACK = new Set(['localhost', '127.0.0.1', '[::1]'])
+
 export interface Config {
   readonly port: number
   readonly host: string
@@ -43,6 +45,7 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
   }
   const value = parsed.data
   const dataDir = resolve(value.DWELLHOUR_DATA_DIR)
+  const baseUrl = (value.DWELLHOUR_BASE_URL ?? `http://localhost:${value.DWELLHOUR_PORT}`).replace(/\/+$/, '')
   return {
     status: 'valid',
     config: {
@@ -50,12 +53,13 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
       host: value.DWELLHOUR_HOST,
       dataDir,
       databaseFile: resolve(dataDir, 'dwellhour.sqlite'),
-      baseUrl: (value.DWELLHOUR_BASE_URL ?? `http://localhost:${value.DWELLHOUR_PORT}`).replace(/\/+$/, ''),
+      baseUrl,
       smtpUrl: value.DWELLHOUR_SMTP_URL ?? null,
       mailFrom: value.DWELLHOUR_MAIL_FROM,
       secret: value.DWELLHOUR_SECRET ?? null,
       logLevel: value.DWELLHOUR_LOG_LEVEL,
-      demo: value.DWELLHOUR_DEMO === 'on',
+      // The demo's password is public: it never fills a service that others can reach.
+      demo: value.DWELLHOUR_DEMO === 'on' && LOOPBACK.has(new URL(baseUrl).hostname),
     },
   }
 }
