@@ -187,3 +187,11 @@ export async function listJobRuns(db: Kysely<Database>, organisationId: Organisa
     error: row.error,
   }))
 }
+
+export async function lastJobEnd(db: Kysely<Database>): Promise<number | null> {
+  const row = await db
+    .selectFrom('job_run')
+    .select((eb) => eb.fn.max('finished_at_ms').as('finished_at_ms'))
+    .executeTakeFirst()
+  return row?.finished_at_ms ?? null
+}

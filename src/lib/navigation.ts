@@ -29,7 +29,11 @@ export function roomsFor({ slug, roles, property }: Place): readonly Room[] {
     } else {
       rooms.push({ label: 'Properties', href: `${root}/` })
     }
-    rooms.push({ label: 'People', href: `${root}/people` }, { label: 'Post', href: `${root}/post` })
+    rooms.push(
+      { label: 'People', href: `${root}/people` },
+      { label: 'Post', href: `${root}/post` },
+      { label: 'Jobs', href: `${root}/jobs` },
+    )
   }
   if (roles.includes('electrician')) rooms.push({ label: 'Visits', href: `${root}/visits` })
   if (roles.includes('owner') || roles.includes('landlord')) rooms.push({ label: 'Digests', href: `${root}/digests` })

@@ -1,5 +1,5 @@
 /** `npm run build`: the site by Astro, and what runs outside it (commands, jobs, settings) bundled by esbuild, all to `dist/`. */
-import { existsSync, rmSync } from 'node:fs'
+import { rmSync } from 'node:fs'
 import { build } from 'esbuild'
 import { inRoot } from './paths.mjs'
 import { runTool } from './run.mjs'
@@ -12,7 +12,7 @@ await build({
   absWorkingDir: inRoot(),
   entryPoints: {
     'db/migrate-command': 'db/migrate-command.ts',
-    ...(existsSync(inRoot('db/seed.ts')) ? { 'db/seed': 'db/seed-command.ts' } : {}),
+    'db/seed': 'db/seed-command.ts',
     'db/backup': 'db/backup.ts',
     'db/restore': 'db/restore.ts',
     'jobs/index': 'jobs/index.ts',

@@ -1,6 +1,6 @@
 /** Makes a fresh checkout ready: checks what must be there, installs when the lock changed, builds when the sources changed. */
 import { createHash } from 'node:crypto'
-import { existsSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
+import { existsSync, lstatSync, readdirSync, readFileSync, statSync, writeFileSync } from 'node:fs'
 import { join } from 'node:path'
 import { inRoot } from './paths.mjs'
 import { run } from './run.mjs'
@@ -70,8 +70,11 @@ export async function install() {
     existsSync(inRoot(hidden)) &&
     existsSync(inRoot(SQLITE_BINARY)) &&
     statSync(inRoot(hidden)).mtimeMs >= statSync(inRoot('package-lock.json')).mtimeMs &&
-    (await run('npm', ['ls', '--silent'], { capture: true })).code === 0
+    (await run('npm', ['ls', '--silent'], { capture: 'all' })).code === 0
   if (!isCurrent) {
+    // npm would empty the folder behind a link, which belongs to somebody else.
+    if (lstatSync(inRoot('node_modules'), { throwIfNoEntry: false })?.isSymbolicLink())
+      giveUp('node_modules is a link to another folder. Remove the link, then start again. Nothing was changed.')
     const problem = existsSync(inRoot(SQLITE_BINARY)) ? null : checkCompiler()
     if (problem) giveUp(problem)
     console.log('Installing packages; the SQLite driver is compiled, which takes a few minutes the first time.')

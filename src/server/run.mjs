@@ -2,13 +2,13 @@
 import { spawn } from 'node:child_process'
 import { ROOT } from './paths.mjs'
 
-/** Resolves with the exit code and, when `capture` is set, what it printed; never rejects for a failing program. */
-export function run(program, args, { env = {}, capture = false } = {}) {
+/** Resolves with the exit code and what was captured (`all`, or `stdout` while the rest shows); never rejects for a failing program. */
+export function run(program, args, { env = {}, capture = 'none' } = {}) {
   return new Promise((resolve) => {
     const child = spawn(program, args, {
       cwd: ROOT,
       env: { ...process.env, ...env },
-      stdio: capture ? ['ignore', 'pipe', 'pipe'] : ['ignore', 'inherit', 'inherit'],
+      stdio: ['ignore', capture === 'none' ? 'inherit' : 'pipe', capture === 'all' ? 'pipe' : 'inherit'],
     })
     let output = ''
     child.stdout?.on('data', (chunk) => (output += chunk))

@@ -16,8 +16,8 @@ await build()
 // The first command to read the settings; it names every bad one.
 const migrated = await run(process.execPath, ['dist/db/migrate-command.mjs'], { env: PRODUCTION })
 if (migrated.code !== 0) process.exit(1)
-const seeded = await run(process.execPath, ['dist/db/seed.mjs'], { env: PRODUCTION, capture: true })
-if (seeded.code !== 0) giveUp(seeded.output)
+const seeded = await run(process.execPath, ['dist/db/seed.mjs'], { env: PRODUCTION, capture: 'stdout' })
+if (seeded.code !== 0) giveUp('The demo could not be written; the reason is above. Nothing was started.')
 
 const children = new Map()
 let stopping = false

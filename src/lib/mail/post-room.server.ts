@@ -3,6 +3,7 @@ import { readdir, readFile } from 'node:fs/promises'
 import { join } from 'node:path'
 import PostalMime from 'postal-mime'
 import type { Config } from '#lib/config.server.ts'
+import { withInlineImages } from './inline-images.ts'
 
 export const postRoomFolder = (config: Config): string => join(config.dataDir, 'post-room')
 
@@ -50,16 +51,3 @@ export async function readPosted(config: Config, name: string): Promise<PostedLe
     html: withInlineImages(mail.html ?? '', images),
   }
 }
-
-interface InlineImage {
-  readonly contentId: string
-  readonly contentType: string
-  readonly base64: string
-}
-
-/** Replaces `cid:` references by the images themselves, since a page cannot resolve them. */
-export const withInlineImages = (html: string, images: readonly InlineImage[]): string =>
-  images.reduce(
-    (text, { contentId, contentType, base64 }) => text.replaceAll(`cid:${contentId}`, `data:${contentType};base64,${base64}`),
-    html,
-  )
