@@ -1,19 +1,14 @@
-/** Fills an empty database with the demo and prints how its people sign in; prints nothing and changes nothing otherwise. */
+/** Fills an empty database with the demo; answers the lines that say how its people sign in, or none when there was nothing to do. */
+import type { Kysely } from 'kysely'
 import { fillDemo } from '#lib/demo/fill-demo.server.ts'
 import { DEMO_PASSWORD, DEMO_PEOPLE } from '#lib/demo/people.ts'
-import { command } from './command.ts'
-import { openDatabase } from './connection.ts'
+import type { Database } from './schema.ts'
 
-await command(async ({ databaseFile, demo, baseUrl }) => {
-  if (!demo) return
-  const db = openDatabase(databaseFile)
-  try {
-    const { status } = await fillDemo(db, { nowMs: Date.now(), say: (line) => console.error(`  ${line}`) })
-    if (status === 'not-empty') return
-    console.log(`The database was empty and holds the demo now. Sign in at ${baseUrl}/sign-in`)
-    for (const { email, role, shows } of DEMO_PEOPLE)
-      console.log(`  ${role.padEnd(12)} ${email.padEnd(36)} ${DEMO_PASSWORD}   sees ${shows}`)
-  } finally {
-    await db.destroy()
-  }
-})
+export async function seed(db: Kysely<Database>, nowMs: number): Promise<readonly string[]> {
+  const { status } = await fillDemo(db, { nowMs, say: (line) => console.error(`  ${line}`) })
+  if (status === 'not-empty') return []
+  return [
+    'The database was empty and holds the demo now. Its people:',
+    ...DEMO_PEOPLE.map(({ email, role, shows }) => `  ${role.padEnd(12)} ${email.padEnd(36)} ${DEMO_PASSWORD}   sees ${shows}`),
+  ]
+}

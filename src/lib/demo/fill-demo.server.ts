@@ -32,7 +32,7 @@ export async function fillDemo(
   const anybody = await db.selectFrom('person').select('id').limit(1).executeTakeFirst()
   if (anybody) return { status: 'not-empty' }
   const people = await writePeople(db, nowMs)
-  const landlord = await openOrganisation(db, people[LANDLORD.email] as PersonId, DEMO_ORGANISATION.slug)
+  const landlord = await openOrganisation(db, people(LANDLORD.email), DEMO_ORGANISATION.slug)
   if (!landlord) throw new Error('The demo organisation was not written')
   const made = new Map<string, MadeBuilding>()
   let serial = 0
@@ -45,11 +45,11 @@ export async function fillDemo(
         livingSince: addDays(civilOf(nowMs, building.zone).day, -200),
         tenantOf: (unit) =>
           building.slug === TENANTS_UNIT.building && unit.code === TENANTS_UNIT.code
-            ? { name: TENANT.name, email: TENANT.email, personId: people[TENANT.email] as PersonId }
+            ? { name: TENANT.name, email: TENANT.email, personId: people(TENANT.email) }
             : { ...demoTenant(serial++), personId: null },
       })
-      await addAccess(trx, { personId: people[ELECTRICIAN.email] as PersonId, propertyId: written.propertyId, role: 'electrician' }, nowMs)
-      await addAccess(trx, { personId: people[OWNER.email] as PersonId, propertyId: written.propertyId, role: 'owner' }, nowMs)
+      await addAccess(trx, { personId: people(ELECTRICIAN.email), propertyId: written.propertyId, role: 'electrician' }, nowMs)
+      await addAccess(trx, { personId: people(OWNER.email), propertyId: written.propertyId, role: 'owner' }, nowMs)
       return written
     })
     made.set(building.slug, one)
@@ -57,8 +57,7 @@ export async function fillDemo(
   for (const daysAgo of HISTORY_DAYS) {
     say(`history: ${daysAgo} days ago`)
     await evaluateAll(landlord.db, made, nowMs - daysAgo * DAY_MS)
-    if (daysAgo === 14)
-      await writeHistory({ connection: db, landlord: landlord.db, electricianId: people[ELECTRICIAN.email] as PersonId, made, nowMs })
+    if (daysAgo === 14) await writeHistory({ connection: db, landlord: landlord.db, electricianId: people(ELECTRICIAN.email), made, nowMs })
   }
   await evaluateAll(landlord.db, made, nowMs)
   return { status: 'filled' }
@@ -68,17 +67,21 @@ async function evaluateAll(db: OrgDb, made: ReadonlyMap<string, MadeBuilding>, a
   for (const { propertyId } of made.values()) await evaluateProperty(db, { propertyId, nowMs: atMs })
 }
 
-async function writePeople(db: Connection, nowMs: number): Promise<Readonly<Record<string, PersonId>>> {
+async function writePeople(db: Connection, nowMs: number): Promise<(email: string) => PersonId> {
   const passwordHash = await hashPassword(DEMO_PASSWORD)
   return db.transaction().execute(async (trx) => {
     const organisationId = await addOrganisation(trx, { ...DEMO_ORGANISATION, measure: 'metric', createdAtMs: nowMs - 60 * DAY_MS })
     if (!organisationId) throw new Error('The demo organisation exists already')
-    const ids: Record<string, PersonId> = {}
+    const ids = new Map<string, PersonId>()
     for (const { email, name, role } of DEMO_PEOPLE) {
       const personId = await addPerson(trx, { email, name, passwordHash, emailConfirmedAtMs: nowMs, createdAtMs: nowMs })
       await addMembership(orgTrx(trx, scopeForNewMember(organisationId, personId, [role])), { personId, role, createdAtMs: nowMs })
-      ids[email] = personId
+      ids.set(email, personId)
     }
-    return ids
+    return (email: string) => {
+      const id = ids.get(email)
+      if (!id) throw new Error(`Nobody in the demo has the address ${email}`)
+      return id
+    }
   })
 }

@@ -31,11 +31,10 @@ export interface MadeBuilding {
 }
 
 export async function writeBuilding(trx: OrgTrx, { building, tenantOf, recordedAtMs, livingSince }: BuildingWrite): Promise<MadeBuilding> {
-  const { rate: _rate, units: demoUnits, ...place } = building
-  const propertyId = await addProperty(trx, { ...place, hygienePolicy: 'store-60' }, recordedAtMs)
+  const propertyId = await addProperty(trx, { ...building, hygienePolicy: 'store-60' }, recordedAtMs)
   await changePropertyTariff(trx, propertyId, await writeTariff(trx, building, recordedAtMs))
   const units = new Map<string, MadeUnit>()
-  for (const [index, unit] of demoUnits.entries()) {
+  for (const [index, unit] of building.units.entries()) {
     const unitId = await addUnit(trx, { propertyId, code: unit.code, floor: unit.floor, stack: unit.stack }, recordedAtMs)
     await addHardwareRevision(trx, {
       unitId,
