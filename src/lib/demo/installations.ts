@@ -88,11 +88,11 @@ const COMMON_CIRCUIT = {
   control: null,
 } as const
 
-/** 208 V supply of an apartment building, 30 A on 10 AWG. */
+/** 208 V supply of an apartment building, 25 A on 10 AWG. */
 const americanCircuit: Circuit = {
   ...COMMON_CIRCUIT,
   supplyVoltageV: 208,
-  breakerA: 30,
+  breakerA: 25,
   conductor: { size: '10', system: 'awg', material: 'copper', ratingC: 60 },
   lengthM: 14,
   ambientC: 26,

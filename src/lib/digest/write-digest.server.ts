@@ -37,6 +37,8 @@ export async function writeDigest(db: OrgDb, { propertyId, month, nowMs, reason 
   const property = await findProperty(db, propertyId)
   if (!property) throw notFound('property')
   const figures = await figuresOf(db, property, month)
+  // A month before anything was evaluated has nothing to account for.
+  if (figures.daysCovered === 0) return { written: 0, mailed: 0 }
   const letter = await digestLetter({ figures, month, propertyName: property.name, reason: reason ?? null })
   return inTransaction(db, async (trx) => {
     const last = await findLastEdition(trx, propertyId, month)
