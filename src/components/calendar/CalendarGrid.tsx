@@ -54,14 +54,18 @@ function RunWords({ event }: { readonly event: CalendarEvent }) {
 
 const DayHeader = ({ label }: HeaderProps) => <span>{label}</span>
 
+/** Only in the month are its cells children of a row. */
+const MonthHeader = ({ label }: HeaderProps) => <span role="columnheader">{label}</span>
+
 const COMPONENTS: Components<CalendarEvent> = {
   event: EventWords,
   header: DayHeader,
+  month: { header: MonthHeader },
   dayColumnWrapper: DayWithLoad,
 }
 
 const GUTTER_PX = 60
-const BAR_PX = 17
+const BAR_PX = 21
 
 /** As many bars as stand side by side at the busiest moment, in every column. */
 function gridWidthPx(events: readonly CalendarEvent[], columns: number): number {
