@@ -1,4 +1,4 @@
-/** The worker: runs each job at start, to make up what was missed, and then at its own times; never two rounds of one job at once. */
+/** The worker: runs the jobs one after the other at start, to make up what was missed, then each at its own times; never two rounds of one job at once. */
 import { schedule } from 'node-cron'
 import type { JobCounts } from '#db/queries/job.ts'
 import { log } from '#lib/log.server.ts'
@@ -12,13 +12,19 @@ export interface RunningWorker {
 export function startWorker(jobs: readonly Job[], worker: Worker): RunningWorker {
   const running = new Map<string, Promise<void>>()
   let stopping = false
-  const round = (job: Job) => {
-    if (stopping || running.has(job.name)) return
+  const round = (job: Job): Promise<void> => {
+    const current = running.get(job.name)
+    if (stopping || current) return current ?? Promise.resolve()
     const done = guarded(job, worker).finally(() => running.delete(job.name))
     running.set(job.name, done)
+    return done
+  }
+  // In their order: a tip is read from the evaluation before it.
+  const makeUp = async () => {
+    for (const job of jobs) await round(job)
   }
   const tasks = jobs.map((job) => schedule(job.cron, () => round(job), { timezone: 'UTC', suppressMissedWarning: true }))
-  for (const job of jobs) round(job)
+  void makeUp()
   return {
     async stop(patienceMs) {
       stopping = true
