@@ -34,7 +34,7 @@ export function HouseUnit({ cell, house, minute }: Props) {
       </span>
       <span className="mt-auto hidden items-end gap-2 @min-[8.5rem]:flex">
         {state.chargePercent !== null && <Tank percent={state.chargePercent} />}
-        <span className="min-w-0 grow">
+        <span className="min-w-0 max-w-66 grow">
           <UnitStrip cell={cell} house={house} />
         </span>
       </span>
