@@ -41,7 +41,7 @@ export async function fillDemo(
     const one = await inTransaction(landlord.db, async (trx) => {
       const written = await writeBuilding(trx, {
         building,
-        recordedAtMs: nowMs - 60 * DAY_MS,
+        recordedAtMs: nowMs - 29 * DAY_MS,
         livingSince: addDays(civilOf(nowMs, building.zone).day, -200),
         tenantOf: (unit) =>
           building.slug === TENANTS_UNIT.building && unit.code === TENANTS_UNIT.code
