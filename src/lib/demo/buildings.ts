@@ -44,7 +44,7 @@ const sallowController = (index: number): Controller =>
       dial(120),
       timeSwitch([daily(at(4, 30), at(7)), daily(at(17), at(19))]),
       fixed(120),
-      dial(45),
+      dial(35),
       oneShot(10, 680),
       dial(120),
       fixed(90),
@@ -101,7 +101,7 @@ const cinderUnits = Array.from({ length: 24 }, (_, index): DemoUnit => {
 
 /** 60 units on ten floors; every seventh has an evening shower as well. */
 const kestrelController = (index: number): Controller => {
-  if (index % 23 === 11) return dial(35)
+  if (index % 23 === 11) return dial(25)
   return (
     ([dial(105), dial(120), fixed(120), timeSwitch([daily(at(4, 15), at(6, 45)), daily(at(18), at(19, 30))])] as const)[index % 4] ??
     dial(120)

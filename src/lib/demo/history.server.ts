@@ -41,7 +41,7 @@ async function mendUnit(history: HistoryCase, place: UnitPlace): Promise<void> {
   if (!visitId || !electrician) return
   const input = {
     installation: american({ controller: dial(120), large: true }),
-    reason: 'Dial set from 35 to 120 min; run timed',
+    reason: 'Dial set from 25 to 120 min; run timed',
     measuredMin: 118,
     expectedRevision: 1,
   }

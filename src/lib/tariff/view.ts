@@ -1,4 +1,5 @@
 /** A tariff version in words and bands for one month. */
+import { periodPrice } from '#lib/core/tariff/price.ts'
 import type { TariffVersion } from '#lib/core/tariff/types.ts'
 import { formatMoney } from '#lib/format.ts'
 
@@ -25,11 +26,11 @@ export const formatPrice = (
 
 export function tariffView(version: TariffVersion, day: string): TariffView {
   const month = Number(day.slice(5, 7)) - 1
+  const priceOf = (period: number) => periodPrice(version, period, day)
+  const prices = [...(version.weekdayGrid[month] ?? []), ...(version.weekendGrid[month] ?? [])].map(priceOf)
+  const dearest = Math.max(...prices)
+  const flat = dearest === Math.min(...prices)
   const bands = (row: readonly number[]): readonly HourBand[] => {
-    const priceOf = (period: number) =>
-      (version.energyPeriods[period]?.[0]?.priceMinorPerKwh ?? 0) + (version.fuelAdjustmentMinorPerKwh?.[month] ?? 0)
-    const dearest = Math.max(...row.map(priceOf))
-    const flat = row.every((period) => priceOf(period) === dearest)
     const found: { fromHour: number; toHour: number; period: number }[] = []
     row.forEach((period, slot) => {
       const last = found.at(-1)

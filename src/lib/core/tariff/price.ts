@@ -59,7 +59,16 @@ export function priceBands(tariff: Tariff, range: MsInterval): readonly PeakInte
   return bands
 }
 
-/** On-peak: the dearest price of its local day, where that day has more than one price. */
+/** The dearest price of a month, or `null` where the month has one price only. */
+function dearestOfMonth(version: TariffVersion, day: Day): number | null {
+  const month = Number(day.slice(5, 7)) - 1
+  const periods = new Set([...(version.weekdayGrid[month] ?? []), ...(version.weekendGrid[month] ?? [])])
+  const prices = [...periods].map((period) => periodPrice(version, period, day))
+  const dearest = Math.max(...prices)
+  return prices.length > 0 && dearest > Math.min(...prices) ? dearest : null
+}
+
+/** On-peak: the dearest price of its month, where the month has more than one; a weekend without it has no peak. */
 export function peakIntervals(tariff: Tariff, range: MsInterval): readonly PeakInterval[] {
   const peaks: PeakInterval[] = []
   for (
@@ -67,10 +76,9 @@ export function peakIntervals(tariff: Tariff, range: MsInterval): readonly PeakI
     dayBounds(day, tariff.zone).startsAtMs < range.endsAtMs;
     day = addDays(day, 1)
   ) {
-    const bands = pricedDay(tariff, day)
-    const prices = bands.map((band) => band.priceMinorPerKwh)
-    const dearest = Math.max(...prices)
-    if (bands.length > 0 && dearest > Math.min(...prices)) peaks.push(...bands.filter((band) => band.priceMinorPerKwh === dearest))
+    const version = versionOn(tariff, day)
+    const dearest = version && dearestOfMonth(version, day)
+    if (dearest !== null) peaks.push(...pricedDay(tariff, day).filter((band) => band.priceMinorPerKwh === dearest))
   }
   return peaks.filter((peak) => peak.endsAtMs > range.startsAtMs && peak.startsAtMs < range.endsAtMs)
 }

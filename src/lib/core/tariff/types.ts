@@ -74,7 +74,7 @@ export interface Bill {
 export type PriceOutcome =
   | { readonly status: 'priced'; readonly priceMinorPerKwh: number; readonly periodIndex: number }
   | { readonly status: 'no-version'; readonly reason: string }
-/** `on-peak` = the dearest price of its local day, when that day has more than one. */
+/** `on-peak` = the dearest price of its month, when that month has more than one. */
 export interface PeakInterval extends MsInterval {
   readonly periodIndex: number
   readonly priceMinorPerKwh: number

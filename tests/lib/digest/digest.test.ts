@@ -1,0 +1,109 @@
+/** The digest: parts that add up, months of every length, frozen editions, mail to owners and nobody's name in it. */
+import { beforeEach, describe, expect, it } from 'vitest'
+import { findLastEdition } from '#db/queries/digest.ts'
+import { monthBounds } from '#lib/core/time/civil.ts'
+import { energyChartSvg, THEME } from '#lib/digest/chart.ts'
+import { monthFigures } from '#lib/digest/figures.ts'
+import { loadDigest, loadDigests } from '#lib/digest/load-digests.server.ts'
+import { digestView } from '#lib/digest/view.ts'
+import { writeDigest } from '#lib/digest/write-digest.server.ts'
+import { NOW_MS } from '../../support/factories.ts'
+import { COLD, makeWorld, type World } from '../../support/world.ts'
+
+let world: World
+beforeEach(async () => {
+  world = await makeWorld()
+})
+const write = (reason?: string, db = world.landlord) =>
+  writeDigest(db, { propertyId: world.building.propertyId, month: '2026-12', nowMs: NOW_MS, ...(reason ? { reason } : {}) })
+const edition = () => findLastEdition(world.landlord, world.building.propertyId, '2026-12')
+
+describe('writeDigest', () => {
+  it('mails the owner once and writes nothing the second time', async () => {
+    expect(await write()).toEqual({ written: 1, mailed: 1 })
+    expect(await write()).toEqual({ written: 0, mailed: 0 })
+    expect(await world.db.selectFrom('message').where('kind', '=', 'digest').selectAll().execute()).toHaveLength(1)
+  })
+  it('adds up: days to the month, peaks within energy, unit-days warm within needed', async () => {
+    await write()
+    const figures = (await edition())?.figures
+    const sum = (of: 'energyKwh' | 'peakKwh') => (figures?.days ?? []).reduce((total, day) => total + day[of], 0)
+    expect(sum('energyKwh')).toBeCloseTo(figures?.energyKwh ?? -1, 6)
+    expect(sum('peakKwh')).toBeCloseTo(figures?.peakKwh ?? -1, 6)
+    expect(figures?.peakKwh).toBeLessThanOrEqual(figures?.energyKwh ?? 0)
+    expect(figures?.unitDaysWarm).toBeLessThan(figures?.unitDaysNeeded ?? 0)
+    expect(figures?.energyKwh).toBeGreaterThan(10)
+    expect(figures?.days).toHaveLength(31)
+  })
+  it('names the cold unit by its code and nobody by name', async () => {
+    await write()
+    const [mail] = await world.db.selectFrom('message').where('kind', '=', 'digest').selectAll().execute()
+    expect(mail?.text).toContain(COLD)
+    const names = await world.db.selectFrom('tenancy').select(['name', 'email']).execute()
+    for (const { name, email } of names) {
+      expect(mail?.text).not.toContain(name)
+      expect(mail?.html).not.toContain(email)
+    }
+  })
+  it('makes a correction a new edition that says why, and leaves the first as it was', async () => {
+    await write()
+    const first = await edition()
+    expect(await write('A meter was read late')).toEqual({ written: 1, mailed: 1 })
+    expect(await edition()).toMatchObject({ edition: 2, reason: 'A meter was read late' })
+    expect(await loadDigest(world.landlord, first?.id)).toEqual(first)
+    await expect(world.db.updateTable('digest').set({ reason: 'rewritten' }).execute()).rejects.toThrow(/never changes/)
+  })
+  it('writes nothing for a month in which nothing was evaluated', async () => {
+    expect(await writeDigest(world.landlord, { propertyId: world.building.propertyId, month: '2026-03', nowMs: NOW_MS })).toEqual({
+      written: 0,
+      mailed: 0,
+    })
+  })
+  it("answers not found for another organisation's property", async () => {
+    await expect(write(undefined, world.stranger)).rejects.toMatchObject({ code: 'not-found' })
+  })
+})
+
+describe('loadDigests', () => {
+  it('shows an owner their own, a tenant none, another organisation nothing', async () => {
+    await write()
+    expect(await loadDigests(world.owner)).toHaveLength(1)
+    await expect(loadDigests(world.tenant)).rejects.toMatchObject({ code: 'forbidden' })
+    expect(await loadDigests(world.stranger)).toEqual([])
+    await expect(loadDigest(world.stranger, (await edition())?.id)).rejects.toMatchObject({ code: 'not-found' })
+  })
+})
+
+describe('monthFigures', () => {
+  it.each([
+    ['2028-02', 29, 696],
+    ['2026-03', 31, 743],
+    ['2026-10', 31, 745],
+    ['2026-11', 30, 720],
+  ])('covers %s: %d days, %d hours in London', (month, days, hours) => {
+    const interval = monthBounds(month, 'Europe/London')
+    expect((interval.endsAtMs - interval.startsAtMs) / 3_600_000).toBe(hours)
+    const figures = monthFigures({
+      month,
+      interval,
+      propertyName: 'P',
+      currency: 'GBP',
+      codes: new Map(),
+      evaluations: [],
+      flags: [],
+      visits: [],
+      feedback: { hot: 0, cold: 0 },
+    })
+    expect(figures.days).toHaveLength(days)
+    expect(figures.costMinor).toBeNull()
+    expect(digestView(figures, month).readiness).toBe('No unit needed hot water this month.')
+  })
+})
+
+describe('energyChartSvg', () => {
+  it('says in words what it draws', async () => {
+    await write()
+    const figures = (await edition())?.figures
+    expect(figures && energyChartSvg(figures, THEME)).toMatch(/role="img" aria-label="Energy by day: [\d.]+ kWh in all/)
+  })
+})

@@ -1,0 +1,80 @@
+/** Visits: sent by the landlord to who may come, signed off once, seen by nobody else. */
+import { beforeEach, describe, expect, it } from 'vitest'
+import { inTransaction } from '#db/org-db.ts'
+import { listOpenFlags } from '#db/queries/flag.ts'
+import { listHardware } from '#db/queries/hardware.ts'
+import { deleteAccess } from '#db/queries/organisation.ts'
+import { british, dial } from '#lib/demo/installations.ts'
+import { assignVisit } from '#lib/visit/assign-visit.server.ts'
+import { loadVisits } from '#lib/visit/load-visits.server.ts'
+import { openVisit } from '#lib/visit/open-visit.server.ts'
+import { signOffVisit } from '#lib/visit/sign-off-visit.server.ts'
+import { NOW_MS } from '../../support/factories.ts'
+import { COLD, makeWorld, personOf, unitOf, type World } from '../../support/world.ts'
+
+const LEFT = { installation: british(dial(150), 120), reason: 'Dial set longer', measuredMin: 149, expectedRevision: 1 }
+let world: World
+beforeEach(async () => {
+  world = await makeWorld()
+})
+const assign = async (db = world.landlord, over: Record<string, unknown> = {}) => {
+  const { unitId } = unitOf(world, COLD)
+  const flags = await listOpenFlags(world.landlord, { unitId })
+  const input = {
+    unitId,
+    flagIds: flags.map((flag) => flag.id),
+    electricianId: personOf(world.electrician),
+    dueDay: '2026-12-04',
+    note: 'Ring first',
+    ...over,
+  }
+  return assignVisit(db, { input, organisationSlug: 'ours', nowMs: NOW_MS })
+}
+const mails = (kind: 'visit-assigned' | 'visit-done') => world.db.selectFrom('message').where('kind', '=', kind).selectAll().execute()
+
+describe('assignVisit', () => {
+  it('tells the electrician what was found and what would fix it, with the cautions', async () => {
+    await assign()
+    const [mail] = await mails('visit-assigned')
+    expect(mail?.subject).toContain(`Visit ${COLD}`)
+    expect(mail?.text).toContain('Isolate and lock off')
+    expect((await loadVisits(world.electrician)).planned[0]?.proposal.changes.length).toBeGreaterThan(0)
+  })
+  it('is forbidden to electricians themselves', async () => {
+    await expect(assign(world.electrician)).rejects.toMatchObject({ code: 'forbidden' })
+  })
+  it('answers not found for an electrician without access to the property', async () => {
+    await inTransaction(world.landlord, (trx) =>
+      deleteAccess(trx, { personId: personOf(world.electrician), propertyId: world.building.propertyId, role: 'electrician' }),
+    )
+    await expect(assign()).rejects.toMatchObject({ code: 'not-found' })
+  })
+  it("answers not found for another organisation's unit and writes no mail", async () => {
+    await expect(assign(world.stranger)).rejects.toMatchObject({ code: 'not-found' })
+    expect(await mails('visit-assigned')).toEqual([])
+  })
+})
+
+describe('signOffVisit', () => {
+  const signOff = async (visitId: string, db = world.electrician) =>
+    signOffVisit(db, { visitId, input: LEFT, organisationSlug: 'ours', nowMs: NOW_MS + 1 })
+
+  it('records the revision, closes the flag and tells the landlord', async () => {
+    const { evaluation } = await signOff(await assign())
+    expect(evaluation.closed).toContain('misses-recovery')
+    expect(await listHardware(world.landlord, unitOf(world, COLD).unitId)).toHaveLength(2)
+    expect(await mails('visit-done')).toHaveLength(1)
+  })
+  it('is done once however often it is sent', async () => {
+    const visitId = await assign()
+    await signOff(visitId)
+    await expect(signOff(visitId)).rejects.toMatchObject({ code: 'conflict' })
+    expect(await listHardware(world.landlord, unitOf(world, COLD).unitId)).toHaveLength(2)
+    expect(await mails('visit-done')).toHaveLength(1)
+  })
+  it("answers not found for another organisation's visit, and forbids tenants", async () => {
+    const visitId = await assign()
+    await expect(signOff(visitId, world.stranger)).rejects.toMatchObject({ code: 'not-found' })
+    await expect(openVisit(world.tenant, visitId)).rejects.toMatchObject({ code: 'forbidden' })
+  })
+})
