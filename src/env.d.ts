@@ -13,5 +13,7 @@ declare namespace App {
     nowMs: number
     /** Set when an unexpected error is shown: its id in the log. */
     errorId?: string
+    /** Set when a request is refused: why, in words for whoever sent it. */
+    refusal?: string
   }
 }

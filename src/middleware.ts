@@ -2,72 +2,48 @@
  * Every request's beginning and end: who asks (session), in which organisation (from the address, never from the session),
  * with which scope; then the headers that every answer carries. Nothing else mints a scope for a request.
  */
-import { defineMiddleware } from 'astro:middleware'
+import type { APIContext, MiddlewareHandler } from 'astro'
 import { parsePersonId } from '#db/ids.ts'
 import { lucia } from '#lib/auth/lucia.server.ts'
 import { openOrganisation } from '#lib/auth/scope.server.ts'
 import { processConfig } from '#lib/config.server.ts'
 import { database } from '#lib/database.server.ts'
-import { AppError } from '#lib/http/app-error.ts'
+import { AppError, notFound } from '#lib/http/app-error.ts'
+import { isCrossSite } from '#lib/http/cross-site.ts'
 import { secured } from '#lib/http/security-headers.ts'
 import { logUnknown, toResponse } from '#lib/http/to-response.ts'
 
 /** Links in mail carry their own proof and are posted to by mail programs. */
 const SIGNED_LINKS = '/t/'
-const IN_ORGANISATION = /^\/(api\/)?o\/([^/]+)(?:\/|$)/
+const IN_ORGANISATION = /^\/(?:api\/)?o\/([^/]+)(?:\/|$)/
+const isApi = ({ url }: APIContext): boolean => url.pathname.startsWith('/api/')
 
-export const onRequest = defineMiddleware(async (context, next) => {
-  const { locals, url, request } = context
+export const onRequest: MiddlewareHandler = async (context, next) => {
+  const { locals, url } = context
   locals.nowMs = Date.now()
   locals.user = null
   locals.organisation = null
   locals.db = null
-  const isApi = url.pathname.startsWith('/api/')
   try {
-    if (!url.pathname.startsWith(SIGNED_LINKS) && isCrossSite(request)) {
-      return secured(
-        toResponse(new AppError('forbidden', 'This request came from another site and was refused. Nothing was changed.'), url.pathname),
-      )
+    if (!url.pathname.startsWith(SIGNED_LINKS) && isCrossSite(context.request, processConfig().baseUrl)) {
+      throw new AppError('forbidden', 'This request came from another site and was refused. Nothing was changed.')
     }
-    const user = await recognise(context)
-    locals.user = user
-    const place = IN_ORGANISATION.exec(url.pathname)
-    if (place) {
-      if (!user) {
-        if (isApi)
-          return secured(
-            toResponse(
-              new AppError('not-signed-in', 'You are not signed in, or your session has ended. Sign in and try again.'),
-              url.pathname,
-            ),
-          )
-        return secured(context.redirect(`/sign-in?next=${encodeURIComponent(url.pathname + url.search)}`))
-      }
-      const opened = await openOrganisation(database(), user.id, place[2] ?? '')
-      if (!opened) {
-        if (isApi) return secured(toResponse(new AppError('not-found', 'There is no such page here.'), url.pathname))
-        return secured(await context.rewrite('/404'))
-      }
-      locals.organisation = opened.organisation
-      locals.db = opened.db
-    }
-    return secured(await next(), { signedIn: user !== null })
+    locals.user = await recognise(context)
+    const slug = IN_ORGANISATION.exec(url.pathname)?.[1]
+    if (slug !== undefined) await open(context, slug)
+    const response = await next()
+    // A route of /api that is not there, or not for this method, is a problem document like every other.
+    const unanswered = isApi(context) && response.status === 404 && !response.headers.get('content-type')?.includes('json')
+    return secure(unanswered ? toResponse(notFound('address'), url.pathname) : response)
   } catch (error) {
-    if (error instanceof AppError) {
-      if (isApi) return secured(toResponse(error, url.pathname))
-      const page = error.code === 'forbidden' ? '/403' : error.code === 'not-found' ? '/404' : null
-      if (page) return secured(await context.rewrite(page), { signedIn: true })
-    }
-    if (isApi) return secured(toResponse(error, url.pathname))
-    locals.errorId = logUnknown(error)
-    return secured(await context.rewrite('/500'))
+    return secure(await refuse(context, error))
   }
-})
+}
 
-type Context = Parameters<Parameters<typeof defineMiddleware>[0]>[0]
+const secure = (response: Response): Response => secured(response, { https: processConfig().baseUrl.startsWith('https:') })
 
 /** Reads the session cookie; a session in the second half of its life is prolonged, a dead one's cookie is cleared. */
-async function recognise({ cookies }: Context): Promise<App.Locals['user']> {
+async function recognise({ cookies }: APIContext): Promise<App.Locals['user']> {
   const sessionId = cookies.get(lucia().sessionCookieName)?.value
   if (!sessionId) return null
   const { session, user } = await lucia().validateSession(sessionId)
@@ -77,13 +53,33 @@ async function recognise({ cookies }: Context): Promise<App.Locals['user']> {
   return user && personId ? { id: personId, email: user.email, name: user.name } : null
 }
 
-/** A writing request must come from our own pages: browsers say where from, and programs without a browser carry no cookie of ours. */
-function isCrossSite(request: Request): boolean {
-  if (request.method === 'GET' || request.method === 'HEAD') return false
-  const site = request.headers.get('sec-fetch-site')
-  if (site) return site !== 'same-origin' && site !== 'none'
-  const origin = request.headers.get('origin')
-  if (!origin) return false
-  // The Host header is the client's own; the configured address is the other name this server answers to.
-  return new URL(origin).host !== request.headers.get('host') && origin !== new URL(processConfig().baseUrl).origin
+/** Opens the organisation of the address for whoever is signed in; unknown and not theirs are one answer. */
+async function open({ locals }: APIContext, slug: string): Promise<void> {
+  if (!locals.user) throw new AppError('not-signed-in', 'You are not signed in, or your session has ended. Sign in and try again.')
+  const opened = await openOrganisation(database(), locals.user.id, slug)
+  if (!opened) throw notFound('page')
+  locals.organisation = opened.organisation
+  locals.db = opened.db
+}
+
+/** The answer to what was thrown: a problem document for `/api`, the way to the sign-in, or a page that says it. */
+async function refuse(context: APIContext, error: unknown): Promise<Response> {
+  const { url, locals } = context
+  if (isApi(context)) return toResponse(error, url.pathname)
+  if (error instanceof AppError) {
+    if (error.code === 'not-signed-in') return context.redirect(`/sign-in?next=${encodeURIComponent(url.pathname + url.search)}`, 303)
+    if (error.code === 'not-found') return errorPage(context, '/404')
+    if (error.code === 'forbidden') {
+      locals.refusal = error.message
+      return errorPage(context, '/403')
+    }
+  }
+  locals.errorId = logUnknown(error)
+  return errorPage(context, '/500')
+}
+
+/** A fresh GET: the form that failed is neither read nor carried out again. */
+function errorPage({ url, request, rewrite }: APIContext, page: '/403' | '/404' | '/500'): Promise<Response> {
+  const cookie = request.headers.get('cookie')
+  return rewrite(new Request(new URL(page, url), { headers: cookie && page !== '/500' ? { cookie } : {} }))
 }

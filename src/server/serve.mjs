@@ -48,10 +48,8 @@ const server = createServer((request, response) => {
   for (const name of Object.keys(request.headers)) if (name === 'forwarded' || name.startsWith('x-forwarded-')) delete request.headers[name]
   compress(request, response, () => {
     files(request, response, () => {
-      handler(request, response, (error) => {
-        if (error) console.error(JSON.stringify({ level: 50, time: Date.now(), msg: 'request failed', reason: String(error) }))
-        if (!response.headersSent) answer(response, error ? 500 : 404, error ? 'Something failed here.' : 'There is no such page here.')
-      })
+      // Without a next step of ours Astro answers unknown addresses itself, with the product's own page.
+      void handler(request, response)
     })
   })
 })

@@ -14,8 +14,14 @@ const ACTION_CODE_OF: Readonly<Record<AppErrorCode, ActionErrorCode>> = {
   limited: 'TOO_MANY_REQUESTS',
 }
 
-export type FormOutcome<T> =
-  { readonly ok: true; readonly value: T } | { readonly ok: false; readonly message: string; readonly fields: readonly FieldProblem[] }
+export interface FormProblem {
+  readonly ok: false
+  readonly code: AppErrorCode
+  readonly message: string
+  readonly fields: readonly FieldProblem[]
+  readonly retryAfterS: number | null
+}
+export type FormOutcome<T> = { readonly ok: true; readonly value: T } | FormProblem
 
 /** Field problems are a value for the form; everything else is an ActionError. */
 export async function runForm<T>(work: () => Promise<T>): Promise<FormOutcome<T>> {
@@ -26,7 +32,8 @@ export async function runForm<T>(work: () => Promise<T>): Promise<FormOutcome<T>
       if (error.code === 'not-found' || error.code === 'forbidden' || error.code === 'not-signed-in') {
         throw new ActionError({ code: ACTION_CODE_OF[error.code], message: error.message })
       }
-      return { ok: false, message: error.message, fields: error.details.fields ?? [] }
+      const { fields = [], retryAfterS = null } = error.details
+      return { ok: false, code: error.code, message: error.message, fields, retryAfterS }
     }
     const errorId = logUnknown(error)
     throw new ActionError({
