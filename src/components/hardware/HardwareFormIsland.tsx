@@ -1,6 +1,6 @@
 /** Records what is installed: every check's verdict and the timer's real run as one types, computed in the browser by the same core. */
 import { useMutation } from '@tanstack/react-query'
-import { useMemo, useState } from 'react'
+import { useEffect, useMemo, useState } from 'react'
 import { describeController } from '#lib/core/controller/describe.ts'
 import { runDuration } from '#lib/core/controller/run-duration.ts'
 import { checkHardware } from '#lib/core/hardware/check-hardware.ts'
@@ -28,6 +28,9 @@ function HardwareForm({ installation: first, expectedRevision, profile, submitUr
   const [installation, setInstallation] = useState(first)
   const [reason, setReason] = useState('')
   const [measuredMin, setMeasuredMin] = useState<number | null>(null)
+  // What is typed before the script has taken over would be lost, so nothing can be typed until then.
+  const [ready, setReady] = useState(false)
+  useEffect(() => setReady(true), [])
   const checks = useMemo(() => checkHardware(installation, profile), [installation, profile])
   const record = useMutation({
     mutationFn: () => apiSend('POST', submitUrl, { installation, reason, measuredMin, expectedRevision } satisfies RecordHardwareInput),
@@ -50,37 +53,39 @@ function HardwareForm({ installation: first, expectedRevision, profile, submitUr
             <p className="text-soft">Nothing was recorded. What you entered is still here.</p>
           </div>
         )}
-        <ControllerFields
-          controller={installation.controller}
-          problemOf={problemOf}
-          onChange={(controller) => setInstallation({ ...installation, controller })}
-        />
-        <TankFields
-          tank={installation.load.tank}
-          supplyVoltageV={installation.circuit.supplyVoltageV}
-          problemOf={problemOf}
-          onChange={(tank) => setInstallation({ ...installation, load: { ...installation.load, tank } })}
-        />
-        <CircuitFields
-          circuit={installation.circuit}
-          problemOf={problemOf}
-          onChange={(circuit) => setInstallation({ ...installation, circuit })}
-        />
-        <div className="grid gap-4 sm:grid-cols-2">
-          <NumberField
-            label="Stop-watch: one real run"
-            unit="minutes; empty = not measured"
-            value={measuredMin}
-            problem={problemOf('measuredMin')}
-            onChange={setMeasuredMin}
+        <fieldset disabled={!ready} className="flex flex-col gap-8">
+          <ControllerFields
+            controller={installation.controller}
+            problemOf={problemOf}
+            onChange={(controller) => setInstallation({ ...installation, controller })}
           />
-          <TextField label="What was done and why" value={reason} problem={problemOf('reason')} onChange={setReason} />
-        </div>
-        <p>
-          <button className="button button-main min-h-12" disabled={record.isPending}>
-            {record.isPending ? 'Recording…' : submitLabel}
-          </button>
-        </p>
+          <TankFields
+            tank={installation.load.tank}
+            supplyVoltageV={installation.circuit.supplyVoltageV}
+            problemOf={problemOf}
+            onChange={(tank) => setInstallation({ ...installation, load: { ...installation.load, tank } })}
+          />
+          <CircuitFields
+            circuit={installation.circuit}
+            problemOf={problemOf}
+            onChange={(circuit) => setInstallation({ ...installation, circuit })}
+          />
+          <div className="grid gap-4 sm:grid-cols-2">
+            <NumberField
+              label="Stop-watch: one real run"
+              unit="minutes; empty = not measured"
+              value={measuredMin}
+              problem={problemOf('measuredMin')}
+              onChange={setMeasuredMin}
+            />
+            <TextField label="What was done and why" value={reason} problem={problemOf('reason')} onChange={setReason} />
+          </div>
+          <p>
+            <button className="button button-main min-h-12" disabled={record.isPending}>
+              {record.isPending ? 'Recording…' : submitLabel}
+            </button>
+          </p>
+        </fieldset>
       </form>
       <aside className="flex flex-col gap-4" aria-label="What this comes to">
         <RealRun installation={installation} />

@@ -27,6 +27,8 @@ export function ShowerAnswerIsland({ heater, formId, first }: Props) {
       )
       setForm(readWeekForm(Object.fromEntries(fields)))
     }
+    // What was chosen before the script took over counts too.
+    read()
     element.addEventListener('input', read)
     return () => element.removeEventListener('input', read)
   }, [formId])
