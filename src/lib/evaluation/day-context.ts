@@ -1,7 +1,7 @@
 /** A local day at a site, worked out once for all units: its length, clock change, cold water, on-peak and prices. */
 import { inletC } from '#lib/core/tank/inlet.ts'
 import { peakIntervals, priceAt } from '#lib/core/tariff/price.ts'
-import { clockChangesIn, addDays, dayBounds, offsetMin, weekdayOf } from '#lib/core/time/civil.ts'
+import { clockChangesIn, dayBounds, weekdayOf } from '#lib/core/time/civil.ts'
 import type { Day, MinuteInterval, Zone } from '#lib/core/time/types.ts'
 import { MIN_PER_DAY, MS_PER_MIN } from '#lib/core/units.ts'
 import type { ClockChange } from '#lib/strip/clock.ts'
@@ -36,13 +36,9 @@ export function dayContext(site: Pick<Site, 'zone' | 'climate' | 'tariff'>, day:
 
 /** The change inside a day, on the day's own count of elapsed minutes; `null` on ordinary days. */
 export function clockChangeOf(day: Day, zone: Zone): ClockChange | null {
-  const change = clockChangesIn(day, addDays(day, 1), zone)[0]
-  if (!change) return null
-  const { startsAtMs } = dayBounds(day, zone)
-  const before = offsetMin(startsAtMs, zone)
-  let atMin = 0
-  while (atMin < 2 * MIN_PER_DAY && offsetMin(startsAtMs + atMin * MS_PER_MIN, zone) === before) atMin += SLOT_MIN
-  return { atMin, shiftMin: change.shiftMin }
+  const bounds = dayBounds(day, zone)
+  const change = clockChangesIn(bounds, zone)[0]
+  return change ? { atMin: (change.atMs - bounds.startsAtMs) / MS_PER_MIN, shiftMin: change.shiftMin } : null
 }
 
 function priceTable(

@@ -92,10 +92,10 @@ describe('slotsOfDay', () => {
 })
 
 describe('clockChangesIn', () => {
-  it('names both changes of 2026 in London', () => {
-    expect(clockChangesIn('2026-01-01', '2027-01-01', 'Europe/London')).toEqual([
-      { day: '2026-03-29', shiftMin: 60 },
-      { day: '2026-10-25', shiftMin: -60 },
+  it('names both changes of 2026 in London: forward at 01:00 UTC on 29 March, back at 01:00 UTC on 25 October', () => {
+    expect(clockChangesIn({ startsAtMs: Date.UTC(2026, 0, 1), endsAtMs: Date.UTC(2027, 0, 1) }, 'Europe/London')).toEqual([
+      { atMs: Date.UTC(2026, 2, 29, 1), shiftMin: 60 },
+      { atMs: Date.UTC(2026, 9, 25, 1), shiftMin: -60 },
     ])
   })
 })

@@ -3,7 +3,10 @@
  * RFC 5545 3.3.5 decides what a wall-clock time means: a repeated one is its first occurrence, a missing one is read with the offset before the gap.
  */
 import { MIN_PER_DAY, MS_PER_MIN } from '../units.ts'
-import type { CivilMoment, Day, MsInterval, Weekday, Zone } from './types.ts'
+import type { CivilMoment, Day, MinuteInterval, MsInterval, Weekday, Zone } from './types.ts'
+import { clockChangesIn, offsetMsAt, offsetSegments } from './zone.ts'
+
+export { clockChangesIn, offsetMin } from './zone.ts'
 
 const MS_PER_DAY = MIN_PER_DAY * MS_PER_MIN
 
@@ -28,74 +31,20 @@ export function daysOfMonth(month: string): readonly Day[] {
   return Array.from({ length: count }, (_, index) => addDays(first, index))
 }
 
-// Memo of a pure function: an offset depends on the zone and instant alone.
-const formats = new Map<Zone, Intl.DateTimeFormat>()
-function formatOf(zone: Zone): Intl.DateTimeFormat {
-  let format = formats.get(zone)
-  if (!format) {
-    format = new Intl.DateTimeFormat('en-US', {
-      timeZone: zone,
-      hourCycle: 'h23',
-      year: 'numeric',
-      month: 'numeric',
-      day: 'numeric',
-      hour: 'numeric',
-      minute: 'numeric',
-      second: 'numeric',
-      era: 'short',
-    })
-    formats.set(zone, format)
-  }
-  return format
-}
-
-const offsetMemo = new Map<string, number>()
-const MEMO_SLOT_MS = 15 * MS_PER_MIN
-const MEMO_LIMIT = 200_000
-
-/**
- * Minutes by which the zone's wall clock is ahead of UTC at an instant. Zones of today change on quarter hours, so the
- * offset is constant within one.
- */
-export function offsetMin(instantMs: number, zone: Zone): number {
-  const slot = Math.floor(instantMs / MEMO_SLOT_MS)
-  const key = `${zone}|${slot}`
-  const known = offsetMemo.get(key)
-  if (known !== undefined) return known
-  const parts = Object.fromEntries(
-    formatOf(zone)
-      .formatToParts(slot * MEMO_SLOT_MS)
-      .map((part) => [part.type, part.value]),
-  )
-  const wallMs = Date.UTC(
-    Number(parts.year),
-    Number(parts.month) - 1,
-    Number(parts.day),
-    Number(parts.hour),
-    Number(parts.minute),
-    Number(parts.second),
-  )
-  const offset = Math.round((wallMs - slot * MEMO_SLOT_MS) / MS_PER_MIN)
-  if (offsetMemo.size > MEMO_LIMIT) offsetMemo.clear()
-  offsetMemo.set(key, offset)
-  return offset
-}
-
 /** Instant of a wall-clock minute of a local day; `minuteOfDay` may pass 1,440 (the days after, by wall clock). */
 export function instantOf(day: Day, minuteOfDay: number, zone: Zone): number {
   const wallMs = dayNumber(day) * MS_PER_DAY + minuteOfDay * MS_PER_MIN
   // The larger offset gives the earlier instant: the first occurrence of a repeated time.
-  const before = offsetMin(wallMs - MS_PER_DAY, zone)
-  const after = offsetMin(wallMs + MS_PER_DAY, zone)
-  for (const offset of [Math.max(before, after), Math.min(before, after)]) {
-    const instantMs = wallMs - offset * MS_PER_MIN
-    if (offsetMin(instantMs, zone) === offset) return instantMs
-  }
-  return wallMs - before * MS_PER_MIN
+  const beforeMs = offsetMsAt(wallMs - MS_PER_DAY, zone)
+  const afterMs = offsetMsAt(wallMs + MS_PER_DAY, zone)
+  const earlierMs = wallMs - Math.max(beforeMs, afterMs)
+  if (offsetMsAt(earlierMs, zone) === wallMs - earlierMs) return earlierMs
+  const laterMs = wallMs - Math.min(beforeMs, afterMs)
+  return offsetMsAt(laterMs, zone) === wallMs - laterMs ? laterMs : wallMs - beforeMs
 }
 
 export function civilOf(instantMs: number, zone: Zone): CivilMoment {
-  const wallMs = instantMs + offsetMin(instantMs, zone) * MS_PER_MIN
+  const wallMs = instantMs + offsetMsAt(instantMs, zone)
   const number = Math.floor(wallMs / MS_PER_DAY)
   const day = dayOfNumber(number)
   return { day, minuteOfDay: (wallMs - number * MS_PER_DAY) / MS_PER_MIN, weekday: weekdayOf(day) }
@@ -107,7 +56,12 @@ export const dayBounds = (day: Day, zone: Zone): MsInterval => ({
   endsAtMs: firstInstantOf(addDays(day, 1), zone),
 })
 
-const firstInstantOf = (day: Day, zone: Zone): number => instantOf(day, 0, zone)
+function firstInstantOf(day: Day, zone: Zone): number {
+  const atMs = instantOf(day, 0, zone)
+  if (civilOf(atMs, zone).minuteOfDay === 0) return atMs
+  // 00:00 is missing: the day begins where the clocks jump over it.
+  return clockChangesIn({ startsAtMs: atMs - MS_PER_DAY, endsAtMs: atMs + 1 }, zone).at(-1)?.atMs ?? atMs
+}
 
 /** Instant of a minute counted in elapsed time from the day's first instant. */
 export const instantAtElapsed = (day: Day, elapsedMin: number, zone: Zone): number =>
@@ -142,12 +96,20 @@ export function intersect(one: MsInterval, other: MsInterval): MsInterval | null
   return startsAtMs < endsAtMs ? { startsAtMs, endsAtMs } : null
 }
 
-/** Days of a range that differ from 24 hours, with the shift in minutes (+60 = the clocks went forward). */
-export function clockChangesIn(fromDay: Day, toDay: Day, zone: Zone): readonly { readonly day: Day; readonly shiftMin: number }[] {
-  const changes: { day: Day; shiftMin: number }[] = []
-  for (let day = fromDay; day < toDay; day = addDays(day, 1)) {
-    const shiftMin = MIN_PER_DAY - minutesInDay(day, zone)
-    if (shiftMin !== 0) changes.push({ day, shiftMin })
+/**
+ * The instants at which the wall clock shows a time in `[startMin, endMin)` of a local day: both passes of a repeated hour, nothing
+ * of a missing one. `endMin` may pass 1,440 (the morning after). Two intervals where the window's edge falls in a repeated hour.
+ */
+export function wallWindow(day: Day, window: MinuteInterval, zone: Zone): readonly MsInterval[] {
+  const midnightMs = dayNumber(day) * MS_PER_DAY
+  const wall = { startsAtMs: midnightMs + window.startMin * MS_PER_MIN, endsAtMs: midnightMs + window.endMin * MS_PER_MIN }
+  const found: MsInterval[] = []
+  // Every zone is within a day of UTC.
+  for (const segment of offsetSegments({ startsAtMs: wall.startsAtMs - MS_PER_DAY, endsAtMs: wall.endsAtMs + MS_PER_DAY }, zone)) {
+    const piece = intersect(segment, { startsAtMs: wall.startsAtMs - segment.offsetMs, endsAtMs: wall.endsAtMs - segment.offsetMs })
+    const last = found.at(-1)
+    if (piece && last?.endsAtMs === piece.startsAtMs) found[found.length - 1] = { ...last, endsAtMs: piece.endsAtMs }
+    else if (piece) found.push(piece)
   }
-  return changes
+  return found
 }
