@@ -23,6 +23,8 @@ export interface Config {
   readonly databaseFile: string
   /** Without a trailing slash; every link in mail and feeds is built from it, never from a request. */
   readonly baseUrl: string
+  /** Whether the base address is this very machine's own; what is for development alone shows only then. */
+  readonly local: boolean
   /** `null`: mail goes to the local post room (readable at `/dev/post`) instead of an SMTP server. */
   readonly smtpUrl: string | null
   readonly mailFrom: string
@@ -46,6 +48,7 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
   const value = parsed.data
   const dataDir = resolve(value.DWELLHOUR_DATA_DIR)
   const baseUrl = (value.DWELLHOUR_BASE_URL ?? `http://localhost:${value.DWELLHOUR_PORT}`).replace(/\/+$/, '')
+  const local = LOOPBACK.has(new URL(baseUrl).hostname)
   return {
     status: 'valid',
     config: {
@@ -54,12 +57,13 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
       dataDir,
       databaseFile: resolve(dataDir, 'dwellhour.sqlite'),
       baseUrl,
+      local,
       smtpUrl: value.DWELLHOUR_SMTP_URL ?? null,
       mailFrom: value.DWELLHOUR_MAIL_FROM,
       secret: value.DWELLHOUR_SECRET ?? null,
       logLevel: value.DWELLHOUR_LOG_LEVEL,
       // The demo's password is public: it never fills a service that others can reach.
-      demo: value.DWELLHOUR_DEMO === 'on' && LOOPBACK.has(new URL(baseUrl).hostname),
+      demo: value.DWELLHOUR_DEMO === 'on' && local,
     },
   }
 }
