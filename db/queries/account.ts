@@ -81,6 +81,23 @@ export async function addAccountToken(db: Connection, token: NewToken): Promise<
     .execute()
 }
 
+/** Whose token this is while it can still be taken; `null` when it is unknown, expired or used. */
+export async function findTokenOwner(
+  db: Connection,
+  find: { readonly tokenHash: string; readonly purpose: 'confirm' | 'reset'; readonly nowMs: number },
+): Promise<Person | null> {
+  const row = await db
+    .selectFrom('account_token')
+    .innerJoin('person', 'person.id', 'account_token.person_id')
+    .where('account_token.token_hash', '=', find.tokenHash)
+    .where('account_token.purpose', '=', find.purpose)
+    .where('account_token.used_at_ms', 'is', null)
+    .where('account_token.expires_at_ms', '>', find.nowMs)
+    .selectAll('person')
+    .executeTakeFirst()
+  return row ?? null
+}
+
 /** Marks a token as used and returns whose it was; `null` when it is unknown, expired or used already. Two at once: one wins. */
 export async function takeAccountToken(
   db: Connection,
@@ -112,11 +129,16 @@ export async function countAttempts(
   return { count: Number(row.count), oldestMs: row.oldest }
 }
 
-export const addAttempts = (db: Connection, keys: readonly string[], atMs: number) =>
-  db
+export async function addAttempts(db: Connection, keys: readonly string[], atMs: number): Promise<readonly number[]> {
+  const rows = await db
     .insertInto('signin_attempt')
     .values(keys.map((key) => ({ key, at_ms: atMs })))
+    .returning('id')
     .execute()
+  return rows.map((row) => row.id)
+}
+
+export const deleteAttempts = (db: Connection, ids: readonly number[]) => db.deleteFrom('signin_attempt').where('id', 'in', ids).execute()
 
 export const clearAttempts = (db: Connection, key: string) => db.deleteFrom('signin_attempt').where('key', '=', key).execute()
 

@@ -116,6 +116,10 @@ export const deleteAccess = (db: OrgTrx, access: Access) =>
     .where('role', '=', access.role)
     .execute()
 
+/** All access of a person in one role; goes with the role itself. */
+export const deleteAccessOf = (db: OrgTrx, personId: PersonId, role: Access['role']) =>
+  db.deleteFrom('property_access').where('person_id', '=', personId).where('role', '=', role).execute()
+
 export interface OpenInvitation {
   readonly id: InvitationId
   readonly email: string
@@ -166,6 +170,30 @@ export async function addInvitation(db: OrgTrx, fields: NewInvitationFields): Pr
     })
     .execute()
   return id
+}
+
+/** What an open invitation offers; an expired one is still open to be sent again. */
+export async function findOpenInvitation(
+  db: OrgDb,
+  id: InvitationId,
+): Promise<Pick<NewInvitationFields, 'email' | 'name' | 'role' | 'propertyId' | 'tenancyId'> | null> {
+  const row = await db
+    .selectFrom('invitation')
+    .where('invitation.id', '=', id)
+    .where('invitation.accepted_at_ms', 'is', null)
+    .where('invitation.revoked_at_ms', 'is', null)
+    .select(['invitation.email', 'invitation.name', 'invitation.role', 'invitation.property_id', 'invitation.tenancy_id'])
+    .executeTakeFirst()
+  return row ? { email: row.email, name: row.name, role: row.role, propertyId: row.property_id, tenancyId: row.tenancy_id } : null
+}
+
+/** Gives an invitation a new link; the one before stops working. */
+export async function changeInvitationToken(
+  db: OrgTrx,
+  id: InvitationId,
+  change: { readonly tokenHash: string; readonly expiresAtMs: number },
+): Promise<void> {
+  await db.updateTable('invitation', { token_hash: change.tokenHash, expires_at_ms: change.expiresAtMs }).where('id', '=', id).execute()
 }
 
 /** Revokes an open invitation; false when it is not there or not open. */

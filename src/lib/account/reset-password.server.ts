@@ -14,17 +14,15 @@ import { AppError } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
 import { letter } from '#lib/mail/letter.ts'
 import { queueAccountMail } from '#lib/mail/queue-message.server.ts'
+import { admitMail } from './limits.server.ts'
 import { newPasswordSchema, resetRequestSchema } from './schemas.ts'
+import type { AccountRequest } from './sign-in.server.ts'
 import { expiryMs, newToken, RESET_HOURS } from './tokens.server.ts'
 
-interface Request {
-  readonly input: unknown
-  readonly nowMs: number
-}
-
 /** Answers the same whether or not the address is known. */
-export async function requestReset(db: Connection, { input, nowMs }: Request): Promise<void> {
+export async function requestReset(db: Connection, { input, address, nowMs }: AccountRequest): Promise<void> {
   const { email } = parseInput(resetRequestSchema, input)
+  await admitMail(db, { email, address, nowMs })
   await db.transaction().execute(async (trx) => {
     const person = await findPersonByEmail(trx, email)
     if (!person) return
@@ -55,7 +53,7 @@ export async function requestReset(db: Connection, { input, nowMs }: Request): P
 }
 
 /** Sets the password, ends every session, and counts as confirming the address: the link went there. */
-export async function resetPassword(db: Connection, { input, nowMs }: Request): Promise<void> {
+export async function resetPassword(db: Connection, { input, nowMs }: { readonly input: unknown; readonly nowMs: number }): Promise<void> {
   const { token, password } = parseInput(newPasswordSchema, input)
   const passwordHash = await hashPassword(password)
   await db.transaction().execute(async (trx) => {

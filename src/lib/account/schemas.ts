@@ -3,10 +3,13 @@ import { z } from 'zod'
 
 export const PASSWORD_LENGTH = { min: 12, max: 200 } as const
 
+/** Keyboards of phones leave a space after a completed address and a capital before it. */
 export const emailField = z
-  .email('Enter an e-mail address, like name@example.org.')
-  .max(254)
-  .transform((email) => email.toLowerCase())
+  .string()
+  .trim()
+  .toLowerCase()
+  .max(254, 'An e-mail address has at most 254 characters.')
+  .pipe(z.email('Enter an e-mail address, like name@example.org.'))
 export const nameField = z.string().trim().min(1, 'Enter a name.').max(100, 'A name has at most 100 characters.')
 export const passwordField = z
   .string()

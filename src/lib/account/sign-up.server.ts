@@ -1,4 +1,7 @@
-/** Signs a person up and mails the confirmation link; an address that is known gets a mail that says so, and the page the same answer. */
+/**
+ * Signs a person up and mails the confirmation link; an address that is known gets a mail that says so, and the page the
+ * same answer: a proof for this browser, which confirms without asking for the password again.
+ */
 import { addAccountToken, addPerson, changePerson, type Connection, findPersonByEmail } from '#db/queries/account.ts'
 import { hashToken } from '#lib/auth/kysely-adapter.server.ts'
 import { hashPassword } from '#lib/auth/password.server.ts'
@@ -6,14 +9,20 @@ import { processConfig } from '#lib/config.server.ts'
 import { parseInput } from '#lib/http/parse.ts'
 import { letter } from '#lib/mail/letter.ts'
 import { queueAccountMail } from '#lib/mail/queue-message.server.ts'
+import { admitMail } from './limits.server.ts'
 import { signUpSchema } from './schemas.ts'
+import type { AccountRequest } from './sign-in.server.ts'
+import { signUpProof } from './sign-up-proof.server.ts'
 import { CONFIRM_HOURS, expiryMs, newToken } from './tokens.server.ts'
 
-export async function signUp(db: Connection, { input, nowMs }: { readonly input: unknown; readonly nowMs: number }): Promise<void> {
+export async function signUp(db: Connection, { input, address, nowMs }: AccountRequest): Promise<{ readonly proof: string }> {
   const { name, email, password } = parseInput(signUpSchema, input)
+  await admitMail(db, { email, address, nowMs })
   const passwordHash = await hashPassword(password)
   const { baseUrl } = processConfig()
-  await db.transaction().execute(async (trx) => {
+  const token = newToken()
+  const proof = signUpProof(token, nowMs)
+  return db.transaction().execute(async (trx) => {
     const known = await findPersonByEmail(trx, email)
     if (known?.email_confirmed_at_ms) {
       const { text, html } = letter({
@@ -31,11 +40,10 @@ export async function signUp(db: Connection, { input, nowMs }: { readonly input:
         html,
         nowMs,
       })
-      return
+      return { proof }
     }
     const personId = known?.id ?? (await addPerson(trx, { email, name, passwordHash, emailConfirmedAtMs: null, createdAtMs: nowMs }))
     if (known) await changePerson(trx, known.id, { name, passwordHash })
-    const token = newToken()
     await addAccountToken(trx, {
       tokenHash: hashToken(token),
       personId,
@@ -58,5 +66,6 @@ export async function signUp(db: Connection, { input, nowMs }: { readonly input:
       html,
       nowMs,
     })
+    return { proof }
   })
 }

@@ -6,15 +6,19 @@ import { KyselyAdapter } from './kysely-adapter.server.ts'
 
 export const SESSION_DAYS = 30
 
-const make = () =>
-  new Lucia(new KyselyAdapter(database), {
+/** Every cookie of ours: no script reads it, no other site's form sends it, and over https it never travels in the clear. */
+export const cookieRules = () =>
+  ({ httpOnly: true, sameSite: 'lax', secure: processConfig().baseUrl.startsWith('https:'), path: '/' }) as const
+
+const make = () => {
+  const { sameSite, secure, path } = cookieRules()
+  return new Lucia(new KyselyAdapter(database), {
     sessionExpiresIn: new TimeSpan(SESSION_DAYS, 'd'),
-    sessionCookie: {
-      name: 'dwellhour_session',
-      attributes: { sameSite: 'lax', secure: processConfig().baseUrl.startsWith('https:'), path: '/' },
-    },
+    // Lucia itself makes the cookie http-only.
+    sessionCookie: { name: 'dwellhour_session', attributes: { sameSite, secure, path } },
     getUserAttributes: ({ email, name }) => ({ email, name }),
   })
+}
 
 let made: ReturnType<typeof make> | null = null
 /** Made at first use, so that a build needs no settings. */

@@ -2,6 +2,14 @@
 export const formFields = (form: FormData): Record<string, string> =>
   Object.fromEntries([...form.entries()].flatMap(([name, value]) => (typeof value === 'string' ? [[name, value] as const] : [])))
 
+/** What was typed into a form that came back with a problem, so that nobody types it twice; passwords are typed again. */
+export async function typedIn(request: Request): Promise<Readonly<Record<string, string>>> {
+  if (request.method !== 'POST') return {}
+  const typed = formFields(await request.clone().formData())
+  delete typed.password
+  return typed
+}
+
 /** A path of our own to go to after signing in; anything else is `null`. */
 export function safeNext(next: string | null): string | null {
   return next && /^\/(?![/\\])[^\s]*$/.test(next) && !next.startsWith('/sign-') ? next : null

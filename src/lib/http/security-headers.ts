@@ -11,7 +11,7 @@ const BASE: Readonly<Record<string, string>> = {
 const STYLE_ATTRIBUTES = "style-src-attr 'unsafe-inline';"
 /** What is no page loads nothing, whoever opens it. */
 const NO_PAGE = "default-src 'none'; frame-ancestors 'none'"
-/** Two years, as the preload list asks; names under this one are somebody else's to decide. */
+/** Two years. Without `includeSubDomains`: other names under this one may belong to other services. */
 const HTTPS_ONLY = 'max-age=63072000'
 
 export function secured(response: Response, { https }: { readonly https: boolean }): Response {

@@ -1,10 +1,10 @@
 /**
- * Accepts an invitation: a new person sets name and password, a known one must be signed in under the invited address.
- * The link went to that address, so accepting confirms it. Ten at once: one wins.
+ * Accepts an invitation: a person with an account must be signed in under the invited address; anybody else sets name and
+ * password. The link went to that address, so accepting confirms it. Ten at once: one wins.
  */
 import type { PersonId } from '#db/ids.ts'
 import { orgTrx } from '#db/org-db.ts'
-import { addPerson, type Connection, findPersonByEmail } from '#db/queries/account.ts'
+import { addPerson, changePerson, type Connection, deleteSessionsOf, findPersonByEmail, type Person } from '#db/queries/account.ts'
 import { addAudit } from '#db/queries/audit.ts'
 import { addAccess, addMembership, findInvitationByToken, type FoundInvitation, takeInvitation } from '#db/queries/organisation.ts'
 import { changeTenancyPerson } from '#db/queries/tenancy.ts'
@@ -29,29 +29,22 @@ const gone = () => new AppError('expired', 'This invitation has been used, revok
 export const readInvitation = (db: Connection, token: string, nowMs: number): Promise<FoundInvitation | null> =>
   findInvitationByToken(db, hashToken(token), nowMs)
 
+/** Somebody who can sign in. A sign-up that was never confirmed may be a stranger's: the invited address outranks it. */
+export const hasAccount = (person: Person | undefined): boolean =>
+  person !== undefined && person.password_hash !== null && person.email_confirmed_at_ms !== null
+
 export async function acceptInvitation(
   db: Connection,
-  acceptance: Acceptance,
+  { token, signedIn, input, nowMs }: Acceptance,
 ): Promise<{ readonly personId: PersonId; readonly slug: string }> {
-  const { token, signedIn, nowMs } = acceptance
-  const found = await readInvitation(db, token, nowMs)
-  if (!found) throw gone()
-  const newcomer = (await findPersonByEmail(db, found.email)) === undefined
-  const fields = newcomer ? parseInput(acceptSchema, acceptance.input) : null
-  const passwordHash = fields ? await hashPassword(fields.password) : null
+  const open = await readInvitation(db, token, nowMs)
+  if (!open) throw gone()
+  // Hashing takes its time, so it comes before the transaction, which holds the one connection.
+  const newcomer = hasAccount(await findPersonByEmail(db, open.email)) ? null : await newcomerFrom(input)
   return db.transaction().execute(async (trx) => {
-    const known = await findPersonByEmail(trx, found.email)
-    if (known && signedIn?.id !== known.id)
-      throw new AppError('conflict', `Sign in as ${found.email} first, then open the link again. The invitation is still open.`)
-    const personId =
-      known?.id ??
-      (await addPerson(trx, {
-        email: found.email,
-        name: fields?.name ?? found.name,
-        passwordHash,
-        emailConfirmedAtMs: nowMs,
-        createdAtMs: nowMs,
-      }))
+    const found = await readInvitation(trx, token, nowMs)
+    if (!found) throw gone()
+    const personId = await joiningPerson(trx, { email: found.email, newcomer, signedIn, nowMs })
     const scoped = orgTrx(trx, scopeForNewMember(found.organisationId, personId, [found.role]))
     if (!(await takeInvitation(scoped, found.id, nowMs))) throw gone()
     await addMembership(scoped, { personId, role: found.role, createdAtMs: nowMs })
@@ -61,4 +54,35 @@ export async function acceptInvitation(
     await addAudit(scoped, { atMs: nowMs, action: 'accept', subjectKind: 'invitation', subjectId: found.id, after: { role: found.role } })
     return { personId, slug: found.organisationSlug }
   })
+}
+
+interface Newcomer {
+  readonly name: string
+  readonly passwordHash: string
+}
+
+async function newcomerFrom(input: unknown): Promise<Newcomer> {
+  const { name, password } = parseInput(acceptSchema, input)
+  return { name, passwordHash: await hashPassword(password) }
+}
+
+interface Joining {
+  readonly email: string
+  readonly newcomer: Newcomer | null
+  readonly signedIn: Acceptance['signedIn']
+  readonly nowMs: number
+}
+
+/** Who accepts: the signed-in person of that address, or the newcomer with the password they have just set. */
+async function joiningPerson(trx: Connection, { email, newcomer, signedIn, nowMs }: Joining): Promise<PersonId> {
+  const known = await findPersonByEmail(trx, email)
+  if (known && hasAccount(known)) {
+    if (signedIn?.id === known.id) return known.id
+    throw new AppError('conflict', `Sign in as ${email} first, then open the link again. The invitation is still open.`)
+  }
+  if (!newcomer) throw gone()
+  if (!known) return addPerson(trx, { ...newcomer, email, emailConfirmedAtMs: nowMs, createdAtMs: nowMs })
+  await changePerson(trx, known.id, { ...newcomer, emailConfirmedAtMs: nowMs })
+  await deleteSessionsOf(trx, known.id)
+  return known.id
 }

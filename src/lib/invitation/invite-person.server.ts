@@ -8,19 +8,10 @@ import { findTenancy } from '#db/queries/tenancy.ts'
 import { expiryMs, newToken } from '#lib/account/tokens.server.ts'
 import { hashToken } from '#lib/auth/kysely-adapter.server.ts'
 import { actingPerson, requireRole } from '#lib/auth/permission.ts'
-import { processConfig } from '#lib/config.server.ts'
 import { invalid, notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
-import { letter } from '#lib/mail/letter.ts'
-import { queueMessage } from '#lib/mail/queue-message.server.ts'
+import { queueInvitation } from './invitation-letter.server.ts'
 import { INVITATION_DAYS, inviteSchema } from './schemas.ts'
-
-const WHAT: Readonly<Record<string, string>> = {
-  landlord: 'to run its buildings',
-  tenant: 'to set when you want hot water, and to be told when to start your heater',
-  electrician: 'to see the units that need you and record what is installed',
-  owner: 'to receive one page a month about cost, energy and what was fixed',
-}
 
 export async function invitePerson(
   db: OrgDb,
@@ -53,24 +44,8 @@ export async function invitePerson(
       expiresAtMs,
       invitedBy: actingPerson(db),
     })
-    const { text, html } = letter({
-      title: `${organisationName} invites you`,
-      paragraphs: [`Hello ${name}, ${organisationName} invites you ${WHAT[role] ?? ''}${property ? ` at ${property.name}` : ''}.`],
-      actions: [{ label: 'Accept the invitation', url: `${processConfig().baseUrl}/invitation/${token}` }],
-      footer: [`The link works once, for ${INVITATION_DAYS} days.`],
-    })
-    await queueMessage(trx, {
-      propertyId,
-      unitId: tenancy?.unitId ?? null,
-      personId: null,
-      toEmail: email,
-      kind: 'invitation',
-      cause: id,
-      subject: `${organisationName} invites you to Dwellhour`,
-      text,
-      html,
-      nowMs,
-    })
+    const unitId = tenancy?.unitId ?? null
+    await queueInvitation(trx, { id, email, name, role, property, unitId, organisationName, token, cause: id, nowMs })
     await addAudit(trx, { atMs: nowMs, action: 'invite', subjectKind: 'invitation', subjectId: id, after: { role, propertyId, tenancyId } })
     return id
   })

@@ -1,7 +1,7 @@
 /** What an invitation's page shows to whoever holds the link. */
 import type { PersonId } from '#db/ids.ts'
 import { type Connection, findPersonByEmail } from '#db/queries/account.ts'
-import { readInvitation } from './accept-invitation.server.ts'
+import { hasAccount, readInvitation } from './accept-invitation.server.ts'
 
 const ROLE_WORDS = { landlord: 'a landlord', tenant: 'a tenant', electrician: 'an electrician', owner: 'an owner' } as const
 
@@ -21,7 +21,9 @@ export async function loadInvitation(db: Connection, { token, user, nowMs }: Inv
     email,
     name,
     roleWords: ROLE_WORDS[role],
-    isNew: known === undefined,
-    mustSignIn: known !== undefined && user?.id !== known.id,
+    isNew: !hasAccount(known),
+    mustSignIn: hasAccount(known) && user?.id !== known.id,
+    /** Somebody else is signed in here; accepting or signing in ends their session. */
+    otherIsSignedIn: user !== null && user.id !== known?.id,
   }
 }

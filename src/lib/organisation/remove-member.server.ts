@@ -1,9 +1,9 @@
-/** Takes a role from a member; the last landlord stays, so that nobody locks everyone out. */
+/** Takes a role from a member, and with it the properties it opened; the last landlord stays, so that nobody locks everyone out. */
 import { parsePersonId } from '#db/ids.ts'
 import { ROLES } from '#db/enums.ts'
 import { inTransaction, type OrgDb } from '#db/org-db.ts'
 import { addAudit } from '#db/queries/audit.ts'
-import { deleteMembership, listMembers } from '#db/queries/organisation.ts'
+import { deleteAccessOf, deleteMembership, listMembers } from '#db/queries/organisation.ts'
 import { requireRole } from '#lib/auth/permission.ts'
 import { AppError, notFound } from '#lib/http/app-error.ts'
 
@@ -22,6 +22,7 @@ export async function removeMember(
       throw new AppError('conflict', 'This is the last landlord. Invite another one first; nothing was changed.')
     }
     await deleteMembership(trx, id, wanted)
+    if (wanted === 'electrician' || wanted === 'owner') await deleteAccessOf(trx, id, wanted)
     await addAudit(trx, { atMs: nowMs, action: 'remove', subjectKind: 'member', subjectId: id, before: { role: wanted } })
   })
 }

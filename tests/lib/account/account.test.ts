@@ -26,43 +26,64 @@ const newestLink = async (path: string): Promise<string> => {
 }
 const enter = (password: string, more: Partial<{ address: string; email: string; nowMs: number }> = {}) =>
   signIn(db, { input: { email: more.email ?? ADA.email, password }, address: more.address ?? '192.0.2.1', nowMs: more.nowMs ?? NOW_MS })
+const join = (input: unknown = ADA, nowMs = NOW_MS) => signUp(db, { input, address: '192.0.2.1', nowMs })
+const askReset = (email: string, nowMs = NOW_MS) => requestReset(db, { input: { email }, address: '192.0.2.1', nowMs })
+const confirm = (token: string, more: Partial<{ proof: string; password: string; nowMs: number }> = {}) =>
+  confirmEmail(db, { token, proof: more.proof, password: more.password ?? ADA.password, nowMs: more.nowMs ?? NOW_MS })
 const member = async () => {
-  await signUp(db, { input: ADA, nowMs: NOW_MS })
-  await confirmEmail(db, { token: await newestLink('confirm'), nowMs: NOW_MS })
+  await join()
+  await confirm(await newestLink('confirm'))
 }
 
 describe('signUp and confirmEmail', () => {
   it('lets nobody in before the address is confirmed', async () => {
-    await signUp(db, { input: ADA, nowMs: NOW_MS })
+    await join()
     await expect(enter(ADA.password)).rejects.toMatchObject({ code: 'conflict' })
   })
   it('confirms once, by the mailed link', async () => {
-    await signUp(db, { input: ADA, nowMs: NOW_MS })
+    await join()
     const token = await newestLink('confirm')
-    await confirmEmail(db, { token, nowMs: NOW_MS })
+    await confirm(token)
     expect(await enter(ADA.password)).toBe((await findPersonByEmail(db, ADA.email))?.id)
-    await expect(confirmEmail(db, { token, nowMs: NOW_MS })).rejects.toMatchObject({ code: 'expired' })
+    await expect(confirm(token)).rejects.toMatchObject({ code: 'expired' })
   })
   it('refuses a link after a day', async () => {
-    await signUp(db, { input: ADA, nowMs: NOW_MS })
-    await expect(confirmEmail(db, { token: await newestLink('confirm'), nowMs: NOW_MS + 24 * HOUR_MS })).rejects.toMatchObject({
-      code: 'expired',
-    })
+    await join()
+    await expect(confirm(await newestLink('confirm'), { nowMs: NOW_MS + 24 * HOUR_MS })).rejects.toMatchObject({ code: 'expired' })
   })
   it('answers a known address the same and tells it by mail, changing nothing', async () => {
     await member()
-    await expect(signUp(db, { input: { ...ADA, password: 'somebody else entirely' }, nowMs: NOW_MS + 1 })).resolves.toBeUndefined()
+    const again = await join({ ...ADA, password: 'somebody else entirely' }, NOW_MS + 1)
+    expect(Object.keys(again)).toEqual(['proof'])
     await expect(enter(ADA.password)).resolves.toBeTruthy()
     await expect(enter('somebody else entirely')).rejects.toMatchObject({ code: 'invalid' })
   })
-  it('stores the password as argon2id and the token as a hash', async () => {
-    await signUp(db, { input: ADA, nowMs: NOW_MS })
-    expect((await findPersonByEmail(db, ADA.email))?.password_hash).toMatch(/^\$argon2id\$/)
+  it('lets whoever signed up in this browser confirm without the password, and nobody else', async () => {
+    const { proof } = await join()
+    const token = await newestLink('confirm')
+    await expect(confirm(token, { password: '' })).rejects.toMatchObject({ code: 'invalid' })
+    await expect(confirm(token, { proof, password: '' })).resolves.toBeUndefined()
+  })
+  it('keeps a stranger out who signed up with the same address: the owner of the mailbox does not confirm their password', async () => {
+    const { proof } = await join()
+    await join({ ...ADA, password: 'set by somebody else' }, NOW_MS + 1)
+    const token = await newestLink('confirm')
+    await expect(confirm(token, { proof, nowMs: NOW_MS + 2 })).rejects.toMatchObject({ code: 'invalid' })
+    await expect(enter('set by somebody else', { nowMs: NOW_MS + 3 })).rejects.toMatchObject({ code: 'conflict' })
+  })
+  it('takes an address as a phone types it, with a capital and a space', async () => {
+    await join({ ...ADA, email: ' Ada@people.example ' })
+    expect((await findPersonByEmail(db, 'ada@people.example'))?.name).toBe(ADA.name)
+  })
+  it('stores the password as argon2id, with the parameters of the OWASP password storage cheat sheet, and the token as a hash', async () => {
+    await join()
+    // PHC string of RFC 9106's version 0x13 = 19; the sheet's second set: m = 19456 (19 MiB), t = 2, p = 1.
+    expect((await findPersonByEmail(db, ADA.email))?.password_hash).toMatch(/^\$argon2id\$v=19\$m=19456,t=2,p=1\$/)
     const stored = await db.selectFrom('account_token').select('token_hash').executeTakeFirstOrThrow()
     expect(stored.token_hash).not.toBe(await newestLink('confirm'))
   })
   it('names each field that is wrong', async () => {
-    await expect(signUp(db, { input: { name: '', email: 'x', password: 'short' }, nowMs: NOW_MS })).rejects.toMatchObject({
+    await expect(join({ name: '', email: 'x', password: 'short' })).rejects.toMatchObject({
       code: 'invalid',
       details: { fields: [{ field: 'name' }, { field: 'email' }, { field: 'password' }] },
     })
@@ -100,7 +121,7 @@ describe('resetPassword', () => {
       .insertInto('session')
       .values({ id: 's', person_id: person?.id as NonNullable<typeof person>['id'], expires_at_ms: NOW_MS * 2, created_at_ms: NOW_MS })
       .execute()
-    await requestReset(db, { input: { email: ADA.email }, nowMs: NOW_MS + 1 })
+    await askReset(ADA.email, NOW_MS + 1)
     const token = await newestLink('reset')
     await resetPassword(db, { input: { token, password: 'a valve of verdigris' }, nowMs: NOW_MS + 2 })
     expect(await db.selectFrom('session').selectAll().execute()).toEqual([])
@@ -110,7 +131,33 @@ describe('resetPassword', () => {
     })
   })
   it('answers the same for an unknown address and sends nothing', async () => {
-    await expect(requestReset(db, { input: { email: 'nobody@people.example' }, nowMs: NOW_MS })).resolves.toBeUndefined()
+    await expect(askReset('nobody@people.example')).resolves.toBeUndefined()
     expect(await db.selectFrom('account_mail').selectAll().execute()).toEqual([])
+  })
+  it('lets one of ten at once set the password', async () => {
+    await member()
+    await askReset(ADA.email, NOW_MS + 1)
+    const token = await newestLink('reset')
+    const tries = Array.from({ length: 10 }, (_, index) =>
+      resetPassword(db, { input: { token, password: `valve number ${index} of ten` }, nowMs: NOW_MS + 2 }),
+    )
+    expect((await Promise.allSettled(tries)).filter((result) => result.status === 'fulfilled')).toHaveLength(1)
+  })
+  it('refuses a link after an hour, one for another purpose, and one that a newer has replaced', async () => {
+    await member()
+    await askReset(ADA.email, NOW_MS + 1)
+    const first = await newestLink('reset')
+    const set = (token: string, nowMs: number) => resetPassword(db, { input: { token, password: 'a valve of verdigris' }, nowMs })
+    await expect(set(first, NOW_MS + 1 + HOUR_MS)).rejects.toMatchObject({ code: 'expired' })
+    await expect(confirm(first, { nowMs: NOW_MS + 2 })).rejects.toMatchObject({ code: 'expired' })
+    await askReset(ADA.email, NOW_MS + 3)
+    await expect(set(first, NOW_MS + 4)).rejects.toMatchObject({ code: 'expired' })
+    await expect(set(await newestLink('reset'), NOW_MS + 4)).resolves.toBeUndefined()
+  })
+  it('confirms an address that was not confirmed: the link went there', async () => {
+    await join()
+    await askReset(ADA.email, NOW_MS + 1)
+    await resetPassword(db, { input: { token: await newestLink('reset'), password: 'a valve of verdigris' }, nowMs: NOW_MS + 2 })
+    await expect(enter('a valve of verdigris', { nowMs: NOW_MS + 3 })).resolves.toBeTruthy()
   })
 })
