@@ -16,14 +16,16 @@ export async function loadInvitation(db: Connection, { token, user, nowMs }: Inv
   if (!found) return null
   const known = await findPersonByEmail(db, found.email)
   const { organisationName, email, name, role } = found
+  const isNew = !hasAccount(known)
+  /** Somebody else is signed in here; accepting or signing in ends their session. */
+  const otherIsSignedIn = user !== null && user.id !== known?.id
   return {
     organisationName,
     email,
     name,
     roleWords: ROLE_WORDS[role],
-    isNew: !hasAccount(known),
-    mustSignIn: hasAccount(known) && user?.id !== known.id,
-    /** Somebody else is signed in here; accepting or signing in ends their session. */
-    otherIsSignedIn: user !== null && user.id !== known?.id,
+    isNew,
+    mustSignIn: !isNew && (user === null || otherIsSignedIn),
+    otherIsSignedIn,
   }
 }
