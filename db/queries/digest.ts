@@ -18,6 +18,9 @@ export interface DigestFigures {
   readonly costMinor: number | null
   readonly baselineEnergyKwh: number
   readonly baselineCostMinor: number | null
+  /** Always on less as run, over unit-days that were warm on time: what a cold shower did not get is not a saving. */
+  readonly savedKwh: number
+  readonly savedMinor: number | null
   /** Energy by day, in order; their sum is `energyKwh`. */
   readonly days: readonly { readonly day: string; readonly energyKwh: number; readonly peakKwh: number }[]
   readonly flagsRaised: number

@@ -33,6 +33,7 @@ export function monthFigures(one: MonthCase): DigestFigures {
     const ofDay = computed.filter((evaluation) => evaluation.day === day)
     return { day, energyKwh: round(sum(ofDay, (row) => row.energyInKwh)), peakKwh: round(sum(ofDay, (row) => row.peakKwh)) }
   })
+  const warm = needed.filter((evaluation) => evaluation.status === 'ready')
   const costs = computed.map((row) => row.costMinor)
   const baselines = computed.map((row) => row.baselineCostMinor)
   const openAtEnd = flags.filter((flag) => flag.openedAtMs < interval.endsAtMs && (!flag.closed || flag.closed.atMs >= interval.endsAtMs))
@@ -41,7 +42,7 @@ export function monthFigures(one: MonthCase): DigestFigures {
     currency: one.currency,
     unitCount: one.codes.size,
     unitDaysNeeded: needed.length,
-    unitDaysWarm: needed.filter((evaluation) => evaluation.status === 'ready').length,
+    unitDaysWarm: warm.length,
     daysCovered: new Set(evaluations.map((evaluation) => evaluation.day)).size,
     daysInMonth: days.length,
     // The total is the sum of the rounded days, so that the parts shown add up to it.
@@ -50,6 +51,10 @@ export function monthFigures(one: MonthCase): DigestFigures {
     costMinor: costs.length > 0 && costs.every((cost) => cost !== null) ? sum(costs, (cost) => cost ?? 0) : null,
     baselineEnergyKwh: round(sum(computed, (row) => row.baselineEnergyKwh)),
     baselineCostMinor: baselines.length > 0 && baselines.every((cost) => cost !== null) ? sum(baselines, (cost) => cost ?? 0) : null,
+    savedKwh: round(sum(warm, (row) => row.baselineEnergyKwh - row.energyInKwh)),
+    savedMinor: warm.some((row) => row.costMinor === null || row.baselineCostMinor === null)
+      ? null
+      : sum(warm, (row) => (row.baselineCostMinor ?? 0) - (row.costMinor ?? 0)),
     days,
     flagsRaised: flags.filter((flag) => within(flag.openedAtMs)).length,
     flagsClosed: flags.filter((flag) => within(flag.closed?.atMs)).length,

@@ -55,11 +55,11 @@ export function digestView(figures: DigestFigures, month: string): DigestView {
   }
 }
 
-function savingWords({ energyKwh, baselineEnergyKwh, costMinor, baselineCostMinor, currency }: DigestFigures): string {
-  const savedKwh = baselineEnergyKwh - energyKwh
-  const money =
-    costMinor === null || baselineCostMinor === null ? '' : `, ${formatMoney(baselineCostMinor - costMinor, currency)} at the tariff`
-  if (savedKwh <= 0)
-    return `Against the same heaters always on, with the same showers: no energy saved (${(-savedKwh).toFixed(1)} kWh more)${money}.`
-  return `Against the same heaters always on, with the same showers: ${savedKwh.toFixed(1)} kWh less (from ${(savedKwh * SAVING_RANGE.low).toFixed(0)} to ${(savedKwh * SAVING_RANGE.high).toFixed(0)} kWh, as standing losses in the field differ from ratings)${money}. Showers that ran cold are not a saving.`
+function savingWords({ savedKwh, savedMinor, unitDaysWarm, currency }: DigestFigures): string {
+  if (unitDaysWarm === 0) return 'No unit-day was warm on time, so there is nothing to compare with heaters always on.'
+  const money = savedMinor === null ? '' : `, ${formatMoney(savedMinor, currency)} at the tariff`
+  const base = `On the ${unitDaysWarm} unit-days that were warm on time, against the same heaters always on with the same showers:`
+  if (savedKwh <= 0) return `${base} no energy saved (${(-savedKwh).toFixed(1)} kWh more)${money}.`
+  const range = `from ${(savedKwh * SAVING_RANGE.low).toFixed(0)} to ${(savedKwh * SAVING_RANGE.high).toFixed(0)} kWh, as standing losses in the field differ from ratings`
+  return `${base} ${savedKwh.toFixed(1)} kWh less (${range})${money}. What a cold shower did not get is not counted.`
 }

@@ -34,6 +34,8 @@ describe('writeDigest', () => {
     expect(figures?.unitDaysWarm).toBeLessThan(figures?.unitDaysNeeded ?? 0)
     expect(figures?.energyKwh).toBeGreaterThan(10)
     expect(figures?.days).toHaveLength(31)
+    // What the cold unit did not get is no saving: less is claimed than the plain difference.
+    expect(figures?.savedKwh).toBeLessThan((figures?.baselineEnergyKwh ?? 0) - (figures?.energyKwh ?? 0))
   })
   it('names the cold unit by its code and nobody by name', async () => {
     await write()
