@@ -1,6 +1,6 @@
 /** A local day at a site, worked out once for all units: its length, clock change, cold water, on-peak and prices. */
 import { inletC } from '#lib/core/tank/inlet.ts'
-import { peakIntervals, priceAt } from '#lib/core/tariff/price.ts'
+import { peakIntervals, prepareTariff, priceAt } from '#lib/core/tariff/price.ts'
 import { clockChangesIn, dayBounds, weekdayOf } from '#lib/core/time/civil.ts'
 import type { Day, MinuteInterval, Zone } from '#lib/core/time/types.ts'
 import { MIN_PER_DAY, MS_PER_MIN } from '#lib/core/units.ts'
@@ -46,11 +46,12 @@ function priceTable(
   { startsAtMs, dayMin }: { readonly startsAtMs: number; readonly dayMin: number },
 ): PriceTable | null {
   if (!tariff) return null
+  const prepared = prepareTariff(tariff)
   const count = (BEFORE_MIN + dayMin + AFTER_MIN) / SLOT_MIN
   const instants = Array.from({ length: count }, (_, slot) => startsAtMs + (slot * SLOT_MIN - BEFORE_MIN) * MS_PER_MIN)
-  const prices = instants.map((atMs) => priceAt(tariff, atMs))
+  const prices = instants.map((atMs) => priceAt(prepared, atMs))
   if (prices.some((price) => price.status !== 'priced')) return null
-  const peaks = peakIntervals(tariff, { startsAtMs: instants[0] ?? startsAtMs, endsAtMs: startsAtMs + (dayMin + AFTER_MIN) * MS_PER_MIN })
+  const peaks = peakIntervals(prepared, { startsAtMs: instants[0] ?? startsAtMs, endsAtMs: startsAtMs + (dayMin + AFTER_MIN) * MS_PER_MIN })
   return {
     fromMin: -BEFORE_MIN,
     slotMin: SLOT_MIN,

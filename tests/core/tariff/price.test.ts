@@ -2,7 +2,8 @@
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { instantOf, monthBounds } from '#lib/core/time/civil.ts'
-import { costOf, peakIntervals, priceAt } from '#lib/core/tariff/price.ts'
+import { costOf } from '#lib/core/tariff/cost.ts'
+import { peakIntervals, priceAt } from '#lib/core/tariff/price.ts'
 import type { Tariff } from '#lib/core/tariff/types.ts'
 import { readUrdb } from '#lib/core/tariff/urdb-import.ts'
 import e19 from '../../fixtures/tariff/e19-2019.urdb.json' with { type: 'json' }

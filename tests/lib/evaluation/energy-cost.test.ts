@@ -1,7 +1,7 @@
 /** The table of prices against the core's own instant-by-instant cost, and against a sum done by hand. */
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { costOf } from '#lib/core/tariff/price.ts'
+import { costOf } from '#lib/core/tariff/cost.ts'
 import { readUrdb } from '#lib/core/tariff/urdb-import.ts'
 import type { Tariff } from '#lib/core/tariff/types.ts'
 import { PORT_ALDANE_RATE } from '#lib/demo/rates.ts'

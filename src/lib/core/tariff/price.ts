@@ -1,118 +1,103 @@
-/** What a kilowatt-hour costs at an instant, when a property's hours are on-peak, and what a load costs. */
-import { civilOf, dayBounds, addDays } from '../time/civil.ts'
+/**
+ * What a kilowatt-hour costs at an instant and when a property's hours are on-peak: marginal first-tier prices with the month's
+ * adder. A caller who asks often prepares the tariff once; the answers are the same.
+ */
 import type { Day, MsInterval } from '../time/types.ts'
 import { MIN_PER_DAY, MS_PER_MIN } from '../units.ts'
-import type { PeakInterval, PriceOutcome, ScheduleGrid, Tariff, TariffVersion } from './types.ts'
+import { energyGrid, monthIndexOf, scheduleBands } from './schedule.ts'
+import type { PeakInterval, PriceOutcome, Tariff, TariffVersion } from './types.ts'
 
-/** The version in force on a local day; the newest that has begun. */
-export function versionOn(tariff: Tariff, day: Day): TariffVersion | null {
-  return tariff.versions.findLast((version) => version.effectiveFrom <= day) ?? null
+export { versionOn } from './schedule.ts'
+
+/** A stretch in which one price holds. */
+export interface PriceBand extends MsInterval {
+  readonly price: PriceOutcome
+  readonly onPeak: boolean
+}
+/** A tariff with its price bands worked out once a day of the calendar, for callers who ask millions of times. */
+export interface PreparedTariff {
+  readonly tariff: Tariff
+  readonly bandAt: (instantMs: number) => PriceBand
 }
 
-/** Saturday and Sunday are the weekend; a special day bills as the type it is given. */
-export function dayTypeOf(version: TariffVersion, day: Day, weekday: number): 'weekday' | 'weekend' {
-  return version.specialDays.find((special) => special.day === day)?.dayType ?? (weekday >= 5 ? 'weekend' : 'weekday')
-}
-
-export function periodIn(grid: ScheduleGrid, day: Day, minuteOfDay: number): number {
-  const row = grid[Number(day.slice(5, 7)) - 1] ?? []
-  return row[Math.min(row.length - 1, Math.floor((minuteOfDay * row.length) / MIN_PER_DAY))] ?? 0
-}
+const MS_PER_DAY = MIN_PER_DAY * MS_PER_MIN
 
 /** Marginal price of the first tier, adjustment and month's fuel adder included. */
 export function periodPrice(version: TariffVersion, periodIndex: number, day: Day): number {
-  const fuel = version.fuelAdjustmentMinorPerKwh?.[Number(day.slice(5, 7)) - 1] ?? 0
+  const fuel = version.fuelAdjustmentMinorPerKwh?.[monthIndexOf(day)] ?? 0
   return (version.energyPeriods[periodIndex]?.[0]?.priceMinorPerKwh ?? 0) + fuel
 }
 
-export function priceAt(tariff: Tariff, instantMs: number): PriceOutcome {
-  const { day, minuteOfDay, weekday } = civilOf(instantMs, tariff.zone)
-  const version = versionOn(tariff, day)
-  if (!version) return { status: 'no-version', reason: `No version of the tariff is in force on ${day}.` }
-  const grid = dayTypeOf(version, day, weekday) === 'weekend' ? version.weekendGrid : version.weekdayGrid
-  const periodIndex = periodIn(grid, day, minuteOfDay)
-  return { status: 'priced', periodIndex, priceMinorPerKwh: periodPrice(version, periodIndex, day) }
-}
-
-const STEP_MIN = 15
-
-/** Quarter hours of a local day with their price; grids and clock changes fall on quarter hours. */
-function pricedDay(tariff: Tariff, day: Day): readonly (MsInterval & { periodIndex: number; priceMinorPerKwh: number })[] {
-  const { startsAtMs, endsAtMs } = dayBounds(day, tariff.zone)
-  const priced: { startsAtMs: number; endsAtMs: number; periodIndex: number; priceMinorPerKwh: number }[] = []
-  for (let atMs = startsAtMs; atMs < endsAtMs; atMs += STEP_MIN * MS_PER_MIN) {
-    const price = priceAt(tariff, atMs)
-    if (price.status !== 'priced') return []
-    const last = priced.at(-1)
-    const untilMs = Math.min(endsAtMs, atMs + STEP_MIN * MS_PER_MIN)
-    if (last && last.periodIndex === price.periodIndex) last.endsAtMs = untilMs
-    else priced.push({ startsAtMs: atMs, endsAtMs: untilMs, periodIndex: price.periodIndex, priceMinorPerKwh: price.priceMinorPerKwh })
-  }
-  return priced
-}
-
-/** Stretches of equal price through the local days that a range touches, in order. */
-export function priceBands(tariff: Tariff, range: MsInterval): readonly PeakInterval[] {
-  const bands: PeakInterval[] = []
-  for (let day = civilOf(range.startsAtMs, tariff.zone).day; dayBounds(day, tariff.zone).startsAtMs < range.endsAtMs; day = addDays(day, 1))
-    bands.push(...pricedDay(tariff, day))
-  return bands
-}
-
-/** The dearest price of a month, or `null` where the month has one price only. */
+/**
+ * The dearest price of a month's weekdays and weekends, or `null` where they have one price only. Special days are left out, so
+ * that one critical day does not take the peak from all others.
+ */
 function dearestOfMonth(version: TariffVersion, day: Day): number | null {
-  const month = Number(day.slice(5, 7)) - 1
+  const month = monthIndexOf(day)
   const periods = new Set([...(version.weekdayGrid[month] ?? []), ...(version.weekendGrid[month] ?? [])])
   const prices = [...periods].map((period) => periodPrice(version, period, day))
   const dearest = Math.max(...prices)
   return prices.length > 0 && dearest > Math.min(...prices) ? dearest : null
 }
 
-/** On-peak: the dearest price of its month, where the month has more than one; a weekend without it has no peak. */
-export function peakIntervals(tariff: Tariff, range: MsInterval): readonly PeakInterval[] {
-  const peaks: PeakInterval[] = []
-  for (
-    let day = civilOf(range.startsAtMs, tariff.zone).day;
-    dayBounds(day, tariff.zone).startsAtMs < range.endsAtMs;
-    day = addDays(day, 1)
-  ) {
-    const version = versionOn(tariff, day)
-    const dearest = version && dearestOfMonth(version, day)
-    if (dearest !== null) peaks.push(...pricedDay(tariff, day).filter((band) => band.priceMinorPerKwh === dearest))
-  }
-  return peaks.filter((peak) => peak.endsAtMs > range.startsAtMs && peak.startsAtMs < range.endsAtMs)
+function bandsOf(tariff: Tariff, range: MsInterval): readonly PriceBand[] {
+  return scheduleBands(tariff, range, energyGrid).map(({ startsAtMs, endsAtMs, day, version, periodIndex }) => {
+    if (!version) {
+      const reason = `No version of the tariff is in force on ${day}.`
+      return { startsAtMs, endsAtMs, price: { status: 'no-version', reason }, onPeak: false }
+    }
+    const priceMinorPerKwh = periodPrice(version, periodIndex, day)
+    const dearest = dearestOfMonth(version, day)
+    const onPeak = dearest !== null && priceMinorPerKwh >= dearest
+    return { startsAtMs, endsAtMs, price: { status: 'priced', priceMinorPerKwh, periodIndex }, onPeak }
+  })
 }
 
-export interface LoadPiece extends MsInterval {
-  readonly powerW: number
-}
-export type CostOutcome =
-  | {
-      readonly status: 'costed'
-      /** Not rounded: round once, where it is shown or stored. */ readonly costMinor: number
-      readonly energyKwh: number
-      readonly peakKwh: number
+export function prepareTariff(tariff: Tariff): PreparedTariff {
+  const byUtcDay = new Map<number, readonly PriceBand[]>()
+  const bandAt = (instantMs: number): PriceBand => {
+    const utcDay = Math.floor(instantMs / MS_PER_DAY)
+    let bands = byUtcDay.get(utcDay)
+    if (!bands) {
+      bands = bandsOf(tariff, { startsAtMs: utcDay * MS_PER_DAY, endsAtMs: (utcDay + 1) * MS_PER_DAY })
+      byUtcDay.set(utcDay, bands)
     }
-  | { readonly status: 'no-version'; readonly reason: string }
-
-/** Energy cost of a load at marginal first-tier prices, split exactly at price boundaries; demand and fixed charges are the bill's. */
-export function costOf(tariff: Tariff, load: readonly LoadPiece[]): CostOutcome {
-  let costMinor = 0
-  let energyKwh = 0
-  let peakKwh = 0
-  for (const piece of load) {
-    const peaks = peakIntervals(tariff, piece)
-    for (let atMs = piece.startsAtMs; atMs < piece.endsAtMs;) {
-      const boundaryMs = (Math.floor(atMs / (STEP_MIN * MS_PER_MIN)) + 1) * STEP_MIN * MS_PER_MIN
-      const untilMs = Math.min(boundaryMs, piece.endsAtMs)
-      const price = priceAt(tariff, atMs)
-      if (price.status !== 'priced') return price
-      const kwh = (piece.powerW / 1_000) * ((untilMs - atMs) / (60 * MS_PER_MIN))
-      costMinor += kwh * price.priceMinorPerKwh
-      energyKwh += kwh
-      if (peaks.some((peak) => peak.startsAtMs <= atMs && atMs < peak.endsAtMs)) peakKwh += kwh
-      atMs = untilMs
-    }
+    for (const band of bands) if (instantMs < band.endsAtMs) return band
+    throw new RangeError(`The bands of a day end before ${instantMs}.`)
   }
-  return { status: 'costed', costMinor, energyKwh, peakKwh }
+  return { tariff, bandAt }
 }
+
+export const asPrepared = (tariff: Tariff | PreparedTariff): PreparedTariff => ('bandAt' in tariff ? tariff : prepareTariff(tariff))
+
+export const priceAt = (tariff: Tariff | PreparedTariff, instantMs: number): PriceOutcome => asPrepared(tariff).bandAt(instantMs).price
+
+/** Stretches of equal price that tile a range, in order and as long as they can be; without a version there is none. */
+export function priceBands(tariff: Tariff | PreparedTariff, range: MsInterval): readonly (PeakInterval & { readonly onPeak: boolean })[] {
+  const { bandAt } = asPrepared(tariff)
+  const bands: (PeakInterval & { readonly onPeak: boolean })[] = []
+  for (let startsAtMs = range.startsAtMs; startsAtMs < range.endsAtMs;) {
+    const band = bandAt(startsAtMs)
+    const endsAtMs = Math.min(band.endsAtMs, range.endsAtMs)
+    if (band.price.status === 'priced') {
+      const { periodIndex, priceMinorPerKwh } = band.price
+      const last = bands.at(-1)
+      if (
+        last?.endsAtMs === startsAtMs &&
+        last.periodIndex === periodIndex &&
+        last.priceMinorPerKwh === priceMinorPerKwh &&
+        last.onPeak === band.onPeak
+      )
+        bands[bands.length - 1] = { ...last, endsAtMs }
+      else bands.push({ startsAtMs, endsAtMs, periodIndex, priceMinorPerKwh, onPeak: band.onPeak })
+    }
+    startsAtMs = endsAtMs
+  }
+  return bands
+}
+
+/** On-peak: the dearest price of its month, where the month has more than one; a weekend without it has no peak. Cut to the range. */
+export const peakIntervals = (tariff: Tariff | PreparedTariff, range: MsInterval): readonly PeakInterval[] =>
+  priceBands(tariff, range)
+    .filter((band) => band.onPeak)
+    .map(({ startsAtMs, endsAtMs, periodIndex, priceMinorPerKwh }) => ({ startsAtMs, endsAtMs, periodIndex, priceMinorPerKwh }))

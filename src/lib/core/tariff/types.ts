@@ -15,6 +15,25 @@ export interface DemandTier {
 /** 12 rows (January first) of equal slots of the local day; a value is a period's index. */
 export type ScheduleGrid = readonly (readonly number[])[]
 
+/** A day type beside weekday and weekend, such as a public holiday or a critical-peak day, with grids of its own. */
+export interface ExtraDayType {
+  readonly name: string
+  readonly energyGrid: ScheduleGrid
+  /** `null`: demand is billed as on a weekend. */
+  readonly demandGrid: ScheduleGrid | null
+}
+/** Billed flat demand is at least this fraction of the highest peak of earlier months. */
+export interface Lookback {
+  readonly fraction: number
+  /** The months before, in number; or which calendar months (January first) of the eleven before count. */
+  readonly months: { readonly kind: 'range'; readonly count: number } | { readonly kind: 'months'; readonly counts: readonly boolean[] }
+}
+/** Demand at hours that the supplier names afterwards, those of the system's peak; billed with the month of the last of them. */
+export interface CoincidentDemand {
+  readonly priceMinorPerKw: number
+  readonly hours: readonly MsInterval[]
+}
+
 export interface TariffVersion {
   readonly name: string
   readonly utility: string
@@ -26,8 +45,9 @@ export interface TariffVersion {
   readonly energyPeriods: readonly (readonly EnergyTier[])[]
   readonly weekdayGrid: ScheduleGrid
   readonly weekendGrid: ScheduleGrid
-  /** Dates billed by another day type. */
-  readonly specialDays: readonly { readonly day: Day; readonly dayType: 'weekday' | 'weekend' }[]
+  /** Dates billed by another day type: `weekday`, `weekend` or the name of one of `extraDayTypes`. */
+  readonly specialDays: readonly { readonly day: Day; readonly dayType: string }[]
+  readonly extraDayTypes?: readonly ExtraDayType[]
   readonly flatDemand: {
     readonly tiersByStructure: readonly (readonly DemandTier[])[]
     readonly structureByMonth: readonly number[]
@@ -38,8 +58,10 @@ export interface TariffVersion {
     readonly weekendGrid: ScheduleGrid
   } | null
   readonly demandWindowMin: 15 | 30 | 60
+  readonly lookback?: Lookback
+  readonly coincidentDemand?: readonly CoincidentDemand[]
   readonly fixed: { readonly amountMinor: number; readonly per: 'month' | 'day' | 'year' } | null
-  readonly minimum: { readonly amountMinor: number; readonly per: 'month' | 'year' } | null
+  readonly minimum: { readonly amountMinor: number; readonly per: 'month' | 'day' | 'year' } | null
   /** Adder by month. */
   readonly fuelAdjustmentMinorPerKwh: readonly number[] | null
 }
@@ -50,18 +72,26 @@ export interface Tariff {
   readonly versions: readonly TariffVersion[]
 }
 
-/** Interval energy: slot i covers `[startsAtMs + i·slotMin, …)`. */
+/** Interval energy, never negative: slot i covers `[startsAtMs + i·slotMin, …)`. */
 export interface LoadSeries {
   readonly startsAtMs: number
   readonly slotMin: number
   readonly energyKwh: readonly number[]
 }
+/** A stretch of constant power. */
+export interface LoadPiece extends MsInterval {
+  readonly powerW: number
+}
 
 export interface BillLine {
-  readonly kind: 'energy' | 'flat-demand' | 'period-demand' | 'fixed' | 'minimum' | 'fuel'
+  readonly kind: 'energy' | 'flat-demand' | 'period-demand' | 'coincident-demand' | 'fixed' | 'minimum' | 'fuel'
   readonly label: string
   readonly quantity: number
   readonly unit: string
+  /** What one unit costs here, not rounded. */
+  readonly priceMinorPerUnit: number
+  /** quantity × price, not rounded: for sums that must not gather roundings. */
+  readonly exactMinor: number
   /** Rounded once, here. */
   readonly amountMinor: number
   readonly periodIndex: number | null
@@ -70,6 +100,12 @@ export interface Bill {
   readonly interval: MsInterval
   readonly lines: readonly BillLine[]
   readonly totalMinor: number
+  /** Days on which no version is in force: they are not in the lines. */
+  readonly unbilled: readonly { readonly interval: MsInterval; readonly reason: string }[]
+  /** Share of the interval for which the load has a reading. */
+  readonly coveredFraction: number
+  /** What a reader has to know before trusting the total. */
+  readonly notes: readonly string[]
 }
 export type PriceOutcome =
   | { readonly status: 'priced'; readonly priceMinorPerKwh: number; readonly periodIndex: number }
