@@ -25,6 +25,10 @@ const toTenancy = (row: TenancyRow): Tenancy => ({
   tips: row.tips,
 })
 
+/** Whether a tenancy is in force on a local day; it is over on its last bound itself. */
+export const tenancyCovers = ({ fromDay, toDay }: Pick<Tenancy, 'fromDay' | 'toDay'>, day: string): boolean =>
+  fromDay <= day && (toDay === null || day < toDay)
+
 export async function findTenancy(db: OrgDb, id: TenancyId): Promise<Tenancy | null> {
   const row = await db.selectFrom('tenancy').where('tenancy.id', '=', id).selectAll('tenancy').executeTakeFirst()
   return row ? toTenancy(row) : null
@@ -42,9 +46,7 @@ export async function listTenancies(db: OrgDb, unitId: UnitId): Promise<readonly
 }
 
 export async function currentTenancy(db: OrgDb, unitId: UnitId, day: string): Promise<Tenancy | null> {
-  return (
-    (await listTenancies(db, unitId)).find((tenancy) => tenancy.fromDay <= day && (tenancy.toDay === null || day < tenancy.toDay)) ?? null
-  )
+  return (await listTenancies(db, unitId)).find((tenancy) => tenancyCovers(tenancy, day)) ?? null
 }
 
 /** Tenancies of a property that touch the days `[fromDay, toDay)`. */

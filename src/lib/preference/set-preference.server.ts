@@ -3,8 +3,11 @@ import type { TenancyId } from '#db/ids.ts'
 import { inTransaction, type OrgDb } from '#db/org-db.ts'
 import { addAudit } from '#db/queries/audit.ts'
 import { addPreference } from '#db/queries/preference.ts'
+import { findProperty } from '#db/queries/property.ts'
 import { findTenancy } from '#db/queries/tenancy.ts'
+import { findUnit } from '#db/queries/unit.ts'
 import { actingPerson, hasRole, requireRole } from '#lib/auth/permission.ts'
+import { civilOf } from '#lib/core/time/civil.ts'
 import { evaluateUnit, type UnitEvaluation } from '#lib/evaluation/evaluate-unit.server.ts'
 import { notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
@@ -22,6 +25,9 @@ export async function setPreference(db: OrgDb, { tenancyId, input, nowMs }: SetP
   const tenancy = await inTransaction(db, async (trx) => {
     const found = await findTenancy(trx, tenancyId)
     if (!found || (!hasRole(db, 'landlord') && found.personId !== actingPerson(db))) throw notFound('tenancy')
+    const unit = await findUnit(trx, found.unitId)
+    const property = unit && (await findProperty(trx, unit.propertyId))
+    if (!property || (found.toDay !== null && found.toDay <= civilOf(nowMs, property.zone).day)) throw notFound('tenancy')
     const setBy = actingPerson(db)
     await addPreference(trx, { tenancyId, week, willing, setBy, setAtMs: nowMs })
     // What a tenant entered about showers is personal: the audit says that it changed, not to what.

@@ -1,7 +1,9 @@
 /** Showers: the tenant's own, answered at once, and kept out of the audit. */
 import { beforeEach, describe, expect, it } from 'vitest'
+import { currentTenancy } from '#db/queries/tenancy.ts'
 import { formOf, weekOf } from '#lib/preference/form-fields.ts'
 import { setPreference } from '#lib/preference/set-preference.server.ts'
+import { startTenancy } from '#lib/tenancy/start-tenancy.server.ts'
 import { loadCard } from '#lib/tip/load-card.server.ts'
 import { NOW_MS } from '../../support/factories.ts'
 import { COLD, makeWorld, unitOf, WARM, type World } from '../../support/world.ts'
@@ -46,6 +48,29 @@ describe('setPreference', () => {
   it('refuses showers outside the limits by field', async () => {
     const week = weekOf({ ...FORM, weekdays: { time: '06:45', count: 99, minutesEach: 8 } })
     await expect(set(world.tenant, COLD, { week, willing: [] })).rejects.toMatchObject({ code: 'invalid' })
+  })
+})
+
+describe('after moving out', () => {
+  it('shows the former tenant nothing of the next one, and takes no showers from them', async () => {
+    const { unitId, tenancyId } = unitOf(world, COLD)
+    await startTenancy(world.landlord, {
+      unitId,
+      input: { name: 'Next', email: 'next@tenants.example', fromDay: '2026-12-01' },
+      nowMs: NOW_MS,
+    })
+    expect((await currentTenancy(world.landlord, unitId, '2026-12-01'))?.id).not.toBe(tenancyId)
+    await expect(loadCard(world.tenant, NOW_MS)).rejects.toMatchObject({ code: 'not-found' })
+    await expect(set()).rejects.toMatchObject({ code: 'not-found' })
+  })
+  it('shows the last evening no tomorrow that belongs to the next tenant', async () => {
+    const { unitId } = unitOf(world, COLD)
+    await startTenancy(world.landlord, {
+      unitId,
+      input: { name: 'Next', email: 'next@tenants.example', fromDay: '2026-12-02' },
+      nowMs: NOW_MS,
+    })
+    expect(await loadCard(world.tenant, NOW_MS)).toMatchObject({ day: '2026-12-02', tip: null, strip: null })
   })
 })
 
