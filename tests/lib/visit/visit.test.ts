@@ -55,6 +55,16 @@ describe('assignVisit', () => {
   })
 })
 
+describe('openVisit', () => {
+  it('answers not found once the electrician’s access to the property is taken away', async () => {
+    const visitId = await assign()
+    expect((await openVisit(world.electrician, visitId)).unitCode).toBe(COLD)
+    const access = { personId: personOf(world.electrician), propertyId: world.building.propertyId, role: 'electrician' } as const
+    await inTransaction(world.landlord, (trx) => deleteAccess(trx, access))
+    await expect(openVisit(world.electrician, visitId)).rejects.toMatchObject({ code: 'not-found' })
+  })
+})
+
 describe('signOffVisit', () => {
   const signOff = async (visitId: string, db = world.electrician) =>
     signOffVisit(db, { visitId, input: LEFT, organisationSlug: 'ours', nowMs: NOW_MS + 1 })
