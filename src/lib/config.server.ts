@@ -14,7 +14,7 @@ const schema = z.object({
   DWELLHOUR_LOG_LEVEL: z.enum(['fatal', 'error', 'warn', 'info', 'debug', 'silent']).default('info'),
 })
 
-const LOOPBACK = new Set(['localhost', '127.0.0.1', '[::1]'])
+const LOOPBACK = new Set(['localhost', '127.0.0.1', '::1', '[::1]'])
 
 export interface Config {
   readonly port: number
@@ -23,7 +23,7 @@ export interface Config {
   readonly databaseFile: string
   /** Without a trailing slash; every link in mail and feeds is built from it, never from a request. */
   readonly baseUrl: string
-  /** Whether the base address is this very machine's own; what is for development alone shows only then. */
+  /** Whether the base address and the address listened on are this very machine's own; what is for development alone shows only then. */
   readonly local: boolean
   /** `null`: mail goes to the local post room (readable at `/dev/post`) instead of an SMTP server. */
   readonly smtpUrl: string | null
@@ -48,7 +48,7 @@ export function readConfig(env: Readonly<Record<string, string | undefined>>): C
   const value = parsed.data
   const dataDir = resolve(value.DWELLHOUR_DATA_DIR)
   const baseUrl = (value.DWELLHOUR_BASE_URL ?? `http://localhost:${value.DWELLHOUR_PORT}`).replace(/\/+$/, '')
-  const local = LOOPBACK.has(new URL(baseUrl).hostname)
+  const local = LOOPBACK.has(new URL(baseUrl).hostname) && LOOPBACK.has(value.DWELLHOUR_HOST)
   return {
     status: 'valid',
     config: {

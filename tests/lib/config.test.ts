@@ -25,6 +25,7 @@ describe('readConfig', () => {
     for (const name of ['DWELLHOUR_PORT', 'DWELLHOUR_SMTP_URL', 'DWELLHOUR_SECRET', 'DWELLHOUR_DEMO']) expect(problems).toContain(name)
   })
   it('shows neither the demo nor the post room where others can reach the service', () => {
+    expect(configOf({ DWELLHOUR_HOST: '0.0.0.0' })).toMatchObject({ demo: false, local: false })
     expect(configOf({ DWELLHOUR_BASE_URL: 'https://heat.example', DWELLHOUR_DEMO: 'on' })).toMatchObject({
       demo: false,
       local: false,
