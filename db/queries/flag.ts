@@ -103,17 +103,13 @@ export async function listClosedFlags(
   return rows.map(toFlag)
 }
 
-/** Flags of a property that were opened or closed in `[fromMs, toMs)`. */
+/** Flags of a property that were open at any time in `[fromMs, toMs)`: opened before its end and not closed before its start. */
 export async function listFlagsTouched(db: OrgDb, propertyId: PropertyId, fromMs: number, toMs: number): Promise<readonly Flag[]> {
   const rows = await db
     .selectFrom('flag')
     .where('flag.property_id', '=', propertyId)
-    .where((eb) =>
-      eb.or([
-        eb.and([eb('flag.opened_at_ms', '>=', fromMs), eb('flag.opened_at_ms', '<', toMs)]),
-        eb.and([eb('flag.closed_at_ms', '>=', fromMs), eb('flag.closed_at_ms', '<', toMs)]),
-      ]),
-    )
+    .where('flag.opened_at_ms', '<', toMs)
+    .where((eb) => eb.or([eb('flag.closed_at_ms', 'is', null), eb('flag.closed_at_ms', '>=', fromMs)]))
     .selectAll('flag')
     .orderBy('flag.opened_at_ms')
     .execute()

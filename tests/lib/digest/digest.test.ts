@@ -47,6 +47,16 @@ describe('writeDigest', () => {
       expect(mail?.html).not.toContain(email)
     }
   })
+  it('counts a flag that was raised in an earlier month and is still open', async () => {
+    await world.db
+      .updateTable('flag')
+      .set({ opened_at_ms: NOW_MS - 90 * 86_400_000 })
+      .execute()
+    await write()
+    const figures = (await edition())?.figures
+    expect(figures?.flagsRaised).toBe(0)
+    expect((figures?.flagsOpen ?? []).reduce((sum, flag) => sum + flag.count, 0)).toBeGreaterThan(0)
+  })
   it('makes a correction a new edition that says why, and leaves the first as it was', async () => {
     await write()
     const first = await edition()
