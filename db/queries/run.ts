@@ -48,7 +48,9 @@ export async function listExpectedRuns(db: OrgDb, propertyId: PropertyId, fromMs
     .where('run.kind', '=', 'expected')
     .where('run.starts_at_ms', '>=', fromMs - LOOK_BACK_MS)
     .where('run.starts_at_ms', '<', toMs)
-    .where('run.ends_at_ms', '>', fromMs)
+    .where((eb) =>
+      eb.or([eb('run.ends_at_ms', '>', fromMs), eb('run.longest_ends_at_ms', 'is', null), eb('run.longest_ends_at_ms', '>', fromMs)]),
+    )
     .selectAll('run')
     .orderBy('run.starts_at_ms')
     .orderBy('run.id')
