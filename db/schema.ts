@@ -28,7 +28,10 @@ import type { AuditEntryTable } from './tables/audit-entry.ts'
 import type { JobLeaseTable } from './tables/job-lease.ts'
 import type { JobRunTable } from './tables/job-run.ts'
 
+import type { AccountEventTable } from './tables/account-event.ts'
+
 export interface Database {
+  account_event: AccountEventTable
   person: PersonTable
   session: SessionTable
   account_token: AccountTokenTable

@@ -4,10 +4,12 @@ import * as accounts from './0001-accounts.ts'
 import * as buildings from './0002-buildings.ts'
 import * as work from './0003-work.ts'
 import * as postAndJobs from './0004-post-and-jobs.ts'
+import * as accountEvents from './0005-account-events.ts'
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0001-accounts': accounts,
   '0002-buildings': buildings,
   '0003-work': work,
   '0004-post-and-jobs': postAndJobs,
+  '0005-account-events': accountEvents,
 }

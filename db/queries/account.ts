@@ -151,3 +151,10 @@ export async function deleteExpired(db: Connection, nowMs: number, attemptsBefor
   ]
   return results.reduce((sum, result) => sum + Number(result.numDeletedRows), 0)
 }
+
+export type AccountAction = 'sign-up' | 'confirm' | 'change-password' | 'sign-out-everywhere'
+
+/** Every change a person makes to their own account, as the audit of what belongs to no organisation. */
+export async function addAccountEvent(db: Connection, personId: PersonId, action: AccountAction, atMs: number): Promise<void> {
+  await db.insertInto('account_event').values({ id: newId<string>(), person_id: personId, action, at_ms: atMs }).execute()
+}

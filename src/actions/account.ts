@@ -10,6 +10,7 @@ import { formFields } from '#lib/http/form.ts'
 import { runForm } from '#lib/http/to-action-error.ts'
 import { requestReset, resetPassword } from '#lib/account/reset-password.server.ts'
 import { type AccountRequest, signIn } from '#lib/account/sign-in.server.ts'
+import { signOutEverywhere } from '#lib/account/sign-out-everywhere.server.ts'
 import { signUp } from '#lib/account/sign-up.server.ts'
 import { SIGN_UP_COOKIE, SIGN_UP_COOKIE_LIFE } from '#lib/account/sign-up-proof.server.ts'
 
@@ -54,7 +55,7 @@ export const account = {
     accept: 'form',
     handler: (_form, context) =>
       runForm(async () => {
-        await lucia().invalidateUserSessions(signedIn(context).id)
+        await signOutEverywhere(database(), { personId: signedIn(context).id, nowMs: context.locals.nowMs })
         const blank = lucia().createBlankSessionCookie()
         context.cookies.set(blank.name, blank.value, blank.attributes)
       }),

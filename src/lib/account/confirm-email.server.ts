@@ -2,7 +2,7 @@
  * Confirms an address by the token of its mail; works once. Whoever opens the link must also be whoever signed up, by this
  * browser's proof or by the password: else a stranger could sign up with another's address and wait for them to confirm it.
  */
-import { changePerson, type Connection, findTokenOwner, takeAccountToken } from '#db/queries/account.ts'
+import { addAccountEvent, changePerson, type Connection, findTokenOwner, takeAccountToken } from '#db/queries/account.ts'
 import { hashToken } from '#lib/auth/kysely-adapter.server.ts'
 import { verifyPassword } from '#lib/auth/password.server.ts'
 import { AppError, invalid } from '#lib/http/app-error.ts'
@@ -29,5 +29,6 @@ export async function confirmEmail(db: Connection, { token, proof, password, now
     const personId = await takeAccountToken(trx, take)
     if (!personId) throw gone
     await changePerson(trx, personId, { emailConfirmedAtMs: nowMs })
+    await addAccountEvent(trx, personId, 'confirm', nowMs)
   })
 }

@@ -1,5 +1,6 @@
 /** Password reset: a mailed one-use link, then a new password that ends every session. */
 import {
+  addAccountEvent,
   addAccountToken,
   changePerson,
   type Connection,
@@ -61,5 +62,6 @@ export async function resetPassword(db: Connection, { input, nowMs }: { readonly
     if (!personId) throw new AppError('expired', 'This link has been used or has expired. Nothing was changed. Ask for a new one.')
     await changePerson(trx, personId, { passwordHash, emailConfirmedAtMs: nowMs })
     await deleteSessionsOf(trx, personId)
+    await addAccountEvent(trx, personId, 'change-password', nowMs)
   })
 }

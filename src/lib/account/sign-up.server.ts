@@ -2,7 +2,7 @@
  * Signs a person up and mails the confirmation link; an address that is known gets a mail that says so, and the page the
  * same answer: a proof for this browser, which confirms without asking for the password again.
  */
-import { addAccountToken, addPerson, changePerson, type Connection, findPersonByEmail } from '#db/queries/account.ts'
+import { addAccountEvent, addAccountToken, addPerson, changePerson, type Connection, findPersonByEmail } from '#db/queries/account.ts'
 import { hashToken } from '#lib/auth/kysely-adapter.server.ts'
 import { hashPassword } from '#lib/auth/password.server.ts'
 import { processConfig } from '#lib/config.server.ts'
@@ -44,6 +44,7 @@ export async function signUp(db: Connection, { input, address, nowMs }: AccountR
     }
     const personId = known?.id ?? (await addPerson(trx, { email, name, passwordHash, emailConfirmedAtMs: null, createdAtMs: nowMs }))
     if (known) await changePerson(trx, known.id, { name, passwordHash })
+    await addAccountEvent(trx, personId, 'sign-up', nowMs)
     await addAccountToken(trx, {
       tokenHash: hashToken(token),
       personId,

@@ -7,6 +7,7 @@ import { confirmEmail } from '#lib/account/confirm-email.server.ts'
 import { ATTEMPT_WINDOW_MS, ATTEMPTS_PER_ACCOUNT, ATTEMPTS_PER_ADDRESS } from '#lib/account/limits.server.ts'
 import { requestReset, resetPassword } from '#lib/account/reset-password.server.ts'
 import { signIn } from '#lib/account/sign-in.server.ts'
+import { signOutEverywhere } from '#lib/account/sign-out-everywhere.server.ts'
 import { signUp } from '#lib/account/sign-up.server.ts'
 import { freshDatabase } from '../../support/database.ts'
 import { NOW_MS } from '../../support/factories.ts'
@@ -87,6 +88,22 @@ describe('signUp and confirmEmail', () => {
       code: 'invalid',
       details: { fields: [{ field: 'name' }, { field: 'email' }, { field: 'password' }] },
     })
+  })
+})
+
+describe('account events', () => {
+  it('note sign-up, confirmation and signing out everywhere, which ends every session', async () => {
+    await member()
+    const person = await findPersonByEmail(db, ADA.email)
+    if (!person) throw new Error('nobody signed up')
+    await db
+      .insertInto('session')
+      .values({ id: 's', person_id: person.id, expires_at_ms: NOW_MS * 2, created_at_ms: NOW_MS })
+      .execute()
+    await signOutEverywhere(db, { personId: person.id, nowMs: NOW_MS + 1 })
+    expect(await db.selectFrom('session').selectAll().execute()).toEqual([])
+    const events = await db.selectFrom('account_event').select('action').orderBy('at_ms').execute()
+    expect(events.map((event) => event.action).sort()).toEqual(['confirm', 'sign-out-everywhere', 'sign-up'])
   })
 })
 

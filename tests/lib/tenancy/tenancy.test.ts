@@ -34,6 +34,14 @@ describe('startTenancy', () => {
 })
 
 describe('endTenancy', () => {
+  it('refuses an end after the next one’s beginning, and so does the database', async () => {
+    const first = unitOf(world, COLD).tenancyId
+    await start()
+    await expect(endTenancy(world.landlord, { tenancyId: first, input: { toDay: '2026-12-20' }, nowMs: NOW_MS })).rejects.toMatchObject({
+      code: 'invalid',
+    })
+    await expect(world.db.updateTable('tenancy').set({ to_day: '2026-12-20' }).where('id', '=', first).execute()).rejects.toThrow(/overlap/)
+  })
   it('leaves nobody from the day on', async () => {
     await endTenancy(world.landlord, { tenancyId: unitOf(world, COLD).tenancyId, input: { toDay: '2026-12-05' }, nowMs: NOW_MS })
     expect(await livingOn('2026-12-04')).toBe(`Tenant of ${COLD}`)
