@@ -6,7 +6,7 @@ import { addAudit } from '#db/queries/audit.ts'
 import { addHardwareRevision, listCurrentHardware } from '#db/queries/hardware.ts'
 import { addPreference } from '#db/queries/preference.ts'
 import { findProperty, type Property } from '#db/queries/property.ts'
-import { addTenancy, changeTenancyEnd, listTenanciesOn, type Tenancy } from '#db/queries/tenancy.ts'
+import { addTenancy, changeTenancyEnd, listTenanciesBetween, type Tenancy } from '#db/queries/tenancy.ts'
 import { addUnit, changeUnitPlace, listUnits } from '#db/queries/unit.ts'
 import { actingPerson, requireRole } from '#lib/auth/permission.ts'
 import { civilOf } from '#lib/core/time/civil.ts'
@@ -75,9 +75,8 @@ interface Write {
 async function writeRows(trx: OrgTrx, { property, rows, nowMs }: Write): Promise<RosterChange> {
   const known = new Map((await listUnits(trx, property.id)).map((unit) => [unit.code, unit.id]))
   const hardware = await listCurrentHardware(trx, property.id)
-  const living = new Map(
-    (await listTenanciesOn(trx, property.id, civilOf(nowMs, property.zone).day)).map((tenancy) => [tenancy.unitId, tenancy]),
-  )
+  const today = civilOf(nowMs, property.zone).day
+  const present = await listTenanciesBetween(trx, property.id, { fromDay: today, toDay: '9999-12-31' })
   const tenancies: TenancyId[] = []
   let added = 0
   for (const row of rows) {
@@ -97,7 +96,7 @@ async function writeRows(trx: OrgTrx, { property, rows, nowMs }: Write): Promise
         recordedAtMs: nowMs,
       })
     }
-    const moved = await moveIn(trx, { row, unitId, living: living.get(unitId) ?? null, nowMs })
+    const moved = await moveIn(trx, { row, unitId, present: present.filter((tenancy) => tenancy.unitId === unitId), nowMs })
     if (moved.isNew && moved.tenancyId) tenancies.push(moved.tenancyId)
     if (row.week && moved.tenancyId)
       await addPreference(trx, { tenancyId: moved.tenancyId, week: row.week, willing: [], setBy: actingPerson(trx), setAtMs: nowMs })
@@ -108,32 +107,28 @@ async function writeRows(trx: OrgTrx, { property, rows, nowMs }: Write): Promise
 interface MoveIn {
   readonly row: RosterRow
   readonly unitId: UnitId
-  readonly living: Tenancy | null
+  /** Tenancies of the unit that are in force or to come. */
+  readonly present: readonly Tenancy[]
   readonly nowMs: number
 }
 
-/** Another e-mail is another tenant: the tenancy before ends on the day the new one begins. */
+/** Another e-mail is another tenant: the last tenancy before ends on the day the new one begins. */
 async function moveIn(
   trx: OrgTrx,
-  { row, unitId, living, nowMs }: MoveIn,
+  { row, unitId, present, nowMs }: MoveIn,
 ): Promise<{ readonly tenancyId: TenancyId | null; readonly isNew: boolean }> {
   const { tenant } = row
-  if (!tenant) return { tenancyId: living?.id ?? null, isNew: false }
-  if (living && living.email === tenant.email) return { tenancyId: living.id, isNew: false }
-  if (living) {
-    if (tenant.fromDay <= living.fromDay)
-      throw invalid([
-        {
-          field: 'from',
-          message: `Line ${row.line}: the new tenancy must begin after ${living.fromDay}, when the present one began. Nothing was changed.`,
-        },
-      ])
-    await changeTenancyEnd(trx, living.id, tenant.fromDay)
+  const last = [...present].sort((one, other) => one.fromDay.localeCompare(other.fromDay)).at(-1)
+  if (!tenant) return { tenancyId: last?.id ?? null, isNew: false }
+  const same = present.find((tenancy) => tenancy.email === tenant.email)
+  if (same) return { tenancyId: same.id, isNew: false }
+  if (last) {
+    if (tenant.fromDay <= last.fromDay) {
+      const message = `Line ${row.line}: the new tenancy must begin after ${last.fromDay}, when the last one begins. Nothing was changed.`
+      throw invalid([{ field: 'from', message }])
+    }
+    await changeTenancyEnd(trx, last.id, tenant.fromDay)
   }
-  const tenancyId = await addTenancy(
-    trx,
-    { unitId, personId: null, name: tenant.name, email: tenant.email, fromDay: tenant.fromDay, toDay: null },
-    nowMs,
-  )
-  return { tenancyId, isNew: true }
+  const fields = { unitId, personId: null, name: tenant.name, email: tenant.email, fromDay: tenant.fromDay, toDay: null }
+  return { tenancyId: await addTenancy(trx, fields, nowMs), isNew: true }
 }

@@ -121,6 +121,12 @@ describe('importRoster', () => {
     const revisions = [...(await listCurrentHardware(ours, propertyId)).values()].map((record) => record.revision)
     expect(revisions.sort()).toEqual([1, 1, 2])
   })
+  it('knows a tenancy that is still to come, so that importing twice adds it once', async () => {
+    const text = 'unit,tenant,email,from\n9Z,Dov,dov@tenants.example,2027-03-01\n'
+    expect((await importRoster(ours, { propertyId, text, nowMs: NOW_MS })).tenancies).toHaveLength(1)
+    expect((await importRoster(ours, { propertyId, text, nowMs: NOW_MS + 1 })).tenancies).toEqual([])
+    expect(await db.selectFrom('tenancy').selectAll().execute()).toHaveLength(1)
+  })
   it('reads its own export back with no new unit and no new revision', async () => {
     await importRoster(ours, { propertyId, text: TABLE, nowMs: NOW_MS })
     const property = await findProperty(ours, propertyId)
