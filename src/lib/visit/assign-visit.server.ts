@@ -2,7 +2,7 @@
 import { type FlagId, parseFlagId, parsePersonId, parseUnitId, type VisitId } from '#db/ids.ts'
 import { inTransaction, type OrgDb, type OrgTrx } from '#db/org-db.ts'
 import { addAudit } from '#db/queries/audit.ts'
-import { type Flag, findFlag } from '#db/queries/flag.ts'
+import { type Flag, findFlag, listPlannedVisits } from '#db/queries/flag.ts'
 import { hasAccess, listMembers } from '#db/queries/organisation.ts'
 import { findProperty } from '#db/queries/property.ts'
 import { findUnit } from '#db/queries/unit.ts'
@@ -11,7 +11,7 @@ import { actingPerson, requireRole } from '#lib/auth/permission.ts'
 import { processConfig } from '#lib/config.server.ts'
 import { MAINS_CAUTION } from '#lib/core/hardware/verdict.ts'
 import { formatDay } from '#lib/format.ts'
-import { invalid, notFound } from '#lib/http/app-error.ts'
+import { AppError, invalid, notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
 import { letter } from '#lib/mail/letter.ts'
 import { queueMessage } from '#lib/mail/queue-message.server.ts'
@@ -38,6 +38,9 @@ export async function assignVisit(db: OrgDb, { input, organisationSlug, nowMs }:
     if (!electrician || !(await hasAccess(trx, { personId: electricianId, propertyId: property.id, role: 'electrician' })))
       throw notFound('electrician at this property')
     const flags = await openFlags(trx, fields.flagIds.map(parseFlagId), unitId)
+    const planned = new Set((await listPlannedVisits(trx, property.id)).map((visit) => visit.flagId))
+    if (flags.some((flag) => planned.has(flag.id)))
+      throw new AppError('conflict', 'A visit is planned for this flag already. Nobody was told twice.')
     const proposal = proposalOf(flags)
     const dueDay = fields.dueDay || null
     const visitId = await addVisit(trx, {

@@ -40,6 +40,11 @@ describe('assignVisit', () => {
     expect(mail?.text).toContain('Isolate and lock off')
     expect((await loadVisits(world.electrician)).planned[0]?.proposal.changes.length).toBeGreaterThan(0)
   })
+  it('plans one visit for a flag, however often it is sent', async () => {
+    await assign()
+    await expect(assign()).rejects.toMatchObject({ code: 'conflict' })
+    expect(await mails('visit-assigned')).toHaveLength(1)
+  })
   it('is forbidden to electricians themselves', async () => {
     await expect(assign(world.electrician)).rejects.toMatchObject({ code: 'forbidden' })
   })
