@@ -132,9 +132,21 @@ describe('runSource', () => {
     const winter = { ...day, clockOffsetMin: 60 }
     const starts = (followsClockChange: boolean) => {
       const source = runSource({ ...base, followsClockChange }, winter)
-      return source.kind === 'clocked' ? source.onIntervals.at(-1)?.startMin : null
+      return source.kind === 'clocked' ? source.onIntervals.find((on) => on.startMin >= 0)?.startMin : null
     }
     expect(starts(false)).toBe(240)
     expect(starts(true)).toBe(300)
+  })
+  it('starts tomorrow’s first step tonight when the clock is fast, so that some day owns it', () => {
+    const base = {
+      kind: 'time-switch',
+      stepMin: 15,
+      powerReserveH: null,
+      followsClockChange: true,
+      programme: [{ weekday: null, onMin: 30, offMin: 240 }],
+    } as const
+    const source = runSource({ ...base, driftMin: 60 }, day)
+    const owned = source.kind === 'clocked' ? source.onIntervals.filter((on) => on.startMin >= 0 && on.startMin < 1440) : []
+    expect(owned).toEqual([{ startMin: 1410, endMin: 1620 }])
   })
 })

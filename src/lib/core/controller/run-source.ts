@@ -46,10 +46,10 @@ interface DaySteps {
   readonly toElapsedMin: (minuteOfDay: number) => number
 }
 
-/** On-intervals of the day and of the day before it (negative minutes), in order, merged. */
+/** On-intervals of the day, the day before it (negative minutes) and the one after, in order, merged: a fast clock starts tomorrow's first step tonight. */
 function dayIntervals({ steps, day, aheadMin, toElapsedMin }: DaySteps): readonly MinuteInterval[] {
   const found: MinuteInterval[] = []
-  for (const shift of [-1, 0]) {
+  for (const shift of [-1, 0, 1]) {
     const weekday = weekdayOf(addDays(day, shift))
     for (const step of steps) {
       if (step.weekday !== null && step.weekday !== weekday) continue
