@@ -38,7 +38,7 @@ export async function runForm<T>(work: () => Promise<T>): Promise<FormOutcome<T>
     const errorId = logUnknown(error)
     throw new ActionError({
       code: 'INTERNAL_SERVER_ERROR',
-      message: `Something failed here. Nothing was changed. Its id in the log is ${errorId}.`,
+      message: `Something failed here. Look whether your change is there before you try again. Its id in the log is ${errorId}.`,
     })
   }
 }

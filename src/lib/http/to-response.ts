@@ -46,7 +46,7 @@ export function toResponse(error: unknown, instance: string): Response {
     body: {
       type: 'about:blank#internal',
       title: 'Something failed here',
-      detail: `Nothing was changed. Try again; if it stays, tell whoever runs this service the id ${errorId}.`,
+      detail: `Look whether your change is there before you try again; if it stays, tell whoever runs this service the id ${errorId}.`,
       instance,
       errorId,
     },
