@@ -7,7 +7,7 @@ import { openBrowser, signIn, visitor, type Visitor } from './support/browser.ts
 import { type RunningProduct, startProduct } from './support/server.ts'
 
 /** Figures of the published record of Schedule E-19 (OpenEI URDB 5cef0a415457a33576f60fe2). */
-const RATE = fileURLToPath(new URL('../fixtures/tariff/e19-2019.urdb.json', import.meta.url))
+const RATE = fileURLToPath(new URL('../fixtures/tariff/pge-e19-2019.urdb.json', import.meta.url))
 const ROSTER = fileURLToPath(new URL('../fixtures/roster/three-units.csv', import.meta.url))
 const PASSWORD = 'a kettle of old copper'
 const HOUSE = '/o/harrow-lane/p/mill-house'

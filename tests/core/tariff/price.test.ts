@@ -6,7 +6,7 @@ import { costOf } from '#lib/core/tariff/cost.ts'
 import { peakIntervals, priceAt } from '#lib/core/tariff/price.ts'
 import type { Tariff } from '#lib/core/tariff/types.ts'
 import { readUrdb } from '#lib/core/tariff/urdb-import.ts'
-import e19 from '../../fixtures/tariff/e19-2019.urdb.json' with { type: 'json' }
+import e19 from '../../fixtures/tariff/pge-e19-2019.urdb.json' with { type: 'json' }
 import noPrice from '../../fixtures/tariff/no-price.urdb.json' with { type: 'json' }
 
 const OPTIONS = { currency: 'USD', minorPerMajor: 100, effectiveFrom: '2019-01-01' }

@@ -93,3 +93,13 @@ describe('dayBounds', () => {
     expect(new Date(startsAtMs).toISOString()).toBe('1919-03-31T04:30:00.000Z')
   })
 })
+
+describe('the reference cases', () => {
+  it('are all in the fixtures: 34 days of 22 zones with their changes or none, and 14 windows', () => {
+    const days = [...byDay.changes, ...byDay.steady]
+    // Apia's 30 December 2011 has no instant of its own; its change stands with the day after.
+    expect(days).toHaveLength(34)
+    expect(new Set(days.map((one) => one.zone)).size).toBe(22)
+    expect(windows.windows).toHaveLength(14)
+  })
+})

@@ -21,7 +21,7 @@ const load = (record: string, over: { effectiveFrom?: string; db?: World['landlo
 
 describe('importTariff', () => {
   it('adds a version in force from its day and shows its peaks', async () => {
-    await load(read('e19-2019.urdb.json'), { effectiveFrom: '2026-11-01' })
+    await load(read('pge-e19-2019.urdb.json'), { effectiveFrom: '2026-11-01' })
     const property = await findProperty(world.landlord, world.building.propertyId)
     const tariff = await loadTariff(world.landlord, property as NonNullable<typeof property>, NOW_MS)
     expect(tariff?.versions.at(-1)).toMatchObject({ effectiveFrom: '2026-11-01', inForce: true })
@@ -37,13 +37,13 @@ describe('importTariff', () => {
     expect(await world.db.selectFrom('tariff_version').selectAll().execute()).toHaveLength(1)
   })
   it('refuses a second version from the same day', async () => {
-    await load(read('e19-2019.urdb.json'), { effectiveFrom: '2026-11-01' })
-    await expect(load(read('e19-2019.urdb.json'), { effectiveFrom: '2026-11-01' })).rejects.toMatchObject({
+    await load(read('pge-e19-2019.urdb.json'), { effectiveFrom: '2026-11-01' })
+    await expect(load(read('pge-e19-2019.urdb.json'), { effectiveFrom: '2026-11-01' })).rejects.toMatchObject({
       details: { fields: [{ field: 'effectiveFrom' }] },
     })
   })
   it("answers not found for another organisation's property, and forbids other roles", async () => {
-    await expect(load(read('e19-2019.urdb.json'), { db: world.stranger })).rejects.toMatchObject({ code: 'not-found' })
-    await expect(load(read('e19-2019.urdb.json'), { db: world.electrician })).rejects.toMatchObject({ code: 'forbidden' })
+    await expect(load(read('pge-e19-2019.urdb.json'), { db: world.stranger })).rejects.toMatchObject({ code: 'not-found' })
+    await expect(load(read('pge-e19-2019.urdb.json'), { db: world.electrician })).rejects.toMatchObject({ code: 'forbidden' })
   })
 })

@@ -1,5 +1,6 @@
 /** What a load's energy costs at marginal first-tier prices, split exactly at price boundaries; demand and fixed charges are the bill's. */
 import { MIN_PER_HOUR, MS_PER_MIN } from '../units.ts'
+import { roundMinor } from './money.ts'
 import { asPrepared, type PreparedTariff } from './price.ts'
 import type { LoadPiece, LoadSeries, Tariff } from './types.ts'
 
@@ -43,5 +44,5 @@ export function costOf(tariff: Tariff | PreparedTariff, load: LoadSeries | reado
       atMs = untilMs
     }
   }
-  return { status: 'costed', costMinor, amountMinor: Math.round(costMinor), energyKwh, peakKwh }
+  return { status: 'costed', costMinor, amountMinor: roundMinor(costMinor), energyKwh, peakKwh }
 }

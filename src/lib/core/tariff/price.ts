@@ -41,13 +41,15 @@ function dearestOfMonth(version: TariffVersion, day: Day): number | null {
 }
 
 function bandsOf(tariff: Tariff, range: MsInterval): readonly PriceBand[] {
+  const dearestOn = new Map<Day, number | null>()
   return scheduleBands(tariff, range, energyGrid).map(({ startsAtMs, endsAtMs, day, version, periodIndex }) => {
     if (!version) {
       const reason = `No version of the tariff is in force on ${day}.`
       return { startsAtMs, endsAtMs, price: { status: 'no-version', reason }, onPeak: false }
     }
     const priceMinorPerKwh = periodPrice(version, periodIndex, day)
-    const dearest = dearestOfMonth(version, day)
+    let dearest = dearestOn.get(day)
+    if (dearest === undefined) dearestOn.set(day, (dearest = dearestOfMonth(version, day)))
     const onPeak = dearest !== null && priceMinorPerKwh >= dearest
     return { startsAtMs, endsAtMs, price: { status: 'priced', priceMinorPerKwh, periodIndex }, onPeak }
   })
