@@ -207,6 +207,24 @@ export async function revokeInvitation(db: OrgTrx, id: InvitationId, nowMs: numb
   return result.numUpdatedRows > 0n
 }
 
+/** Revokes what is open of the same offer to the same address, so that one link at a time holds. */
+export async function revokeSameInvitations(
+  db: OrgTrx,
+  offer: Pick<NewInvitationFields, 'email' | 'role' | 'propertyId' | 'tenancyId'>,
+  nowMs: number,
+): Promise<void> {
+  // SQLite's `is` also compares null with null, and a value with a value.
+  await db
+    .updateTable('invitation', { revoked_at_ms: nowMs })
+    .where('email', '=', offer.email.toLowerCase())
+    .where('role', '=', offer.role)
+    .where('property_id', 'is', offer.propertyId)
+    .where('tenancy_id', 'is', offer.tenancyId)
+    .where('accepted_at_ms', 'is', null)
+    .where('revoked_at_ms', 'is', null)
+    .execute()
+}
+
 export interface FoundInvitation {
   readonly id: InvitationId
   readonly organisationId: OrganisationId

@@ -1,8 +1,8 @@
-/** Invites a person by e-mail to a role: the link expires, works once, and only its hash is stored. */
+/** Invites a person by e-mail to a role: the link expires, works once, replaces an earlier one, and only its hash is stored. */
 import { type InvitationId, parsePropertyId, parseTenancyId } from '#db/ids.ts'
 import { inTransaction, type OrgDb } from '#db/org-db.ts'
 import { addAudit } from '#db/queries/audit.ts'
-import { addInvitation } from '#db/queries/organisation.ts'
+import { addInvitation, revokeSameInvitations } from '#db/queries/organisation.ts'
 import { findProperty } from '#db/queries/property.ts'
 import { findTenancy } from '#db/queries/tenancy.ts'
 import { expiryMs, newToken } from '#lib/account/tokens.server.ts'
@@ -33,6 +33,7 @@ export async function invitePerson(
     const token = newToken()
     const expiresAtMs = expiryMs(nowMs, INVITATION_DAYS * 24)
     const { email, name, role } = fields
+    await revokeSameInvitations(trx, { email, role, propertyId, tenancyId }, nowMs)
     const id = await addInvitation(trx, {
       email,
       name,
