@@ -88,6 +88,18 @@ export async function listHardware(db: OrgDb, unitId: UnitId): Promise<readonly 
   return toRecords(rows, readings)
 }
 
+/** Names of those who recorded a unit's revisions. */
+export async function listRecorders(db: OrgDb, unitId: UnitId): Promise<ReadonlyMap<PersonId, string>> {
+  const rows = await db
+    .selectFrom('hardware_record')
+    .innerJoin('person', 'person.id', 'hardware_record.recorded_by')
+    .where('hardware_record.unit_id', '=', unitId)
+    .select(['person.id', 'person.name'])
+    .distinct()
+    .execute()
+  return new Map(rows.map((row) => [row.id, row.name]))
+}
+
 export const currentHardware = async (db: OrgDb, unitId: UnitId): Promise<HardwareRecord | null> =>
   (await listHardware(db, unitId))[0] ?? null
 

@@ -31,7 +31,8 @@ export const roster = {
             ? await inviteTenants(db, { tenancies: change.tenancies, organisationName: organisation.name, nowMs })
             : 0
         await evaluateProperty(db, { propertyId: id, nowMs })
-        return { added: change.added, updated: change.updated, invited }
+        const { added, updated, unchanged } = change
+        return { added, updated, unchanged, invited }
       }),
   }),
 }

@@ -11,6 +11,8 @@ export interface RowProblem {
 
 export interface CellReader {
   text(column: ColumnName): string
+  /** Whether the cell holds something that is not already recorded; an empty cell says nothing. */
+  says(column: ColumnName, recorded?: string): boolean
   /** `null` when empty or wrong; wrong is noted. */
   number(column: ColumnName, range: { readonly min: number; readonly max: number }): number | null
   problem(column: ColumnName, message: string): void
@@ -24,19 +26,28 @@ export interface Cells {
   readonly problems: RowProblem[]
 }
 
+const NUMBER = /^[+-]?(\d+\.?\d*|\.\d+)$/
+
 export function cellReader({ line, values, decimalComma, problems }: Cells): CellReader {
+  // The apostrophe is how the export keeps a spreadsheet from running a cell.
   const text = (column: ColumnName) => (values.get(column) ?? '').trim().replace(/^'(?=[=+\-@])/, '')
+  const plain = (raw: string) => (decimalComma ? raw.replace(',', '.') : raw)
   const problem = (column: ColumnName, message: string) => {
     problems.push({ line, column, value: text(column), message })
   }
   return {
     text,
     problem,
+    says(column, recorded = '') {
+      const said = text(column)
+      if (said === '' || said.toLowerCase() === recorded.toLowerCase()) return false
+      return !(NUMBER.test(plain(said)) && NUMBER.test(recorded) && Number(plain(said)) === Number(recorded))
+    },
     number(column, { min, max }) {
       const raw = text(column)
       if (raw === '') return null
-      const value = Number(decimalComma ? raw.replace(',', '.') : raw)
-      if (!Number.isFinite(value)) problem(column, 'This is not a number. Write digits only, without a unit.')
+      const value = Number(plain(raw))
+      if (!NUMBER.test(plain(raw))) problem(column, 'This is not a number. Write digits only, without a unit or thousands separators.')
       else if (value < min || value > max) problem(column, `This is outside ${min} to ${max}. Check the figure and its unit.`)
       else return value
       return null

@@ -54,8 +54,12 @@ export function parseProgramme(text: string): Parsed<readonly SwitchStep[]> {
   return steps.length > 0 ? { ok: true, value: steps } : { ok: false, message: 'No hours are given. Write them like 05:00-06:30 daily.' }
 }
 
+/** Flow, temperature and pause are not in the text: the usual ones, or those of a shower the tenant has set. */
+type Habits = Pick<Shower, 'gapMin' | 'flowLPerMin' | 'useTemperatureC'>
+const USUAL_HABITS: Habits = { gapMin: DEFAULT_GAP_MIN, flowLPerMin: DEFAULT_FLOW_L_PER_MIN, useTemperatureC: DEFAULT_USE_TEMPERATURE_C }
+
 /** A week of showers; nothing means no showers. */
-export function parseShowers(text: string): Parsed<Week> {
+export function parseShowers(text: string, { gapMin, flowLPerMin, useTemperatureC }: Habits = USUAL_HABITS): Parsed<Week> {
   const week: Shower[][] = DAYS.map(() => [])
   for (const part of parts(text)) {
     const match = new RegExp(`^${CLOCK}\\s+(\\d+)\\s*[x×]\\s*(\\d+(?:\\.\\d+)?)\\s*(.*)$`).exec(part)
@@ -70,9 +74,9 @@ export function parseShowers(text: string): Parsed<Week> {
       readyByMinuteOfDay: readyBy,
       count: Number(match?.[3]),
       minutesEach: Number(match?.[4]),
-      gapMin: DEFAULT_GAP_MIN,
-      flowLPerMin: DEFAULT_FLOW_L_PER_MIN,
-      useTemperatureC: DEFAULT_USE_TEMPERATURE_C,
+      gapMin,
+      flowLPerMin,
+      useTemperatureC,
     }
     for (const day of days) week[day]?.push(shower)
   }
@@ -83,19 +87,25 @@ const clock = (min: number): string =>
   `${String(Math.floor((min % MIN_PER_DAY) / 60)).padStart(2, '0')}:${String(min % 60).padStart(2, '0')}`
 const NAMES = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun']
 
-export const formatProgramme = (steps: readonly SwitchStep[]): string =>
-  steps
-    .map((step) => `${clock(step.onMin)}-${clock(step.offMin)} ${step.weekday === null ? 'daily' : (NAMES[step.weekday] ?? '')}`)
-    .join('; ')
-
-/** The week back as text: equal showers of several days are written once. */
-export function formatShowers(week: Week): string {
+/** Equal things of several days are written once, with their days. */
+const grouped = (entries: readonly (readonly [what: string, day: string])[]): string => {
   const days = new Map<string, string[]>()
-  week.forEach((showers, weekday) => {
-    for (const shower of showers) {
-      const key = `${clock(shower.readyByMinuteOfDay)} ${shower.count}x${shower.minutesEach}`
-      days.set(key, [...(days.get(key) ?? []), NAMES[weekday] ?? ''])
-    }
-  })
-  return [...days].map(([what, names]) => `${what} ${names.length === 7 ? 'daily' : names.join(',')}`).join('; ')
+  for (const [what, day] of entries) days.set(what, [...(days.get(what) ?? []), day])
+  return [...days].map(([what, names]) => `${what} ${names.length === NAMES.length ? 'daily' : names.join(',')}`).join('; ')
 }
+
+export const formatProgramme = (steps: readonly SwitchStep[]): string =>
+  grouped(
+    steps.flatMap((step) => {
+      const hours = `${clock(step.onMin)}-${clock(step.offMin)}`
+      return step.weekday === null ? NAMES.map((name) => [hours, name] as const) : [[hours, NAMES[step.weekday] ?? ''] as const]
+    }),
+  )
+
+/** The week back as text. */
+export const formatShowers = (week: Week): string =>
+  grouped(
+    week.flatMap((showers, weekday) =>
+      showers.map((shower) => [`${clock(shower.readyByMinuteOfDay)} ${shower.count}x${shower.minutesEach}`, NAMES[weekday] ?? ''] as const),
+    ),
+  )

@@ -1,8 +1,9 @@
 /** Everything a unit's page shows: today and tomorrow, flags with their numbers, hardware with checks and history, tenancies. */
+import type { PersonId } from '#db/ids.ts'
 import type { OrgDb } from '#db/org-db.ts'
 import { listUnitEvaluations } from '#db/queries/evaluation.ts'
 import { listOpenFlags } from '#db/queries/flag.ts'
-import { listHardware } from '#db/queries/hardware.ts'
+import { type HardwareRecord, listHardware, listRecorders } from '#db/queries/hardware.ts'
 import type { Property } from '#db/queries/property.ts'
 import { listTenancies } from '#db/queries/tenancy.ts'
 import { findUnitByCode } from '#db/queries/unit.ts'
@@ -27,6 +28,7 @@ export async function loadUnit(
   const days = await listUnitEvaluations(db, unit.id, today, addDays(today, 8))
   const records = await listHardware(db, unit.id)
   const current = records[0] ?? null
+  const recorders = await listRecorders(db, unit.id)
   return {
     unit,
     today,
@@ -45,6 +47,7 @@ export async function loadUnit(
       scald: assessScald(current.installation.load.tank.setPointC, current.installation.load.tank.mixingValveC),
       history: records.map((record, index) => ({
         revision: record.revision,
+        recordedBy: recordedBy(record, recorders),
         recordedAtMs: record.recordedAtMs,
         reason: record.reason,
         changes: differences(records[index + 1]?.installation ?? null, record.installation),
@@ -52,4 +55,7 @@ export async function loadUnit(
     },
   }
 }
+const recordedBy = (record: HardwareRecord, names: ReadonlyMap<PersonId, string>): string | null =>
+  record.recordedBy && (names.get(record.recordedBy) ?? null)
+
 export type UnitPage = Awaited<ReturnType<typeof loadUnit>>

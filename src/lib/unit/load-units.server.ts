@@ -6,12 +6,13 @@ import { listCurrentHardware } from '#db/queries/hardware.ts'
 import type { Property } from '#db/queries/property.ts'
 import { listTenanciesOn } from '#db/queries/tenancy.ts'
 import { listUnits } from '#db/queries/unit.ts'
+import { requireRole } from '#lib/auth/permission.ts'
 import { describeController } from '#lib/core/controller/describe.ts'
 import { addDays, civilOf } from '#lib/core/time/civil.ts'
 import { KIND_WORDS } from '#lib/flag/view.ts'
 import { clockWords } from '#lib/strip/clock.ts'
 import { stripDayOf } from './strip-day.ts'
-import type { UnitLine, UnitsPage } from './view.ts'
+import { stateWords, type UnitLine, type UnitsPage } from './view.ts'
 
 export interface UnitsAsked {
   readonly property: Property
@@ -20,6 +21,7 @@ export interface UnitsAsked {
 }
 
 export async function loadUnits(db: OrgDb, { property, organisationSlug, nowMs }: UnitsAsked): Promise<UnitsPage> {
+  requireRole(db, ['landlord'], 'see the units')
   const day = addDays(civilOf(nowMs, property.zone).day, 1)
   const hardware = await listCurrentHardware(db, property.id)
   const tenancies = new Map((await listTenanciesOn(db, property.id, day)).map((tenancy) => [tenancy.unitId, tenancy]))
@@ -40,25 +42,21 @@ export async function loadUnits(db: OrgDb, { property, organisationSlug, nowMs }
   return { day, units }
 }
 
+/** Why nothing is known says more than that nothing is. */
+const wordsOf = (evaluation: Evaluation): string => (evaluation.status === 'unknown' && evaluation.outcome.reason) || stateWords(evaluation)
+
 function stateOf(
   evaluation: Evaluation | undefined,
   danger: Flag | undefined,
 ): Pick<UnitLine, 'startByMin' | 'readyBy' | 'startBy' | 'state' | 'urgency' | 'strip'> {
   const change = evaluation?.outcome.clockChange ?? null
   const clock = (minute: number | null | undefined) => (minute === null || minute === undefined ? '' : clockWords(minute, change))
-  const words = {
-    ready: 'warm on time',
-    short: `${Math.ceil(evaluation?.shortfallMin ?? 0)} min short`,
-    impossible: 'cannot make it',
-    'no-need': 'no need',
-    unknown: evaluation?.outcome.reason || 'not known',
-  }
   const urgency = danger ? 0 : evaluation ? { short: 1, impossible: 1, unknown: 2, ready: 3, 'no-need': 4 }[evaluation.status] : 2
   return {
     startByMin: evaluation?.startByMin ?? null,
     readyBy: clock(evaluation?.readyByMin),
     startBy: clock(evaluation?.startByMin),
-    state: danger ? KIND_WORDS[danger.kind] : evaluation ? words[evaluation.status] : 'not evaluated',
+    state: danger ? KIND_WORDS[danger.kind] : evaluation ? wordsOf(evaluation) : 'not evaluated',
     urgency,
     strip: evaluation && evaluation.outcome.runs.length + evaluation.outcome.needs.length > 0 ? stripDayOf(evaluation) : null,
   }
