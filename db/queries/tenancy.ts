@@ -71,6 +71,20 @@ export async function listTenanciesBetween(
 export const listTenanciesOn = (db: OrgDb, propertyId: PropertyId, day: string): Promise<readonly Tenancy[]> =>
   listTenanciesBetween(db, propertyId, { fromDay: day, toDay: `${day}~` })
 
+/** All tenancies a property ever had, past and to come. */
+export const listTenanciesEver = (db: OrgDb, propertyId: PropertyId): Promise<readonly Tenancy[]> =>
+  listTenanciesBetween(db, propertyId, { fromDay: '0000-01-01', toDay: '9999-12-31' })
+
+export function tenanciesByUnit(tenancies: readonly Tenancy[]): ReadonlyMap<UnitId, readonly Tenancy[]> {
+  const byUnit = new Map<UnitId, Tenancy[]>()
+  for (const tenancy of tenancies) {
+    const others = byUnit.get(tenancy.unitId)
+    if (others) others.push(tenancy)
+    else byUnit.set(tenancy.unitId, [tenancy])
+  }
+  return byUnit
+}
+
 /** A person's own tenancies in this organisation, newest first. */
 export async function listTenanciesOfPerson(db: OrgDb, personId: PersonId): Promise<readonly Tenancy[]> {
   const rows = await db
@@ -105,6 +119,10 @@ export async function addTenancy(db: OrgTrx, fields: NewTenancyFields, createdAt
 
 export async function changeTenancyEnd(db: OrgTrx, id: TenancyId, toDay: string | null): Promise<void> {
   await db.updateTable('tenancy', { to_day: toDay }).where('id', '=', id).execute()
+}
+
+export async function changeTenancyName(db: OrgTrx, id: TenancyId, name: string): Promise<void> {
+  await db.updateTable('tenancy', { name }).where('id', '=', id).execute()
 }
 
 export async function changeTenancyPerson(db: OrgTrx, id: TenancyId, personId: PersonId): Promise<void> {

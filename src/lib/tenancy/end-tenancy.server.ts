@@ -7,6 +7,7 @@ import { requireRole } from '#lib/auth/permission.ts'
 import { evaluateUnit } from '#lib/evaluation/evaluate-unit.server.ts'
 import { invalid, notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
+import { endRefusal } from './hand-over.ts'
 import { endSchema } from './schemas.ts'
 
 export async function endTenancy(
@@ -18,11 +19,8 @@ export async function endTenancy(
   const tenancy = await inTransaction(db, async (trx) => {
     const found = await findTenancy(trx, tenancyId)
     if (!found) throw notFound('tenancy')
-    if (toDay <= found.fromDay) throw invalid([{ field: 'toDay', message: `It began on ${found.fromDay}: choose a later day.` }])
-    const next = (await listTenancies(trx, found.unitId)).filter((other) => other.fromDay > found.fromDay).at(-1)
-    if (next && toDay > next.fromDay) {
-      throw invalid([{ field: 'toDay', message: `The next tenancy begins on ${next.fromDay}: choose that day or an earlier one.` }])
-    }
+    const refusal = endRefusal(await listTenancies(trx, found.unitId), found, toDay)
+    if (refusal) throw invalid([{ field: 'toDay', message: refusal }])
     await changeTenancyEnd(trx, tenancyId, toDay)
     await addAudit(trx, {
       atMs: nowMs,

@@ -8,6 +8,7 @@ import { requireRole } from '#lib/auth/permission.ts'
 import { evaluateUnit } from '#lib/evaluation/evaluate-unit.server.ts'
 import { invalid, notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
+import { handOver } from './hand-over.ts'
 import { tenancySchema } from './schemas.ts'
 
 export async function startTenancy(
@@ -18,14 +19,17 @@ export async function startTenancy(
   const fields = parseInput(tenancySchema, input)
   const id = await inTransaction(db, async (trx) => {
     if (!(await findUnit(trx, unitId))) throw notFound('unit')
-    const [newest] = await listTenancies(trx, unitId)
-    if (newest && (newest.toDay === null || newest.toDay > fields.fromDay)) {
-      if (fields.fromDay <= newest.fromDay)
-        throw invalid([{ field: 'fromDay', message: `The tenancy before began on ${newest.fromDay}. Choose a later day.` }])
-      await changeTenancyEnd(trx, newest.id, fields.fromDay)
-    }
+    const fit = handOver(await listTenancies(trx, unitId), fields.fromDay)
+    if (fit.status === 'refused') throw invalid([{ field: 'fromDay', message: fit.reason }])
+    if (fit.ends) await changeTenancyEnd(trx, fit.ends.id, fields.fromDay)
     const tenancyId = await addTenancy(trx, { unitId, personId: null, ...fields, toDay: null }, nowMs)
-    await addAudit(trx, { atMs: nowMs, action: 'start', subjectKind: 'tenancy', subjectId: tenancyId, after: { fromDay: fields.fromDay } })
+    await addAudit(trx, {
+      atMs: nowMs,
+      action: 'start',
+      subjectKind: 'tenancy',
+      subjectId: tenancyId,
+      after: { fromDay: fields.fromDay, ended: fit.ends?.id ?? null },
+    })
     return tenancyId
   })
   await evaluateUnit(db, { unitId, nowMs })
