@@ -4,19 +4,21 @@ import { giveFeedback } from '#lib/feedback/give-feedback.server.ts'
 import { formFields } from '#lib/http/form.ts'
 import { openedIn } from '#lib/http/opened.ts'
 import { runForm } from '#lib/http/to-action-error.ts'
-import { readWeekForm, weekOf } from '#lib/preference/form-fields.ts'
-import { setPreference } from '#lib/preference/set-preference.server.ts'
-import { loadCard } from '#lib/tip/load-card.server.ts'
+import { saveShowers } from '#lib/preference/save-showers.server.ts'
+import { openTenancy } from '#lib/tip/own-tenancy.server.ts'
 import { setTips } from '#lib/tip/set-tips.server.ts'
 
+/** Each answers the query of the card to go back to: empty for whoever has one tenancy. */
 export const tenant = {
   showers: defineAction({
     accept: 'form',
     handler: (form, { locals }) =>
       runForm(async () => {
         const { db, nowMs } = openedIn(locals)
-        const { tenancy } = await loadCard(db, nowMs)
-        await setPreference(db, { tenancyId: tenancy.id, input: { week: weekOf(readWeekForm(formFields(form))), willing: [] }, nowMs })
+        const fields = formFields(form)
+        const { cardQuery, tenancy } = await openTenancy(db, { tenancyId: fields.tenancy, nowMs })
+        await saveShowers(db, { tenancyId: tenancy.id, fields, nowMs })
+        return cardQuery
       }),
   }),
   feedback: defineAction({
@@ -24,8 +26,10 @@ export const tenant = {
     handler: (form, { locals }) =>
       runForm(async () => {
         const { db, nowMs } = openedIn(locals)
-        const { tenancy, today } = await loadCard(db, nowMs)
-        await giveFeedback(db, { tenancyId: tenancy.id, input: { day: today, verdict: formFields(form).verdict }, nowMs })
+        const fields = formFields(form)
+        const { cardQuery, tenancy, today } = await openTenancy(db, { tenancyId: fields.tenancy, nowMs })
+        await giveFeedback(db, { tenancyId: tenancy.id, input: { day: today, verdict: fields.verdict }, nowMs })
+        return cardQuery
       }),
   }),
   tips: defineAction({
@@ -33,8 +37,10 @@ export const tenant = {
     handler: (form, { locals }) =>
       runForm(async () => {
         const { db, nowMs } = openedIn(locals)
-        const { tenancy } = await loadCard(db, nowMs)
-        await setTips(db, { tenancyId: tenancy.id, input: formFields(form), nowMs })
+        const fields = formFields(form)
+        const { cardQuery, tenancy } = await openTenancy(db, { tenancyId: fields.tenancy, nowMs })
+        await setTips(db, { tenancyId: tenancy.id, input: fields, nowMs })
+        return `${cardQuery}${cardQuery ? '&' : '?'}mails`
       }),
   }),
 }

@@ -26,8 +26,23 @@ export const showerSchema = z.strictObject({
 })
 export type Shower = z.infer<typeof showerSchema>
 
+const daySchema = z
+  .array(showerSchema)
+  .max(SHOWER_LIMITS.perDay, `At most ${SHOWER_LIMITS.perDay} times a day.`)
+  .superRefine((showers, context) => {
+    showers.forEach((shower, index) => {
+      const before = showers[index - 1]
+      if (!before || shower.readyByMinuteOfDay >= endMinuteOfDay(before)) return
+      const message = 'Two times of one day overlap. Choose a later time, or make them one entry with more showers.'
+      context.addIssue({ code: 'custom', path: [index, 'readyByMinuteOfDay'], message })
+    })
+  })
+
+const endMinuteOfDay = ({ readyByMinuteOfDay, count, minutesEach, gapMin }: Shower): number =>
+  readyByMinuteOfDay + count * minutesEach + (count - 1) * gapMin
+
 /** Seven days, Monday first; each a list in order of time. */
-export const weekSchema = z.array(z.array(showerSchema).max(SHOWER_LIMITS.perDay, `At most ${SHOWER_LIMITS.perDay} times a day.`)).length(7)
+export const weekSchema = z.array(daySchema).length(7)
 export type Week = z.infer<typeof weekSchema>
 
 /** Hours in which the tenant is willing to press a timer, wall-clock minutes, half-open; none = any hour. */

@@ -10,14 +10,22 @@ import { AppError } from '#lib/http/app-error.ts'
 import { readToken, signingSecret, type TokenClaims } from '#lib/mail/link.server.ts'
 
 export type LinkPurpose =
-  { readonly kind: 'feedback'; readonly day: string; readonly verdict: 'hot' | 'cold' } | { readonly kind: 'unsubscribe' }
+  | {
+      readonly kind: 'feedback'
+      readonly day: string
+      readonly verdict: 'hot' | 'cold'
+      /** Start of that day at the property: before it there is nothing to say. */
+      readonly opensAtMs: number
+    }
+  | { readonly kind: 'unsubscribe' }
 
 /** What a link is for, or `null` when it is broken or too old. */
 export function readLink(token: string, nowMs: number): LinkPurpose | null {
   const claims = claimsOf(token, nowMs)
   if (claims?.purpose === 'unsubscribe') return { kind: 'unsubscribe' }
-  const { day, verdict } = claims?.subject ?? {}
-  return claims?.purpose === 'feedback' && day && (verdict === 'hot' || verdict === 'cold') ? { kind: 'feedback', day, verdict } : null
+  const { day, verdict, opensAtMs } = claims?.subject ?? {}
+  if (claims?.purpose !== 'feedback' || !day || (verdict !== 'hot' && verdict !== 'cold')) return null
+  return { kind: 'feedback', day, verdict, opensAtMs: Number(opensAtMs) }
 }
 
 const claimsOf = (token: string, nowMs: number): TokenClaims | null => readToken(token, { secret: signingSecret(), nowMs })

@@ -1,65 +1,84 @@
-/** A tenant's card: their unit, today and tomorrow in words, whether they have said hot or cold; nothing of any other unit. */
-import type { PersonId } from '#db/ids.ts'
+/** A tenant's card: their unit and the day that is ahead of them in words, cautions, whom to call; nothing of any other tenancy. */
 import type { OrgDb } from '#db/org-db.ts'
-import { findEvaluation } from '#db/queries/evaluation.ts'
+import { type Evaluation, findEvaluation } from '#db/queries/evaluation.ts'
 import { findFeedback } from '#db/queries/feedback.ts'
+import { listOpenFlags } from '#db/queries/flag.ts'
 import { currentHardware } from '#db/queries/hardware.ts'
 import { findPreference } from '#db/queries/preference.ts'
-import { findProperty } from '#db/queries/property.ts'
-import { listTenanciesOfPerson, tenancyCovers } from '#db/queries/tenancy.ts'
-import { findUnit } from '#db/queries/unit.ts'
-import { actingPerson, requireRole } from '#lib/auth/permission.ts'
-import { assessScald } from '#lib/core/hygiene/scald.ts'
-import { addDays, civilOf } from '#lib/core/time/civil.ts'
+import { dayBounds, addDays } from '#lib/core/time/civil.ts'
+import { MS_PER_MIN } from '#lib/core/units.ts'
 import { formatDay } from '#lib/format.ts'
 import { notFound } from '#lib/http/app-error.ts'
 import { stripDayOf } from '#lib/unit/strip-day.ts'
-import { tipOf } from './tip.ts'
+import { cautionsFor, isPressed } from './cautions.ts'
+import { type Home, openTenancy, ownTenancies, type TenancyChoice } from './own-tenancy.server.ts'
+import { needsAhead, tipOf } from './tip.ts'
+import { landlordsOf } from './whom-to-call.server.ts'
 
-/** After this local hour the card speaks of tomorrow. */
-const EVENING_FROM_MIN = 12 * 60
+export type Card =
+  | { readonly kind: 'over'; readonly unitCode: string; readonly propertyName: string; readonly toDay: string }
+  | ({ readonly kind: 'open' } & Awaited<ReturnType<typeof openCard>>)
+export type OpenCard = Extract<Card, { kind: 'open' }>
 
-export async function loadCard(db: OrgDb, nowMs: number) {
-  requireRole(db, ['tenant'], 'see a tenant’s card')
-  const personId = actingPerson(db)
-  const home = personId ? await presentHome(db, personId, nowMs) : null
-  // Whoever has moved out, or not yet in, sees nothing: the unit's day is somebody else's.
-  if (!home) throw notFound('tenancy of yours today')
-  const { tenancy, unit, property } = home
-  const { day: today, minuteOfDay } = civilOf(nowMs, property.zone)
-  const day = minuteOfDay >= EVENING_FROM_MIN ? addDays(today, 1) : today
-  const evaluation = tenancyCovers(tenancy, day) ? await findEvaluation(db, unit.id, day) : null
+export async function loadCard(db: OrgDb, { tenancyId, nowMs }: TenancyChoice): Promise<Card> {
+  const { open, over } = await ownTenancies(db, nowMs)
+  if (!tenancyId && open.length === 0) {
+    if (!over?.tenancy.toDay) throw notFound('tenancy of yours')
+    return { kind: 'over', unitCode: over.unit.code, propertyName: over.property.name, toDay: over.tenancy.toDay }
+  }
+  const home = await openTenancy(db, { tenancyId, nowMs })
+  return { kind: 'open', ...(await openCard(db, { home, open, nowMs })) }
+}
+
+interface CardCase {
+  readonly home: Home
+  readonly open: readonly Home[]
+  readonly nowMs: number
+}
+
+async function openCard(db: OrgDb, { home, open, nowMs }: CardCase) {
+  const { tenancy, unit, property, today } = home
+  const passedMin = (nowMs - dayBounds(today, property.zone).startsAtMs) / MS_PER_MIN
   const record = await currentHardware(db, unit.id)
-  const kind = record?.installation.controller.kind
-  const tank = record?.installation.load.tank
+  const preference = await findPreference(db, tenancy.id)
+  const { evaluation, isToday } = await evaluationAhead(db, { home, passedMin })
+  const pressed = isPressed(record?.installation)
+  const day = isToday ? today : addDays(today, 1)
   return {
     tenancy,
     unitCode: unit.code,
+    others: open.filter((other) => other.tenancy.id !== tenancy.id).map((other) => ({ id: other.tenancy.id, unitCode: other.unit.code })),
     property: { name: property.name, zone: property.zone, currency: property.currency },
     today,
     day,
-    isToday: day === today,
-    preference: await findPreference(db, tenancy.id),
+    isToday,
+    /** A tenancy that is to begin has nothing to tell or to ask yet, but its showers. */
+    begins: tenancy.fromDay > today ? tenancy.fromDay : null,
+    preference,
     feedback: await findFeedback(db, tenancy.id, today),
-    scald: tank ? assessScald(tank.setPointC, tank.mixingValveC) : null,
+    cautions: cautionsFor({ installation: record?.installation ?? null, flags: await listOpenFlags(db, { unitId: unit.id }) }),
+    landlords: await landlordsOf(db),
     strip: evaluation ? stripDayOf(evaluation) : null,
     tip: evaluation
       ? tipOf({
           evaluation,
-          pressed: kind !== 'time-switch' && kind !== 'supplier-contactor',
-          when: day === today ? 'today' : `tomorrow, ${formatDay(day, 'EEEE')}`,
+          pressed,
+          when: isToday ? 'today' : `tomorrow, ${formatDay(day, 'EEEE')}`,
+          ...(isToday ? { passedMin } : {}),
         })
       : null,
   }
 }
-export type Card = Awaited<ReturnType<typeof loadCard>>
 
-/** The person's tenancy that is in force on the unit's own local today. */
-async function presentHome(db: OrgDb, personId: PersonId, nowMs: number) {
-  for (const tenancy of await listTenanciesOfPerson(db, personId)) {
-    const unit = await findUnit(db, tenancy.unitId)
-    const property = unit && (await findProperty(db, unit.propertyId))
-    if (unit && property && tenancyCovers(tenancy, civilOf(nowMs, property.zone).day)) return { tenancy, unit, property }
-  }
-  return null
+/** Today while a shower of today is ahead, else tomorrow; a day outside the tenancy is somebody else's and is not looked at. */
+async function evaluationAhead(
+  db: OrgDb,
+  { home, passedMin }: { readonly home: Home; readonly passedMin: number },
+): Promise<{ readonly evaluation: Evaluation | null; readonly isToday: boolean }> {
+  const { tenancy, unit, today } = home
+  const own = (day: string) => tenancy.fromDay <= day && (tenancy.toDay === null || day < tenancy.toDay)
+  const on = async (day: string) => (own(day) ? findEvaluation(db, unit.id, day) : null)
+  const now = await on(today)
+  if (now && needsAhead(now, passedMin).length > 0) return { evaluation: now, isToday: true }
+  return { evaluation: await on(addDays(today, 1)), isToday: false }
 }

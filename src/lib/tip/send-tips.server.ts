@@ -1,84 +1,115 @@
 /**
- * Queues tomorrow's tips of a property: one letter a tenancy and day, whatever how often it is called. Needs no role: it is the
- * job's, and it tells each tenant only their own day.
+ * Queues tomorrow's tips of a property: one letter a tenancy and day, whatever how often it is called. It is the job's, or a
+ * landlord's, and it tells each tenant only their own days.
  */
-import type { PropertyId } from '#db/ids.ts'
+import type { PropertyId, UnitId } from '#db/ids.ts'
 import { inTransaction, type OrgDb } from '#db/org-db.ts'
 import { type Evaluation, listEvaluations } from '#db/queries/evaluation.ts'
+import { type Flag, listOpenFlags } from '#db/queries/flag.ts'
 import { type HardwareRecord, listCurrentHardware } from '#db/queries/hardware.ts'
 import { findProperty, type Property } from '#db/queries/property.ts'
 import { listTenanciesOn, type Tenancy } from '#db/queries/tenancy.ts'
+import { findLastTip, tipCause } from '#db/queries/tip.ts'
 import { listUnits } from '#db/queries/unit.ts'
+import { requireRole } from '#lib/auth/permission.ts'
 import { addDays, civilOf, weekdayOf } from '#lib/core/time/civil.ts'
+import { formatDay } from '#lib/format.ts'
 import { notFound } from '#lib/http/app-error.ts'
 import { queueMessage } from '#lib/mail/queue-message.server.ts'
+import { isPressed } from './cautions.ts'
+import { saysTheSame, tipOf } from './tip.ts'
 import { tipLetter } from './tip-letter.server.ts'
+import { type Landlord, landlordsOf } from './whom-to-call.server.ts'
 
 export interface TipCounts {
   readonly due: number
   readonly queued: number
   readonly alreadyQueued: number
 }
+export interface TipFor {
+  readonly property: Property
+  readonly landlords: readonly Landlord[]
+  readonly tenancy: Tenancy
+  readonly unitCode: string
+  readonly record: HardwareRecord
+  readonly flags: readonly Flag[]
+  /** Of the day told about. */
+  readonly evaluation: Evaluation
+  /** The days after it that a weekly letter tells as well. */
+  readonly later: readonly Evaluation[]
+  readonly nowMs: number
+}
 
-const CHANGE_MIN = 5
 const MONDAY = 0
+const DAYS_IN_WEEK = 7
 
 export async function sendTips(
   db: OrgDb,
   { propertyId, nowMs }: { readonly propertyId: PropertyId; readonly nowMs: number },
 ): Promise<TipCounts> {
+  requireRole(db, ['landlord'], 'send tips')
   const property = await findProperty(db, propertyId)
   if (!property) throw notFound('property')
-  const today = civilOf(nowMs, property.zone).day
-  const day = addDays(today, 1)
-  const evaluations = await listEvaluations(db, propertyId, today, addDays(day, 1))
-  const on = (wanted: string) => new Map(evaluations.filter((one) => one.day === wanted).map((one) => [one.unitId, one]))
-  const [before, after] = [on(today), on(day)]
+  const day = addDays(civilOf(nowMs, property.zone).day, 1)
+  const untilDay = addDays(day, weekdayOf(day) === MONDAY ? DAYS_IN_WEEK : 1)
+  const evaluations = byUnit(await listEvaluations(db, propertyId, day, untilDay))
+  const flags = byUnit(await listOpenFlags(db, { propertyId }))
   const hardware = await listCurrentHardware(db, propertyId)
   const codes = new Map((await listUnits(db, propertyId)).map((unit) => [unit.id, unit.code]))
+  const landlords = await landlordsOf(db)
   const counts = { due: 0, queued: 0, alreadyQueued: 0 }
   for (const tenancy of await listTenanciesOn(db, propertyId, day)) {
-    const evaluation = after.get(tenancy.unitId)
+    const [evaluation, ...later] = ownDays(tenancy, evaluations.get(tenancy.unitId) ?? [])
     const record = hardware.get(tenancy.unitId)
-    if (!evaluation || !record || !isDue(tenancy, { day, before: before.get(tenancy.unitId), evaluation })) continue
+    if (!record || evaluation?.day !== day || !(await isDue(db, { tenancy, evaluation, record }))) continue
+    const unit = { unitCode: codes.get(tenancy.unitId) ?? '', record, flags: flags.get(tenancy.unitId) ?? [] }
     counts.due++
-    const queued = await queueTip(db, { property, tenancy, evaluation, record, unitCode: codes.get(tenancy.unitId) ?? '', nowMs })
+    const weekly = tenancy.tips === 'weekly'
+    const queued = await queueTip(db, { property, landlords, tenancy, ...unit, evaluation, later: weekly ? later : [], nowMs })
     if (queued === 'queued') counts.queued++
     else counts.alreadyQueued++
   }
   return counts
 }
 
-interface Days {
-  readonly day: string
-  readonly before: Evaluation | undefined
-  readonly evaluation: Evaluation
+function byUnit<T extends { readonly unitId: UnitId | null }>(rows: readonly T[]): ReadonlyMap<UnitId, readonly T[]> {
+  const found = new Map<UnitId, T[]>()
+  for (const row of rows) {
+    if (row.unitId) found.set(row.unitId, [...(found.get(row.unitId) ?? []), row])
+  }
+  return found
 }
 
-function isDue(tenancy: Tenancy, { day, before, evaluation }: Days): boolean {
+/** A day after the tenancy's end is somebody else's. */
+const ownDays = ({ toDay }: Tenancy, days: readonly Evaluation[]): readonly Evaluation[] =>
+  days.filter(({ day }) => toDay === null || day < toDay)
+
+interface DueCase {
+  readonly tenancy: Tenancy
+  readonly evaluation: Evaluation
+  readonly record: HardwareRecord
+}
+
+async function isDue(db: OrgDb, { tenancy, evaluation, record }: DueCase): Promise<boolean> {
   if (evaluation.outcome.needs.length === 0) return false
   switch (tenancy.tips) {
     case 'daily':
       return true
     case 'weekly':
-      return weekdayOf(day) === MONDAY
-    case 'on-change':
-      return (
-        !before || before.status !== evaluation.status || Math.abs((before.startByMin ?? 0) - (evaluation.startByMin ?? 0)) >= CHANGE_MIN
-      )
+      return weekdayOf(evaluation.day) === MONDAY
+    case 'on-change': {
+      // What was told last is what counts, not yesterday's figures: those are computed again when the heater changes.
+      const last = await findLastTip(db, tenancy, evaluation.day)
+      if (!last) return true
+      const again = tipOf({ evaluation, pressed: isPressed(record.installation), when: tomorrowWords(last.day) })
+      return !saysTheSame(last.subject, again.subject)
+    }
     case 'never':
       return false
   }
 }
 
-export interface TipFor {
-  readonly property: Property
-  readonly tenancy: Tenancy
-  readonly evaluation: Evaluation
-  readonly record: HardwareRecord
-  readonly unitCode: string
-  readonly nowMs: number
-}
+export const tomorrowWords = (day: string): string => `tomorrow, ${formatDay(day, 'EEEE')}`
 
 async function queueTip(db: OrgDb, tip: TipFor) {
   const { property, tenancy, evaluation, nowMs } = tip
@@ -90,7 +121,7 @@ async function queueTip(db: OrgDb, tip: TipFor) {
       personId: tenancy.personId,
       toEmail: tenancy.email,
       kind: 'tip',
-      cause: `${tenancy.id}:${evaluation.day}`,
+      cause: tipCause(tenancy.id, evaluation.day),
       ...letter,
       nowMs,
     }),

@@ -1,5 +1,4 @@
 /** How often a tenant's tips come: their own choice, or the landlord's. */
-import { z } from 'zod'
 import type { TenancyId } from '#db/ids.ts'
 import { inTransaction, type OrgDb } from '#db/org-db.ts'
 import { addAudit } from '#db/queries/audit.ts'
@@ -7,8 +6,7 @@ import { changeTenancyTips, findTenancy } from '#db/queries/tenancy.ts'
 import { actingPerson, hasRole, requireRole } from '#lib/auth/permission.ts'
 import { notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
-
-const tipsSchema = z.object({ tips: z.enum(['daily', 'weekly', 'on-change', 'never'], { error: 'Choose how often.' }) })
+import { tipsSchema } from './schemas.ts'
 
 export async function setTips(
   db: OrgDb,

@@ -2,12 +2,15 @@
 import PostalMime from 'postal-mime'
 import { beforeEach, describe, expect, it } from 'vitest'
 import { findFeedback } from '#db/queries/feedback.ts'
-import { findTenancy } from '#db/queries/tenancy.ts'
-import type { Evaluation } from '#db/queries/evaluation.ts'
+import { inTransaction } from '#db/org-db.ts'
+import { findEvaluation } from '#db/queries/evaluation.ts'
+import { findPreference } from '#db/queries/preference.ts'
+import { changeTenancyEnd, changeTenancyTips, findTenancy } from '#db/queries/tenancy.ts'
+import { evaluateProperty } from '#lib/evaluation/evaluate-property.server.ts'
 import { readToken, signToken } from '#lib/mail/link.server.ts'
+import { setPreference } from '#lib/preference/set-preference.server.ts'
 import { followLink, readLink } from '#lib/tip/follow-link.server.ts'
 import { sendTips } from '#lib/tip/send-tips.server.ts'
-import { tipOf } from '#lib/tip/tip.ts'
 import { NOW_MS } from '../../support/factories.ts'
 import { CLOCKED, COLD, makeWorld, unitOf, type World } from '../../support/world.ts'
 
@@ -64,6 +67,50 @@ describe('sendTips', () => {
         .toString(),
     ).toBe('PNG')
   })
+  it('tells whoever wants to hear of changes only when what was told last no longer holds', async () => {
+    const { tenancyId, unitId } = unitOf(world, 'Flat 1')
+    await inTransaction(world.landlord, (trx) => changeTenancyTips(trx, tenancyId, 'on-change'))
+    const told = async () => (await letters()).filter((one) => one.cause.startsWith(tenancyId)).length
+    await send()
+    expect(await told()).toBe(1)
+    await evaluateProperty(world.landlord, { propertyId: world.building.propertyId, nowMs: NOW_MS + DAY_MS })
+    await send(NOW_MS + DAY_MS)
+    expect(await told()).toBe(1)
+    // An hour earlier from now on; today's figures are computed again with it, and yet tomorrow's tip is news.
+    const week = (await findPreference(world.landlord, tenancyId))?.week ?? []
+    const earlier = week.map((day) => day.map((shower) => ({ ...shower, readyByMinuteOfDay: shower.readyByMinuteOfDay - 60 })))
+    await setPreference(world.landlord, { tenancyId, input: { week: earlier, willing: [] }, nowMs: NOW_MS + DAY_MS })
+    await send(NOW_MS + DAY_MS)
+    expect(await told()).toBe(2)
+    expect((await findEvaluation(world.landlord, unitId, '2026-12-03'))?.startByMin).toBeLessThan(6 * 60)
+  })
+  it('tells the week to whoever wants one letter a week, on the evening before its Monday', async () => {
+    const { tenancyId } = unitOf(world, 'Flat 1')
+    await inTransaction(world.landlord, (trx) => changeTenancyTips(trx, tenancyId, 'weekly'))
+    const told = async () => (await letters()).filter((one) => one.cause.startsWith(tenancyId))
+    await send()
+    expect(await told()).toEqual([])
+    // Sunday 6 December.
+    const sundayMs = NOW_MS + 5 * DAY_MS
+    await evaluateProperty(world.landlord, { propertyId: world.building.propertyId, nowMs: sundayMs })
+    await send(sundayMs)
+    const [letter] = await told()
+    expect(letter?.subject).toContain('tomorrow, Monday')
+    expect(letter?.text).toMatch(/Tuesday to Thursday: press by \d\d:\d\d\.\n\nFriday: press by \d\d:\d\d and \d\d:\d\d\./)
+    expect(letter?.text).toMatch(/Saturday and Sunday: press by \d\d:\d\d/)
+  })
+  it('is told to nobody whose tenancy ends tomorrow', async () => {
+    const { tenancyId } = unitOf(world, 'Flat 1')
+    await inTransaction(world.landlord, (trx) => changeTenancyEnd(trx, tenancyId, '2026-12-02'))
+    await send()
+    expect((await letters()).some((one) => one.cause.startsWith(tenancyId))).toBe(false)
+  })
+  it("answers not found for another organisation's property, and is forbidden to tenants", async () => {
+    const { propertyId } = world.building
+    await expect(sendTips(world.stranger, { propertyId, nowMs: NOW_MS })).rejects.toMatchObject({ code: 'not-found' })
+    await expect(sendTips(world.tenant, { propertyId, nowMs: NOW_MS })).rejects.toMatchObject({ code: 'forbidden' })
+    expect(await letters()).toEqual([])
+  })
   it('leaves out whoever wants none', async () => {
     await send()
     await followLink(world.db, { token: tokenIn((await letterTo(COLD)).text, 'Stop these mails'), nowMs: NOW_MS })
@@ -75,15 +122,28 @@ describe('followLink', () => {
   it('notes hot or cold for the one day and tenancy it names', async () => {
     await send()
     const token = tokenIn((await letterTo(COLD)).text, 'It was cold')
-    expect(readLink(token, NOW_MS)).toEqual({ kind: 'feedback', day: '2026-12-02', verdict: 'cold' })
+    expect(readLink(token, NOW_MS)).toEqual({
+      kind: 'feedback',
+      day: '2026-12-02',
+      verdict: 'cold',
+      opensAtMs: Date.UTC(2026, 11, 2),
+    })
     expect(await findFeedback(world.landlord, unitOf(world, COLD).tenancyId, '2026-12-02')).toBeNull()
-    await followLink(world.db, { token, nowMs: NOW_MS })
+    await followLink(world.db, { token, nowMs: NOW_MS + DAY_MS })
     expect(await findFeedback(world.landlord, unitOf(world, COLD).tenancyId, '2026-12-02')).toBe('cold')
   })
-  it('stops the tips', async () => {
+  it('notes nothing about a day that is yet to come', async () => {
+    await send()
+    const token = tokenIn((await letterTo(COLD)).text, 'It was cold')
+    await expect(followLink(world.db, { token, nowMs: Date.UTC(2026, 11, 2) - 1 })).rejects.toMatchObject({ code: 'invalid' })
+    expect(await findFeedback(world.landlord, unitOf(world, COLD).tenancyId, '2026-12-02')).toBeNull()
+  })
+  it('stops the tips, and says so in the audit', async () => {
     await send()
     await followLink(world.db, { token: tokenIn((await letterTo(COLD)).text, 'Stop these mails'), nowMs: NOW_MS })
     expect((await findTenancy(world.landlord, unitOf(world, COLD).tenancyId))?.tips).toBe('never')
+    const entry = await world.db.selectFrom('audit_entry').where('action', '=', 'unsubscribe').selectAll().executeTakeFirstOrThrow()
+    expect(entry).toMatchObject({ subject_id: unitOf(world, COLD).tenancyId, after: '{"tips":"never"}' })
   })
   it('refuses a touched, a foreign and an old link', async () => {
     await send()
@@ -103,24 +163,6 @@ describe('signToken and readToken', () => {
     expect(readToken(token, { secret: 'k'.repeat(40), nowMs: NOW_MS - 1 })).toEqual(claims)
     expect(readToken(token, { secret: 'k'.repeat(40), nowMs: NOW_MS })).toBeNull()
     expect(readToken(token, { secret: 'j'.repeat(40), nowMs: NOW_MS - 1 })).toBeNull()
-  })
-})
-
-describe('tipOf', () => {
-  it('says the evening before when the start falls there', () => {
-    const need = {
-      need: { readyByMin: 30, count: 1, minutesEach: 8, gapMin: 5, flowLPerMin: 7, useTemperatureC: 40 },
-      status: 'ready',
-      startByMin: -25,
-      readyAtMin: 10,
-      minutesWanted: 8,
-      minutesServed: 8,
-      nextBestReadyByMin: [],
-    }
-    const evaluation = { status: 'ready', outcome: { needs: [need], clockChange: null, reason: '' } } as unknown as Evaluation
-    expect(tipOf({ evaluation, pressed: true, when: 'tomorrow, Wednesday' }).subject).toBe(
-      'Press the timer by 23:35 the evening before tomorrow, Wednesday',
-    )
   })
 })
 
