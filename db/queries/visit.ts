@@ -1,6 +1,7 @@
 /** Reads and writes of electricians' visits. */
 import { type FlagId, newId, type PersonId, type PropertyId, type UnitId, type VisitId } from '../ids.ts'
 import { fromJson, toJson } from '../json.ts'
+import type { EvidenceLine } from './flag.ts'
 import type { OrgDb, OrgTrx } from '../org-db.ts'
 import type { VisitTable } from '../tables/visit.ts'
 
@@ -8,8 +9,10 @@ import type { VisitTable } from '../tables/visit.ts'
 export interface VisitProposal {
   /** Each finding in a sentence. */
   readonly findings: readonly string[]
-  /** Changes that would fix it, each checked by the model. */
+  /** Changes that would fix it, each with where it is from. */
   readonly changes: readonly string[]
+  /** The numbers behind each finding as they stood then; absent in visits planned before they were kept. */
+  readonly evidence?: readonly { readonly summary: string; readonly lines: readonly EvidenceLine[] }[]
 }
 
 export interface Visit {
@@ -85,6 +88,12 @@ export async function listVisitsOf(db: OrgDb, electricianId: PersonId): Promise<
     .where('visit.state', '<>', 'cancelled')
     .orderBy('visit.due_day')
     .execute()
+  return rows.map(toVisit)
+}
+
+/** All visits of the organisation but cancelled ones. */
+export async function listVisits(db: OrgDb): Promise<readonly Visit[]> {
+  const rows = await joined(db).where('visit.state', '<>', 'cancelled').orderBy('visit.due_day').execute()
   return rows.map(toVisit)
 }
 

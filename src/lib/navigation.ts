@@ -35,7 +35,7 @@ export function roomsFor({ slug, roles, property }: Place): readonly Room[] {
       { label: 'Jobs', href: `${root}/jobs` },
     )
   }
-  if (roles.includes('electrician')) rooms.push({ label: 'Visits', href: `${root}/visits` })
+  if (roles.includes('electrician') || roles.includes('landlord')) rooms.push({ label: 'Visits', href: `${root}/visits` })
   if (roles.includes('owner') || roles.includes('landlord')) rooms.push({ label: 'Digests', href: `${root}/digests` })
   if (roles.includes('tenant')) rooms.push({ label: 'My hot water', href: `${root}/my` })
   return rooms

@@ -102,10 +102,11 @@ async function openFlags(trx: OrgTrx, ids: readonly (FlagId | null)[], unitId: s
   return flags
 }
 
-/** Findings and fixes as they stand in the flags' evidence, each computed by the model. */
+/** Findings, their numbers and what would fix them as they stand in the flags, so that the electrician reads what the landlord read. */
 const proposalOf = (flags: readonly Flag[]): VisitProposal => ({
   findings: flags.map((flag) => flag.summary),
   changes: flags.flatMap((flag) =>
     flag.evidence.lines.filter((line) => line.kind === 'fix').map((line) => `${line.label}: ${line.value}.`),
   ),
+  evidence: flags.map((flag) => ({ summary: flag.summary, lines: flag.evidence.lines })),
 })
