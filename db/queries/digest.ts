@@ -1,9 +1,26 @@
 /** Reads and writes of digests; a row never changes, a correction is a new edition. */
-import { type DigestId, newId, type PropertyId } from '../ids.ts'
+import type { DigestId, PropertyId } from '../ids.ts'
 import { fromJson, toJson } from '../json.ts'
 import type { OrgDb, OrgTrx } from '../org-db.ts'
 
-/** One month of one property as it was accounted for; money in minor units of `currency`. */
+export interface DigestDay {
+  readonly day: string
+  readonly energyKwh: number
+  readonly peakKwh: number
+  /** Units that needed hot water, and those of them that were warm on time. */
+  readonly neededUnits?: number
+  readonly warmUnits?: number
+}
+export interface DigestVisit {
+  readonly code: string
+  /** Day it is due, or was signed off; `null` = no day set. */
+  readonly day: string | null
+}
+
+/**
+ * One month of one property as it was accounted for; money in minor units of `currency`. An edition never changes, so a figure
+ * that the product came to account for later is absent in older ones: it is optional, and nothing fills it in afterwards.
+ */
 export interface DigestFigures {
   readonly propertyName: string
   readonly currency: string
@@ -19,10 +36,12 @@ export interface DigestFigures {
   readonly baselineEnergyKwh: number
   readonly baselineCostMinor: number | null
   /** Always on less as run, over unit-days that were warm on time: what a cold shower did not get is not a saving. */
-  readonly savedKwh: number
-  readonly savedMinor: number | null
-  /** Energy by day, in order; their sum is `energyKwh`. */
-  readonly days: readonly { readonly day: string; readonly energyKwh: number; readonly peakKwh: number }[]
+  readonly savedKwh?: number
+  readonly savedMinor?: number | null
+  /** In order; the sums of the days are the totals above. */
+  readonly days: readonly DigestDay[]
+  /** Open at the start + raised − closed = open at the end. */
+  readonly flagsOpenAtStart?: number
   readonly flagsRaised: number
   readonly flagsClosed: number
   readonly flagsOpen: readonly { readonly severity: string; readonly count: number }[]
@@ -30,6 +49,8 @@ export interface DigestFigures {
   readonly worstUnits: readonly { readonly code: string; readonly coldDays: number; readonly worstShortfallMin: number }[]
   readonly visitsDone: number
   readonly visitsPlanned: number
+  readonly signedOff?: readonly DigestVisit[]
+  readonly planned?: readonly DigestVisit[]
   readonly feedbackHot: number
   readonly feedbackCold: number
 }
@@ -86,11 +107,10 @@ export async function findLastEdition(db: OrgDb, propertyId: PropertyId, month: 
   return row ? toDigest(row) : null
 }
 
-export async function addDigest(db: OrgTrx, digest: Omit<Digest, 'id'>): Promise<DigestId> {
-  const id = newId<DigestId>()
+export async function addDigest(db: OrgTrx, digest: Digest): Promise<void> {
   await db
     .insertInto('digest', {
-      id,
+      id: digest.id,
       property_id: digest.propertyId,
       month: digest.month,
       edition: digest.edition,
@@ -99,5 +119,4 @@ export async function addDigest(db: OrgTrx, digest: Omit<Digest, 'id'>): Promise
       created_at_ms: digest.createdAtMs,
     })
     .execute()
-  return id
 }

@@ -1,5 +1,6 @@
 /** All plain forms of the product. */
 import { account } from './account.ts'
+import { digest } from './digest.ts'
 import { flag } from './flag.ts'
 import { people } from './people.ts'
 import { property } from './property.ts'
@@ -8,4 +9,4 @@ import { tariff } from './tariff.ts'
 import { tenancy } from './tenancy.ts'
 import { tenant } from './tenant.ts'
 
-export const server = { account, flag, people, property, roster, tariff, tenancy, tenant }
+export const server = { account, digest, flag, people, property, roster, tariff, tenancy, tenant }

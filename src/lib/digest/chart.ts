@@ -1,5 +1,5 @@
-/** Energy by day as an accessible SVG: a bar a day, its on-peak part hatched; the same drawing in the page and, as a picture, in the mail. */
-import type { DigestFigures } from '#db/queries/digest.ts'
+/** A month's two drawings as accessible SVG, a bar a day: energy with its on-peak part hatched, and units warm on time; the first is also the mail's picture. */
+import type { DigestDay, DigestFigures } from '#db/queries/digest.ts'
 import { hatchPath } from '#lib/strip/hatch.ts'
 
 export interface ChartColours {
@@ -7,6 +7,8 @@ export interface ChartColours {
   readonly soft: string
   readonly rule: string
   readonly copper: string
+  readonly verdigris: string
+  readonly crimson: string
   readonly dusk: string
   readonly sheet: string
 }
@@ -15,49 +17,108 @@ export const THEME: ChartColours = {
   soft: 'var(--soft)',
   rule: 'var(--rule)',
   copper: 'var(--copper)',
+  verdigris: 'var(--verdigris)',
+  crimson: 'var(--crimson)',
   dusk: 'var(--dusk)',
   sheet: 'var(--sheet)',
 }
 
 const WIDTH_PX = 640
-const HEIGHT_PX = 180
 const LEFT_PX = 44
 const BOTTOM_PX = 24
 const TOP_PX = 8
+const HATCH_PX = 5
+const ENERGY_HEIGHT_PX = 180
+const UNITS_HEIGHT_PX = 120
 
-export function chartSentence(figures: DigestFigures): string {
-  const busiest = figures.days.reduce(
-    (best, day) => (day.energyKwh > best.energyKwh ? day : best),
-    figures.days[0] ?? { day: '', energyKwh: 0 },
-  )
-  return `Energy by day: ${figures.energyKwh.toFixed(1)} kWh in all, ${figures.peakKwh.toFixed(1)} of it on-peak; most on the ${Number(busiest.day.slice(8))}. with ${busiest.energyKwh.toFixed(1)} kWh.`
+export function chartSentence({ days, energyKwh, peakKwh }: DigestFigures): string {
+  const busiest = days.reduce<DigestDay | null>((best, day) => (best === null || day.energyKwh > best.energyKwh ? day : best), null)
+  const most = busiest ? `; most on the ${Number(busiest.day.slice(8))}. with ${busiest.energyKwh.toFixed(1)} kWh` : ''
+  return `Energy by day: ${energyKwh.toFixed(1)} kWh in all, ${peakKwh.toFixed(1)} of it on-peak${most}.`
 }
+
+export function unitsSentence({ days, unitDaysNeeded, unitDaysWarm }: DigestFigures): string {
+  const cold = days.filter((day) => (day.warmUnits ?? 0) < (day.neededUnits ?? 0)).length
+  return `Units warm on time by day: ${unitDaysWarm} of ${unitDaysNeeded} unit-days; some unit ran cold on ${cold} of ${days.length} days.`
+}
+
+/** Whether the edition accounts for units by day. */
+export const hasUnits = ({ days }: DigestFigures): boolean => days.some((day) => day.neededUnits !== undefined)
 
 export function energyChartSvg(figures: DigestFigures, colours: ChartColours): string {
-  const plotHeightPx = HEIGHT_PX - BOTTOM_PX - TOP_PX
   const highest = Math.max(1, ...figures.days.map((day) => day.energyKwh))
-  const slotPx = (WIDTH_PX - LEFT_PX) / Math.max(1, figures.days.length)
-  const y = (energyKwh: number) => TOP_PX + plotHeightPx * (1 - energyKwh / highest)
+  const frame = frameOf({ heightPx: ENERGY_HEIGHT_PX, highest, days: figures.days, colours })
   const bars = figures.days.map((day, index) => {
-    const xPx = LEFT_PX + index * slotPx + 1
-    const widthPx = Math.max(1, slotPx - 2)
-    const bar = `<rect x="${n(xPx)}" y="${n(y(day.energyKwh))}" width="${n(widthPx)}" height="${n(y(0) - y(day.energyKwh))}" fill="${colours.copper}"/>`
-    const peakPx = y(0) - y(day.peakKwh)
-    const peak =
-      peakPx < 1
-        ? ''
-        : `<rect x="${n(xPx)}" y="${n(y(day.peakKwh))}" width="${n(widthPx)}" height="${n(peakPx)}" fill="${colours.sheet}"/><path d="${hatchPath({ xPx, yPx: y(day.peakKwh), widthPx, heightPx: peakPx }, 5)}" stroke="${colours.dusk}" stroke-width="1.5" fill="none"/>`
-    const label =
-      (index + 1) % 5 === 0 || index === 0
-        ? `<text x="${n(xPx + widthPx / 2)}" y="${HEIGHT_PX - 6}" text-anchor="middle" font-size="12" fill="${colours.soft}">${index + 1}</text>`
-        : ''
-    return bar + peak + label
+    const bar = frame.bar(index, 0, day.energyKwh)
+    const peak = frame.bar(index, 0, day.peakKwh)
+    return solid(bar, colours.copper) + (peak.heightPx < 1 ? '' : solid(peak, colours.sheet) + hatched(peak, colours.dusk))
   })
+  return frame.svg(chartSentence(figures), bars)
+}
+
+export function unitsChartSvg(figures: DigestFigures, colours: ChartColours): string {
+  const highest = Math.max(1, ...figures.days.map((day) => day.neededUnits ?? 0))
+  const frame = frameOf({ heightPx: UNITS_HEIGHT_PX, highest, days: figures.days, colours })
+  const bars = figures.days.map((day, index) => {
+    const { warmUnits = 0, neededUnits = 0 } = day
+    const cold = frame.bar(index, warmUnits, neededUnits)
+    return solid(frame.bar(index, 0, warmUnits), colours.verdigris) + (neededUnits > warmUnits ? outlined(cold, colours.crimson) : '')
+  })
+  return frame.svg(unitsSentence(figures), bars)
+}
+
+interface Box {
+  readonly xPx: number
+  readonly yPx: number
+  readonly widthPx: number
+  readonly heightPx: number
+}
+interface FrameCase {
+  readonly heightPx: number
+  readonly highest: number
+  readonly days: readonly DigestDay[]
+  readonly colours: ChartColours
+}
+
+/** The axes that both drawings stand on: figures on the left, days of the month below. */
+function frameOf({ heightPx, highest, days, colours }: FrameCase) {
+  const plotPx = heightPx - BOTTOM_PX - TOP_PX
+  const slotPx = (WIDTH_PX - LEFT_PX) / Math.max(1, days.length)
+  const y = (value: number) => TOP_PX + plotPx * (1 - value / highest)
+  const text = (xPx: number, yPx: number, anchor: 'middle' | 'end', words: string) =>
+    `<text x="${n(xPx)}" y="${n(yPx)}" text-anchor="${anchor}" font-size="12" fill="${colours.soft}">${words}</text>`
   const marks = [0, highest / 2, highest].map(
     (value) =>
-      `<line x1="${LEFT_PX}" x2="${WIDTH_PX}" y1="${n(y(value))}" y2="${n(y(value))}" stroke="${colours.rule}"/><text x="${LEFT_PX - 6}" y="${n(y(value) + 4)}" text-anchor="end" font-size="12" fill="${colours.soft}">${Math.round(value)}</text>`,
+      `<line x1="${LEFT_PX}" x2="${WIDTH_PX}" y1="${n(y(value))}" y2="${n(y(value))}" stroke="${colours.rule}"/>` +
+      text(LEFT_PX - 6, y(value) + 4, 'end', n(value)),
   )
-  return `<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 ${WIDTH_PX} ${HEIGHT_PX}" width="${WIDTH_PX}" height="${HEIGHT_PX}" role="img" aria-label="${chartSentence(figures)}" font-family="Lato, Arial, sans-serif">${marks.join('')}${bars.join('')}</svg>`
+  const labels = days.map((day, index) =>
+    index === 0 || (index + 1) % 5 === 0
+      ? text(LEFT_PX + (index + 0.5) * slotPx, heightPx - 6, 'middle', String(Number(day.day.slice(8))))
+      : '',
+  )
+  return {
+    bar: (index: number, from: number, to: number): Box => ({
+      xPx: LEFT_PX + index * slotPx + 1,
+      yPx: y(to),
+      widthPx: Math.max(1, slotPx - 2),
+      heightPx: y(from) - y(to),
+    }),
+    svg: (sentence: string, bars: readonly string[]): string =>
+      `<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 ${WIDTH_PX} ${heightPx}" width="${WIDTH_PX}" height="${heightPx}" role="img" aria-label="${sentence}" font-family="Lato, Arial, sans-serif">${[...marks, ...bars, ...labels].join('')}</svg>`,
+  }
 }
+
+const rect = ({ xPx, yPx, widthPx, heightPx }: Box, paint: string): string =>
+  `<rect x="${n(xPx)}" y="${n(yPx)}" width="${n(widthPx)}" height="${n(heightPx)}" ${paint}/>`
+const solid = (box: Box, colour: string): string => rect(box, `fill="${colour}"`)
+/** A heavy outline: short, told by more than its colour. */
+const outlined = ({ xPx, yPx, widthPx, heightPx }: Box, colour: string): string =>
+  rect(
+    { xPx: xPx + 1, yPx: yPx + 1, widthPx: Math.max(1, widthPx - 2), heightPx: Math.max(1, heightPx - 2) },
+    `fill="none" stroke="${colour}" stroke-width="2"`,
+  )
+const hatched = (box: Box, colour: string): string =>
+  `<path d="${hatchPath(box, HATCH_PX)}" stroke="${colour}" stroke-width="1.5" fill="none"/>`
 
 const n = (value: number): string => String(Math.round(value * 10) / 10)

@@ -7,35 +7,46 @@ import { type ChartColours, chartSentence, energyChartSvg } from './chart.ts'
 import { digestView, monthName } from './view.ts'
 
 /** Mail has no custom properties: the zinc set as literals. */
-const ZINC: ChartColours = { ink: '#12262e', soft: '#4d6068', rule: '#c1ccd1', copper: '#a8481f', dusk: '#56468f', sheet: '#f7f9fa' }
+const ZINC: ChartColours = {
+  ink: '#12262e',
+  soft: '#4d6068',
+  rule: '#c1ccd1',
+  copper: '#a8481f',
+  verdigris: '#146b5c',
+  crimson: '#a3123a',
+  dusk: '#56468f',
+  sheet: '#f7f9fa',
+}
 const CHART_PX = 512
 const DENSITY = 144
 
 export async function digestLetter({
   figures,
   month,
-  propertyName,
   reason,
+  path,
 }: {
   readonly figures: DigestFigures
   readonly month: string
-  readonly propertyName: string
   readonly reason: string | null
+  /** Of the digest's page. */
+  readonly path: string
 }) {
   const view = digestView(figures, month)
+  const title = `${figures.propertyName}, ${monthName(month)}: ${view.headline}`
   const png = await sharp(Buffer.from(energyChartSvg(figures, ZINC)), { density: DENSITY })
     .png()
     .toBuffer()
   const { text, html } = letter({
-    title: `${propertyName}, ${monthName(month)}: ${view.headline}`,
+    title,
     paragraphs: [...(reason ? [`A new edition, because: ${reason}`] : []), view.readiness, view.saving, ...view.paragraphs],
     figures: view.lines,
     image: { contentId: 'energy-by-day', alt: chartSentence(figures), widthPx: CHART_PX },
-    actions: [{ label: 'Past digests', url: `${processConfig().baseUrl}/organisations` }],
+    actions: [{ label: 'Open the page', url: `${processConfig().baseUrl}${path}` }],
     footer: ['You get this page once a month because you own this building.', 'Dwellhour screens; it does not certify.'],
   })
   return {
-    subject: `${propertyName}, ${monthName(month)}: ${view.headline}`,
+    subject: title,
     text,
     html,
     attachments: [{ contentId: 'energy-by-day', filename: 'energy.png', contentType: 'image/png', base64: png.toString('base64') }],

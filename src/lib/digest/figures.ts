@@ -1,42 +1,50 @@
 /** A month's figures from its evaluations: sums whose parts add up, unit codes instead of people. */
 import type { Evaluation } from '#db/queries/evaluation.ts'
-import type { DigestFigures } from '#db/queries/digest.ts'
+import type { DigestFigures, DigestVisit } from '#db/queries/digest.ts'
 import type { Flag } from '#db/queries/flag.ts'
+import type { Visit } from '#db/queries/visit.ts'
 import type { UnitId } from '#db/ids.ts'
-import type { MsInterval } from '#lib/core/time/types.ts'
-import { daysOfMonth } from '#lib/core/time/civil.ts'
+import type { MsInterval, Zone } from '#lib/core/time/types.ts'
+import { civilOf, daysOfMonth } from '#lib/core/time/civil.ts'
 
 const WORST_UNITS = 5
 
 export interface MonthCase {
   readonly month: string
   readonly interval: MsInterval
+  readonly zone: Zone
   readonly propertyName: string
   readonly currency: string
   readonly codes: ReadonlyMap<UnitId, string>
   readonly evaluations: readonly Evaluation[]
-  /** Flags open at the month's end, raised or closed within it. */
-  readonly flags: readonly Flag[]
-  readonly visits: readonly { readonly state: 'planned' | 'done' | 'cancelled'; readonly doneAtMs: number | null }[]
+  /** Those open at some time of the month. */
+  readonly flags: readonly Pick<Flag, 'severity' | 'openedAtMs' | 'closed'>[]
+  readonly visits: readonly Pick<Visit, 'state' | 'doneAtMs' | 'unitCode' | 'dueDay'>[]
   readonly feedback: { readonly hot: number; readonly cold: number }
 }
 
 export function monthFigures(one: MonthCase): DigestFigures {
-  const { month, interval, evaluations, flags, visits } = one
-  const within = (atMs: number | null | undefined): boolean =>
-    atMs !== null && atMs !== undefined && atMs >= interval.startsAtMs && atMs < interval.endsAtMs
-  const needed = evaluations.filter(
-    (evaluation) => evaluation.status === 'ready' || evaluation.status === 'short' || evaluation.status === 'impossible',
-  )
+  const { month, interval, zone, evaluations, flags, visits } = one
+  const within = (atMs: number | null): boolean => atMs !== null && atMs >= interval.startsAtMs && atMs < interval.endsAtMs
+  const needed = evaluations.filter(({ status }) => status === 'ready' || status === 'short' || status === 'impossible')
+  const warm = needed.filter(({ status }) => status === 'ready')
   const computed = evaluations.filter((evaluation) => evaluation.status !== 'unknown')
   const days = daysOfMonth(month).map((day) => {
     const ofDay = computed.filter((evaluation) => evaluation.day === day)
-    return { day, energyKwh: round(sum(ofDay, (row) => row.energyInKwh)), peakKwh: round(sum(ofDay, (row) => row.peakKwh)) }
+    return {
+      day,
+      energyKwh: round(sum(ofDay, (row) => row.energyInKwh)),
+      peakKwh: round(sum(ofDay, (row) => row.peakKwh)),
+      neededUnits: needed.filter((evaluation) => evaluation.day === day).length,
+      warmUnits: warm.filter((evaluation) => evaluation.day === day).length,
+    }
   })
-  const warm = needed.filter((evaluation) => evaluation.status === 'ready')
   const costs = computed.map((row) => row.costMinor)
   const baselines = computed.map((row) => row.baselineCostMinor)
-  const openAtEnd = flags.filter((flag) => flag.openedAtMs < interval.endsAtMs && (!flag.closed || flag.closed.atMs >= interval.endsAtMs))
+  const openAt = (atMs: number) => flags.filter((flag) => flag.openedAtMs < atMs && (!flag.closed || flag.closed.atMs >= atMs))
+  const openAtEnd = openAt(interval.endsAtMs)
+  const done = visits.filter((visit) => visit.state === 'done' && within(visit.doneAtMs))
+  const planned = visits.filter((visit) => visit.state === 'planned')
   return {
     propertyName: one.propertyName,
     currency: one.currency,
@@ -56,19 +64,30 @@ export function monthFigures(one: MonthCase): DigestFigures {
       ? null
       : sum(warm, (row) => (row.baselineCostMinor ?? 0) - (row.costMinor ?? 0)),
     days,
+    flagsOpenAtStart: openAt(interval.startsAtMs).length,
     flagsRaised: flags.filter((flag) => within(flag.openedAtMs)).length,
-    flagsClosed: flags.filter((flag) => within(flag.closed?.atMs)).length,
+    flagsClosed: flags.filter((flag) => within(flag.closed?.atMs ?? null)).length,
     flagsOpen: (['dangerous', 'cold', 'attention'] as const).map((severity) => ({
       severity,
       count: openAtEnd.filter((flag) => flag.severity === severity).length,
     })),
     worstUnits: worst(needed, one.codes),
-    visitsDone: visits.filter((visit) => visit.state === 'done' && within(visit.doneAtMs)).length,
-    visitsPlanned: visits.filter((visit) => visit.state === 'planned').length,
+    visitsDone: done.length,
+    visitsPlanned: planned.length,
+    signedOff: visitList(done, (visit) => (visit.doneAtMs === null ? null : civilOf(visit.doneAtMs, zone).day)),
+    planned: visitList(planned, (visit) => visit.dueDay),
     feedbackHot: one.feedback.hot,
     feedbackCold: one.feedback.cold,
   }
 }
+
+const visitList = <T extends { readonly unitCode: string }>(
+  visits: readonly T[],
+  dayOf: (visit: T) => string | null,
+): readonly DigestVisit[] =>
+  visits
+    .map((visit) => ({ code: visit.unitCode, day: dayOf(visit) }))
+    .sort((one, other) => (one.day ?? '9999').localeCompare(other.day ?? '9999') || one.code.localeCompare(other.code))
 
 function worst(needed: readonly Evaluation[], codes: ReadonlyMap<UnitId, string>): DigestFigures['worstUnits'] {
   const cold = new Map<UnitId, { coldDays: number; worstShortfallMin: number }>()

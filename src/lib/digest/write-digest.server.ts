@@ -2,8 +2,9 @@
  * Writes a month's digest of a property and mails it to its owners, in one transaction. A second call for the same month writes
  * nothing unless a reason for a new edition is given: past editions never change. Needs no role: the job's, or a landlord's correction.
  */
-import type { PropertyId } from '#db/ids.ts'
+import { type DigestId, newId, type PropertyId } from '#db/ids.ts'
 import { inTransaction, type OrgDb, type OrgTrx } from '#db/org-db.ts'
+import { findOrganisationSlug } from '#db/queries/address.ts'
 import { addAudit } from '#db/queries/audit.ts'
 import { addDigest, type Digest, type DigestFigures, findLastEdition } from '#db/queries/digest.ts'
 import { listEvaluations } from '#db/queries/evaluation.ts'
@@ -39,11 +40,14 @@ export async function writeDigest(db: OrgDb, { propertyId, month, nowMs, reason 
   const figures = await figuresOf(db, property, month)
   // A month before anything was evaluated has nothing to account for.
   if (figures.daysCovered === 0) return { written: 0, mailed: 0 }
-  const letter = await digestLetter({ figures, month, propertyName: property.name, reason: reason ?? null })
+  const id = newId<DigestId>()
+  const slug = await findOrganisationSlug(db, propertyId)
+  const letter = await digestLetter({ figures, month, reason: reason ?? null, path: `/o/${slug}/digests/${id}` })
   return inTransaction(db, async (trx) => {
     const last = await findLastEdition(trx, propertyId, month)
     if (last && !reason) return { written: 0, mailed: 0 }
-    const digest: Omit<Digest, 'id'> = {
+    const digest: Digest = {
+      id,
       propertyId,
       month,
       edition: (last?.edition ?? 0) + 1,
@@ -51,7 +55,7 @@ export async function writeDigest(db: OrgDb, { propertyId, month, nowMs, reason 
       reason: reason ?? null,
       createdAtMs: nowMs,
     }
-    const id = await addDigest(trx, digest)
+    await addDigest(trx, digest)
     await addAudit(trx, {
       atMs: nowMs,
       action: 'write',
@@ -69,6 +73,7 @@ async function figuresOf(db: OrgDb, property: Property, month: string): Promise<
   return monthFigures({
     month,
     interval,
+    zone: property.zone,
     propertyName: property.name,
     currency: property.currency,
     codes: new Map((await listUnits(db, property.id)).map((unit) => [unit.id, unit.code])),
@@ -80,7 +85,7 @@ async function figuresOf(db: OrgDb, property: Property, month: string): Promise<
 }
 
 interface MailOwners {
-  readonly digest: Omit<Digest, 'id'>
+  readonly digest: Digest
   readonly letter: Awaited<ReturnType<typeof digestLetter>>
   readonly nowMs: number
 }

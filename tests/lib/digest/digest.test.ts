@@ -1,11 +1,8 @@
 /** The digest: parts that add up, months of every length, frozen editions, mail to owners and nobody's name in it. */
 import { beforeEach, describe, expect, it } from 'vitest'
 import { findLastEdition } from '#db/queries/digest.ts'
-import { monthBounds } from '#lib/core/time/civil.ts'
-import { energyChartSvg, THEME } from '#lib/digest/chart.ts'
-import { monthFigures } from '#lib/digest/figures.ts'
+import { correctDigest } from '#lib/digest/correct-digest.server.ts'
 import { loadDigest, loadDigests } from '#lib/digest/load-digests.server.ts'
-import { digestView } from '#lib/digest/view.ts'
 import { writeDigest } from '#lib/digest/write-digest.server.ts'
 import { NOW_MS } from '../../support/factories.ts'
 import { COLD, makeWorld, type World } from '../../support/world.ts'
@@ -37,6 +34,18 @@ describe('writeDigest', () => {
     // What the cold unit did not get is no saving: less is claimed than the plain difference.
     expect(figures?.savedKwh).toBeLessThan((figures?.baselineEnergyKwh ?? 0) - (figures?.energyKwh ?? 0))
   })
+  it('links to its own page, which its owner opens', async () => {
+    await write()
+    const [mail] = await world.db.selectFrom('message').where('kind', '=', 'digest').selectAll().execute()
+    const id = (await edition())?.id
+    const { slug } = await world.db
+      .selectFrom('organisation')
+      .where('id', '=', world.landlord.scope.organisationId)
+      .select('slug')
+      .executeTakeFirstOrThrow()
+    expect(mail?.text).toContain(`/o/${slug}/digests/${id}`)
+    expect((await loadDigest(world.owner, id)).mayCorrect).toBe(false)
+  })
   it('names the cold unit by its code and nobody by name', async () => {
     await write()
     const [mail] = await world.db.selectFrom('message').where('kind', '=', 'digest').selectAll().execute()
@@ -55,14 +64,15 @@ describe('writeDigest', () => {
     await write()
     const figures = (await edition())?.figures
     expect(figures?.flagsRaised).toBe(0)
-    expect((figures?.flagsOpen ?? []).reduce((sum, flag) => sum + flag.count, 0)).toBeGreaterThan(0)
+    expect(figures?.flagsOpenAtStart).toBeGreaterThan(0)
+    expect((figures?.flagsOpen ?? []).reduce((sum, flag) => sum + flag.count, 0)).toBe(figures?.flagsOpenAtStart)
   })
   it('makes a correction a new edition that says why, and leaves the first as it was', async () => {
     await write()
     const first = await edition()
     expect(await write('A meter was read late')).toEqual({ written: 1, mailed: 1 })
     expect(await edition()).toMatchObject({ edition: 2, reason: 'A meter was read late' })
-    expect(await loadDigest(world.landlord, first?.id)).toEqual(first)
+    expect((await loadDigest(world.landlord, first?.id)).digest).toEqual(first)
     await expect(world.db.updateTable('digest').set({ reason: 'rewritten' }).execute()).rejects.toThrow(/never changes/)
   })
   it('writes nothing for a month in which nothing was evaluated', async () => {
@@ -76,6 +86,29 @@ describe('writeDigest', () => {
   })
 })
 
+describe('correctDigest', () => {
+  it('writes the month again for the landlord, with the reason, and points from the old edition to the new', async () => {
+    await write()
+    const first = await edition()
+    const second = await correctDigest(world.landlord, {
+      digestId: first?.id,
+      input: { reason: 'Two units were missing' },
+      nowMs: NOW_MS + 1,
+    })
+    expect(await loadDigest(world.owner, first?.id)).toMatchObject({ newer: { id: second, edition: 2 } })
+    expect((await loadDigest(world.owner, second)).digest.reason).toBe('Two units were missing')
+  })
+  it('is forbidden to owners, needs a reason, and is not found for another organisation', async () => {
+    await write()
+    const digestId = (await edition())?.id
+    const correct = (db: typeof world.owner, reason: string) => correctDigest(db, { digestId, input: { reason }, nowMs: NOW_MS + 1 })
+    await expect(correct(world.owner, 'why not')).rejects.toMatchObject({ code: 'forbidden' })
+    await expect(correct(world.landlord, ' ')).rejects.toMatchObject({ code: 'invalid' })
+    await expect(correct(world.stranger, 'why not')).rejects.toMatchObject({ code: 'not-found' })
+    expect((await edition())?.edition).toBe(1)
+  })
+})
+
 describe('loadDigests', () => {
   it('shows an owner their own, a tenant none, another organisation nothing', async () => {
     await write()
@@ -83,39 +116,5 @@ describe('loadDigests', () => {
     await expect(loadDigests(world.tenant)).rejects.toMatchObject({ code: 'forbidden' })
     expect(await loadDigests(world.stranger)).toEqual([])
     await expect(loadDigest(world.stranger, (await edition())?.id)).rejects.toMatchObject({ code: 'not-found' })
-  })
-})
-
-describe('monthFigures', () => {
-  it.each([
-    ['2028-02', 29, 696],
-    ['2026-03', 31, 743],
-    ['2026-10', 31, 745],
-    ['2026-11', 30, 720],
-  ])('covers %s: %d days, %d hours in London', (month, days, hours) => {
-    const interval = monthBounds(month, 'Europe/London')
-    expect((interval.endsAtMs - interval.startsAtMs) / 3_600_000).toBe(hours)
-    const figures = monthFigures({
-      month,
-      interval,
-      propertyName: 'P',
-      currency: 'GBP',
-      codes: new Map(),
-      evaluations: [],
-      flags: [],
-      visits: [],
-      feedback: { hot: 0, cold: 0 },
-    })
-    expect(figures.days).toHaveLength(days)
-    expect(figures.costMinor).toBeNull()
-    expect(digestView(figures, month).readiness).toBe('No unit needed hot water this month.')
-  })
-})
-
-describe('energyChartSvg', () => {
-  it('says in words what it draws', async () => {
-    await write()
-    const figures = (await edition())?.figures
-    expect(figures && energyChartSvg(figures, THEME)).toMatch(/role="img" aria-label="Energy by day: [\d.]+ kWh in all/)
   })
 })
