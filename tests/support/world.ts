@@ -51,7 +51,7 @@ export async function makeWorld(): Promise<World> {
   return { db, landlord, electrician, owner, tenant, stranger: await makeLandlord(db), building }
 }
 
-export function unitOf({ building }: World, code: string) {
+export function unitOf({ building }: Pick<World, 'building'>, code: string) {
   const unit = building.units.get(code)
   if (!unit?.tenancyId) throw new Error(`${code} has no tenant`)
   return { unitId: unit.unitId, tenancyId: unit.tenancyId }
