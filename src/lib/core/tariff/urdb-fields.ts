@@ -61,7 +61,7 @@ export function chargeOf(
   const amount = newer ? record[names.amount] : record[names.monthly]
   if (!isNumber(amount) || amount === 0) return null
   const units = newer ? (record[names.units] ?? '$/month') : '$/month'
-  const per = ({ '$/month': 'month', '$/day': 'day', '$/year': 'year' } as const)[String(units)]
+  const per = typeof units === 'string' ? ({ '$/month': 'month', '$/day': 'day', '$/year': 'year' } as const)[units] : undefined
   if (!per) refuse(names.units, `Units ${JSON.stringify(units)} are not known; $/month, $/day and $/year are.`)
   if (amount < 0) refuse(newer ? names.amount : names.monthly, 'A charge below zero is not billed here.')
   return { amount, per: per ?? 'month' }
