@@ -1,71 +1,50 @@
-/** Growth range and pasteurisation from a settled day's curve. It shows which guidance is followed and calls nothing compliant. */
+/**
+ * Growth range and pasteurisation from the coldest node of a simulated week (or a day that repeats). It shows which guidance is
+ * followed and calls nothing compliant: biofilm, sediment and water below the lowest element are outside the model.
+ */
+import { MIN_PER_HOUR } from '../units.ts'
+import { GROWTH_RANGE_C, GROWTH_RANGE_SOURCE, HYGIENE_POLICIES, TEMPERATURE_MARGIN_K } from './policies.ts'
 import type { HygieneFinding, HygienePolicyId } from './types.ts'
 
-/** Stored water between these can grow Legionella (HSE, landlord guidance and HSG274). */
-export const GROWTH_RANGE_C = { from: 20, to: 45 } as const
+export { GROWTH_RANGE_C, HYGIENE_POLICIES } from './policies.ts'
 
-export interface HygienePolicy {
-  readonly name: string
-  readonly temperatureC: number
-  readonly holdMin: number
-  readonly source: string
-}
-/** Published guidance differs and is not averaged: a property follows one. */
-export const HYGIENE_POLICIES: Readonly<Record<HygienePolicyId, HygienePolicy>> = {
-  'store-60-daily-hour': {
-    name: 'Whole tank at 60 °C for an hour each day',
-    temperatureC: 60,
-    holdMin: 60,
-    source: 'HSE technical guidance to ACoP L8 (cited by WRAS)',
-  },
-  'store-60': { name: 'Stored at 60 °C', temperatureC: 60, holdMin: 0, source: 'HSE HSG274 part 2; Canadian NPC 2.6.1.12' },
-  'scald-49': {
-    name: '49 °C against scalds',
-    temperatureC: 49,
-    holdMin: 0,
-    source: 'CPSC and US DOE advice of 120 °F; does not control Legionella',
-  },
-}
-/** A set point of 60 °C reads as 60 within the thermostat's accuracy. */
-const TEMPERATURE_MARGIN_K = 0.5
-
-export interface HygieneDay {
+/** Regular samples of the coldest node, the last one now; taken as a cycle that repeats. */
+export interface HygieneSamples {
   readonly coldestC: readonly number[]
   readonly sampleMin: number
   readonly setPointC: number
   readonly policy: HygienePolicyId
 }
 
-/** The day is taken as repeating itself, as the settled state does. */
-export function assessHygiene({ coldestC, sampleMin, setPointC, policy }: HygieneDay): HygieneFinding {
+export function assessHygiene({ coldestC, sampleMin, setPointC, policy }: HygieneSamples): HygieneFinding {
   const rule = HYGIENE_POLICIES[policy]
+  const neededC = rule.temperatureC - TEMPERATURE_MARGIN_K
   const growing = coldestC.filter((temperatureC) => temperatureC >= GROWTH_RANGE_C.from && temperatureC <= GROWTH_RANGE_C.to).length
-  const hot = coldestC.map((temperatureC) => temperatureC >= rule.temperatureC - TEMPERATURE_MARGIN_K)
-  const longestMin = longestStretch(hot) * sampleMin
-  const lastHot = hot.lastIndexOf(true)
-  const reached = lastHot >= 0 && longestMin >= rule.holdMin
-  const forbidden = setPointC < rule.temperatureC - TEMPERATURE_MARGIN_K
+  const hot = coldestC.map((temperatureC) => temperatureC >= neededC)
+  const samplesAgo = samplesSinceHold(hot, Math.max(1, Math.ceil(rule.holdMin / sampleMin)))
   return {
-    sincePasteurisedH: reached ? ((coldestC.length - 1 - lastHot) * sampleMin) / 60 : null,
+    sincePasteurisedH: samplesAgo === null ? null : (samplesAgo * sampleMin) / MIN_PER_HOUR,
     growthRangeFraction: coldestC.length === 0 ? 0 : growing / coldestC.length,
-    growthRangeHours: (growing * sampleMin) / 60,
-    reason: reached
-      ? `The coldest part of the tank reaches ${rule.temperatureC} °C every day.`
-      : forbidden
-        ? `The thermostat is set to ${setPointC} °C, below the ${rule.temperatureC} °C of the guidance followed.`
-        : `The coldest part of the tank does not reach ${rule.temperatureC} °C for ${rule.holdMin} min with these runs.`,
-    sources: ['HSE: Legionella grows between 20 and 45 °C', rule.source],
+    growthRangeHours: (growing * sampleMin) / MIN_PER_HOUR,
+    reason:
+      samplesAgo !== null
+        ? `The coldest part of the tank reaches ${rule.temperatureC} °C${rule.holdMin > 0 ? ` for ${rule.holdMin} min` : ''}.`
+        : setPointC < neededC
+          ? `The thermostat is set to ${setPointC} °C, below the ${rule.temperatureC} °C of the guidance followed.`
+          : `The coldest part of the tank does not reach ${rule.temperatureC} °C${rule.holdMin > 0 ? ` for ${rule.holdMin} min` : ''} with these runs.`,
+    sources: [GROWTH_RANGE_SOURCE, rule.source],
   }
 }
 
-/** Longest run of `true`, the day taken as a circle. */
-function longestStretch(flags: readonly boolean[]): number {
-  if (flags.every(Boolean)) return flags.length
-  let longest = 0
-  let current = 0
-  for (const flag of [...flags, ...flags]) {
-    current = flag ? current + 1 : 0
-    longest = Math.max(longest, current)
+/** Samples since the end of the latest stretch that lasted `hold`, the samples taken as a circle; `null` when there is none. */
+function samplesSinceHold(hot: readonly boolean[], hold: number): number | null {
+  const count = hot.length
+  if (count === 0 || hold > count) return null
+  if (hot.every(Boolean)) return 0
+  for (let ago = 0; ago < count; ago++) {
+    let stretch = 0
+    while (stretch < hold && hot[(((count - 1 - ago - stretch) % count) + count) % count]) stretch++
+    if (stretch === hold) return ago
   }
-  return longest
+  return null
 }
