@@ -10,6 +10,7 @@ export default defineConfig({
     include: ['tests/**/*.test.ts'],
     exclude: ['tests/e2e/**'],
     environment: 'node',
+    setupFiles: ['tests/support/property-seed.ts'],
     testTimeout: 20_000,
   },
 })
