@@ -1,7 +1,7 @@
 /** Readiness by law and by published rules of thumb: what is ready, what is short, and by how much. */
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { assessReadiness } from '#lib/core/tank/readiness.ts'
+import { assessReadiness } from '#lib/core/tank/week.ts'
 import type { ShowerNeed, TankSpec, UnitDay } from '#lib/core/tank/types.ts'
 
 const TANK: TankSpec = {

@@ -1,7 +1,7 @@
-/** The baseline: the same tank and the same draws with the power always on, in its periodic state. */
+/** The baseline: the same tank and the same draws with the power always on, each day from what the days before it leave. */
 import type { MinuteInterval } from '../time/types.ts'
 import { kwhFromJ } from '../units.ts'
-import { cycleOf, run, settledState } from './cycle.ts'
+import { chainOf, settle } from './chain.ts'
 import type { UnitDay } from './types.ts'
 
 export interface AlwaysOn {
@@ -10,13 +10,11 @@ export interface AlwaysOn {
   readonly heating: readonly (MinuteInterval & { readonly powerW: number })[]
 }
 
-export function alwaysOn(day: Omit<UnitDay, 'runs'>): AlwaysOn {
-  const cycle = cycleOf({ ...day, runs: { kind: 'clocked', onIntervals: [], uncertaintyMin: 0 } })
-  const on = [{ startMin: cycle.startMin, endMin: cycle.endMin }]
-  const simulation = run(cycle, settledState(cycle, on), on)
-  return {
+export function alwaysOn(days: readonly UnitDay[]): readonly AlwaysOn[] {
+  const course = settle(chainOf(days), (cycle) => [{ startMin: cycle.startMin, endMin: cycle.endMin }])
+  return course.simulations.map((simulation) => ({
     energyInKwh: kwhFromJ(simulation.energyInJ),
     energyDeliveredKwh: kwhFromJ(simulation.energyDeliveredJ),
     heating: simulation.heating,
-  }
+  }))
 }

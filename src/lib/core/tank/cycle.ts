@@ -1,6 +1,6 @@
 /**
- * One day of a tank as a cycle: it begins right after yesterday's last need and ends with today's last, so that every run of
- * today lies inside it; repeated until it repeats itself it is the periodic state.
+ * One day of a tank as a cycle: it begins right after the last need before it and ends with today's last, so that every run of
+ * today lies inside it.
  */
 import type { MinuteInterval } from '../time/types.ts'
 import { MIN_PER_DAY } from '../units.ts'
@@ -12,6 +12,7 @@ import type { ShowerNeed, UnitDay } from './types.ts'
 export interface Cycle extends MinuteInterval {
   readonly tank: TankModel
   readonly needs: readonly ShowerNeed[]
+  readonly draws: readonly MixedDraw[]
   readonly start: UnitDay['start']
 }
 
@@ -25,12 +26,21 @@ export const drawsOf = (need: ShowerNeed): readonly MixedDraw[] =>
 export const needEndMin = (need: ShowerNeed): number => need.readyByMin + need.count * need.minutesEach + (need.count - 1) * need.gapMin
 export const minutesWanted = (need: ShowerNeed): number => need.count * need.minutesEach
 
-export function cycleOf(day: UnitDay): Cycle {
+/** Minute at which a day's cycle ends: with its last need, or at midnight. */
+export const cycleEndMin = ({ needs }: UnitDay): number => (needs.length === 0 ? MIN_PER_DAY : Math.max(...needs.map(needEndMin)))
+
+/** A day after one that ended at a minute of its own count. */
+export function cycleOf(day: UnitDay, beforeEndMin: number): Cycle {
   const needs = [...day.needs].sort((one, other) => one.readyByMin - other.readyByMin)
-  const last = needs.at(-1)
-  const endMin = last ? needEndMin(last) : MIN_PER_DAY
   const tank = tankModel(day.tank, { supplyVoltageV: day.supplyVoltageV, inletC: day.inletC })
-  return { tank, needs, startMin: endMin - MIN_PER_DAY, endMin, start: day.start }
+  return {
+    tank,
+    needs,
+    draws: needs.flatMap(drawsOf),
+    startMin: beforeEndMin - MIN_PER_DAY,
+    endMin: cycleEndMin(day),
+    start: day.start,
+  }
 }
 
 export const firstState = ({ start, tank }: Cycle): TankState =>
@@ -45,15 +55,7 @@ export const earliestMin = (cycle: Cycle, index: number): number => {
 }
 
 export const run = (cycle: Cycle, state: TankState, on: readonly MinuteInterval[]): Simulation =>
-  simulate(cycle.tank, state, { startMin: cycle.startMin, endMin: cycle.endMin, on, draws: cycle.needs.flatMap(drawsOf) })
-
-/** Runs that last beyond the cycle's end are still on when it begins again: their tail, a day earlier. */
-export const withTail = (cycle: Cycle, on: readonly MinuteInterval[]): readonly MinuteInterval[] => [
-  ...on
-    .filter((interval) => interval.endMin > cycle.endMin)
-    .map((interval) => ({ startMin: cycle.startMin, endMin: interval.endMin - MIN_PER_DAY })),
-  ...on,
-]
+  simulate(cycle.tank, state, { startMin: cycle.startMin, endMin: cycle.endMin, on, draws: cycle.draws })
 
 /** Minutes served of each need in a simulation of the whole cycle. */
 export function servedByNeed(cycle: Cycle, simulation: Simulation): readonly number[] {
@@ -65,19 +67,9 @@ export function servedByNeed(cycle: Cycle, simulation: Simulation): readonly num
   })
 }
 
-const PERIODIC_TOLERANCE_K = 0.05
-/** A day's draw renews most of a tank, so a week forgets its start; tanks hardly used need a few days more. */
-const PERIODIC_LIMIT_DAYS = 14
+/** Served to the second counts as served. */
+export const servesAll = (need: ShowerNeed, servedMin: number): boolean => servedMin >= minutesWanted(need) - 1 / 60
 
-/** State at the cycle's start once the day has been repeated until it repeats itself; the given start for a day that is told it. */
-export function settledState(cycle: Cycle, on: readonly MinuteInterval[]): TankState {
-  let state = firstState(cycle)
-  if (cycle.start.kind !== 'periodic') return state
-  for (let day = 0; day < PERIODIC_LIMIT_DAYS; day++) {
-    const next = run(cycle, state, on).end
-    const change = Math.max(...next.nodesC.map((temperatureC, node) => Math.abs(temperatureC - (state.nodesC[node] ?? 0))))
-    state = next
-    if (change < PERIODIC_TOLERANCE_K) break
-  }
-  return state
-}
+/** Largest difference of two states' nodes. */
+export const changeK = (one: TankState, other: TankState): number =>
+  one.nodesC.reduce((most, temperatureC, node) => Math.max(most, Math.abs(temperatureC - (other.nodesC[node] ?? 0))), 0)

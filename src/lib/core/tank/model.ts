@@ -1,5 +1,12 @@
 /** A tank made ready for stepping: node capacities, losses, conduction, elements at their heights and at the real voltage. */
-import { ACTUAL_VOLUME_FRACTION, CONDUCTIVITY_W_PER_M_K, HEAT_CAPACITY_J_PER_L_K, HEIGHT_TO_DIAMETER, NODES } from './defaults.ts'
+import {
+  ACTUAL_VOLUME_FRACTION,
+  CONDUCTIVITY_W_PER_M_K,
+  HEAT_CAPACITY_J_PER_L_K,
+  HEIGHT_TO_DIAMETER,
+  NODES,
+  SHARE_BELOW_LOWER_FRACTION,
+} from './defaults.ts'
 import { lossWPerK } from './loss.ts'
 import type { HeatingElement, TankSpec } from './types.ts'
 
@@ -31,7 +38,17 @@ export const actualVolumeL = (tank: TankSpec): number => tank.actualVolumeL ?? t
 export const tankPowerW = (tank: TankSpec, supplyVoltageV: number): number =>
   Math.max(...[tank.upperElement, tank.lowerElement].map((element) => (element ? actualPowerW(element, supplyVoltageV) : 0)))
 
-export function tankModel(tank: TankSpec, site: { readonly supplyVoltageV: number; readonly inletC: number }): TankModel {
+export interface TankSite {
+  readonly supplyVoltageV: number
+  readonly inletC: number
+  /** Another model's water, to reproduce its published figures. */
+  readonly water?: { readonly heatCapacityJPerLK: number; readonly conductivityWPerMK: number }
+}
+
+const WATER = { heatCapacityJPerLK: HEAT_CAPACITY_J_PER_L_K, conductivityWPerMK: CONDUCTIVITY_W_PER_M_K }
+
+export function tankModel(tank: TankSpec, site: TankSite): TankModel {
+  const { heatCapacityJPerLK, conductivityWPerMK } = site.water ?? WATER
   const volumeL = actualVolumeL(tank)
   const volumeM3 = volumeL / 1_000
   const diameterM = tank.heightM
@@ -48,12 +65,11 @@ export function tankModel(tank: TankSpec, site: { readonly supplyVoltageV: numbe
   return {
     volumeL,
     nodeVolumeL: volumeL / NODES,
-    nodeHeatJPerK: (volumeL / NODES) * HEAT_CAPACITY_J_PER_L_K,
+    nodeHeatJPerK: (volumeL / NODES) * heatCapacityJPerLK,
     lossWPerK: Array.from({ length: NODES }, (_, node) => (totalWPerK * area(node)) / totalM2),
-    conductionWPerK: (CONDUCTIVITY_W_PER_M_K * endM2) / (heightM / NODES),
+    conductionWPerK: (conductivityWPerMK * endM2) / (heightM / NODES),
     upper: place(tank.upperElement, Math.max(0, Math.round(tank.shareAboveUpperFraction * NODES) - 1)),
-    // At the very bottom, as HPWHsim has it; OCHRE leaves 17 % below unheated.
-    lower: place(tank.lowerElement, NODES - 1),
+    lower: place(tank.lowerElement, NODES - 1 - Math.round((tank.shareBelowLowerFraction ?? SHARE_BELOW_LOWER_FRACTION) * NODES)),
     setPointC: tank.setPointC,
     deadBandK: tank.deadBandK,
     ambientC: tank.ambientC,

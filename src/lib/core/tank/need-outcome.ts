@@ -1,9 +1,11 @@
 /** What is said about one need once the day's runs stand: ready or short, by how much, from when, and the window of its run. */
 import type { MinuteInterval } from '../time/types.ts'
-import { type Cycle, drawsOf, earliestMin, minutesWanted, needEndMin } from './cycle.ts'
-import { SERVED_MARGIN_K, WINDOW_LENGTH_MIN } from './defaults.ts'
+import { MIN_PER_HOUR } from '../units.ts'
+import { type Cycle, drawsOf, earliestMin, minutesWanted, needEndMin, servesAll } from './cycle.ts'
+import { LONGEST_RUN_MIN, SERVED_MARGIN_K } from './defaults.ts'
 import { nextBestReadyBy } from './next-best.ts'
-import type { Plan } from './readiness.ts'
+import type { Plan } from './plan.ts'
+import type { RunShape } from './required-run.ts'
 import { simulate } from './simulate.ts'
 import type { StartChoice } from './start-by.ts'
 import type { NeedOutcome, ShowerNeed, UnitDay } from './types.ts'
@@ -15,14 +17,15 @@ interface NeedCase {
   readonly need: ShowerNeed
   readonly served: number
   /** Shortest sufficient run, or `null`. */
-  readonly required: number | null
+  readonly shape: RunShape | null
   readonly plan: Plan
 }
 
-export function needOutcome({ day, cycle, index, need, served, required, plan }: NeedCase): NeedOutcome {
+export function needOutcome({ day, cycle, index, need, served, shape, plan }: NeedCase): NeedOutcome {
   const wanted = minutesWanted(need)
-  const ready = served >= wanted - 1e-6
+  const ready = servesAll(need, served)
   const impossible = cannotEver(day, need)
+  const required = impossible || !shape ? null : Math.ceil(shape.durationMin)
   const chosenRunMin = day.runs.kind === 'pressed' ? day.runs.guaranteedMin : clockedMin({ cycle, index, need, on: day.runs.onIntervals })
   const own = runOf({ day, cycle, index, need, choice: plan.choices[index] })
   const status = ready ? 'ready' : impossible || required === null ? 'impossible' : 'short'
@@ -34,19 +37,20 @@ export function needOutcome({ day, cycle, index, need, served, required, plan }:
     status,
     reason: reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked: day.runs.kind === 'clocked' }),
     minutesWanted: wanted,
-    minutesServed: Math.min(served, wanted),
+    minutesServed: ready ? wanted : served,
     requiredRunMin: required,
     chosenRunMin,
     shortfallMin,
     startByMin: own?.startMin ?? null,
     runWindow: own && {
-      earliestStartMin: day.runs.kind === 'pressed' ? Math.max(earliestMin(cycle, index), own.startMin - WINDOW_LENGTH_MIN) : own.startMin,
+      earliestStartMin: plan.choices[index]?.earliestStartMin() ?? own.startMin,
       latestStartMin: own.startMin,
       endMin: day.runs.kind === 'pressed' ? own.startMin + longestMin : own.endMin,
     },
     run: own,
     readyAtMin: ready && own ? readyAt({ cycle, need, own, plan }) : null,
-    nextBestReadyByMin: status === 'short' ? nextBestReadyBy(day, need) : [],
+    nextBestReadyByMin:
+      status === 'short' ? nextBestReadyBy({ day, cycle, state: plan.state, need, endFraction: shape?.endFraction ?? 0 }) : [],
   }
 }
 
@@ -55,6 +59,8 @@ export function cannotEver({ tank }: UnitDay, need: ShowerNeed): string | null {
   if (!tank.upperElement && !tank.lowerElement) return 'The tank has no element on record.'
   if (tank.setPointC < need.useTemperatureC - SERVED_MARGIN_K)
     return `The thermostat is set to ${tank.setPointC} °C, below the ${need.useTemperatureC} °C wanted.`
+  if (tank.mixingValveC !== null && tank.mixingValveC < need.useTemperatureC - SERVED_MARGIN_K)
+    return `The mixing valve is set to ${tank.mixingValveC} °C, below the ${need.useTemperatureC} °C wanted.`
   return null
 }
 
@@ -70,7 +76,8 @@ interface Reason {
 function reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked }: Reason): string {
   if (status === 'ready') return ''
   if (impossible) return impossible
-  if (required === null) return 'No run of up to 12 hours serves this: the tank is too small for it.'
+  if (required === null)
+    return `No run of up to ${LONGEST_RUN_MIN / MIN_PER_HOUR} hours serves this: the tank is too small for it, or the need before it too near.`
   const chosen = Math.floor(chosenRunMin)
   if (clocked && chosen >= required) return `The switch is on for ${chosen} min before the need, but not at the right hours.`
   return `Needs a run of ${required} min; ${clocked ? 'the switch is on for' : 'the timer can be counted on for'} ${chosen} min: ${shortfallMin} min short.`
@@ -87,7 +94,9 @@ interface OwnRun {
 function runOf({ day, cycle, index, need, choice }: OwnRun): MinuteInterval | null {
   if (day.runs.kind === 'pressed') return choice ? { startMin: choice.startMin, endMin: choice.startMin + day.runs.expectedMin } : null
   const from = earliestMin(cycle, index)
-  return day.runs.onIntervals.filter((on) => on.endMin > from && on.startMin < needEndMin(need)).at(-1) ?? null
+  const near = day.runs.onIntervals.filter((on) => on.endMin > from && on.startMin < needEndMin(need))
+  // The one that heats before the need; one that only begins during it is a last resort.
+  return near.filter((on) => on.startMin < need.readyByMin).at(-1) ?? near.at(-1) ?? null
 }
 
 /** On-time of a clock between the need before and the end of this one. */
@@ -118,16 +127,19 @@ function readyAt({
   readonly own: MinuteInterval
   readonly plan: Plan
 }): number {
+  const fromMin = Math.min(Math.max(own.startMin, cycle.startMin), need.readyByMin)
+  const draws = cycle.needs.filter((other) => other.readyByMin < need.readyByMin).flatMap(drawsOf)
+  const before = simulate(cycle.tank, plan.state, { startMin: cycle.startMin, endMin: fromMin, on: plan.on, draws })
   let readyMin: number | null = null
-  simulate(cycle.tank, plan.state, {
-    startMin: cycle.startMin,
-    endMin: Math.max(need.readyByMin, cycle.startMin + 1),
+  simulate(cycle.tank, before.end, {
+    startMin: fromMin,
+    endMin: need.readyByMin,
     on: plan.on,
-    draws: cycle.needs.filter((other) => other.readyByMin < need.readyByMin).flatMap(drawsOf),
+    draws: [],
+    sampleEveryMin: 1,
     sample: (minute, state) => {
       const warm = (state.nodesC[0] ?? 0) >= need.useTemperatureC - SERVED_MARGIN_K
-      if (!warm) readyMin = null
-      else if (minute >= own.startMin && readyMin === null) readyMin = minute
+      readyMin = warm ? (readyMin ?? minute) : null
     },
   })
   return Math.min(readyMin ?? need.readyByMin, need.readyByMin)

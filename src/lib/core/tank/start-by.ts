@@ -1,10 +1,11 @@
 /**
- * Start-by for runs that a person starts: the latest start from which the settled tank serves a need with the run that can be
- * counted on. Served minutes are taken on their monotone envelope: whoever starts earlier never gets fewer (the tank
- * stays on offer until the need), so the search may bisect.
+ * Start-by for runs that a person starts: the latest start that serves a need with the run that can be counted on, heating going
+ * on during the shower; and how much earlier the same run may be started. Inside that window no start serves less.
  */
 import type { MinuteInterval } from '../time/types.ts'
-import { type Cycle, drawsOf, earliestMin, minutesWanted, needEndMin } from './cycle.ts'
+import { type Cycle, drawsOf, earliestMin, needEndMin, servesAll } from './cycle.ts'
+import { WINDOW_LENGTH_MIN } from './defaults.ts'
+import { END_FRACTIONS, endOfRun } from './required-run.ts'
 import { simulate, type TankState } from './simulate.ts'
 import type { ShowerNeed } from './types.ts'
 
@@ -12,7 +13,10 @@ export interface StartChoice {
   readonly startMin: number
   readonly servedMin: number
   readonly serves: boolean
+  /** How early the same run may be started; worked out when asked, since a week asks for its last turn only. */
+  readonly earliestStartMin: () => number
 }
+type Chosen = Omit<StartChoice, 'earliestStartMin'>
 
 interface Before {
   readonly cycle: Cycle
@@ -24,27 +28,86 @@ interface Before {
   readonly earlier: readonly MinuteInterval[]
 }
 
+/** A shower short by less than a second is not short. */
+const SAME_SERVED_MIN = 1 / 60
+
 export function latestStart({ cycle, index, state, durationMin, earlier }: Before): StartChoice {
   const need = cycle.needs[index] as ShowerNeed
   const from = earliestMin(cycle, index)
+  const firstStart = Math.max(from, ...earlier.map((on) => on.endMin))
+  const draws = drawsOf(need)
   const served = (startMin: number): number => {
     const on: readonly MinuteInterval[] = [...earlier, { startMin, endMin: startMin + durationMin }]
-    const simulation = simulate(cycle.tank, state, { startMin: from, endMin: needEndMin(need), on, draws: drawsOf(need) })
+    const simulation = simulate(cycle.tank, state, { startMin: from, endMin: needEndMin(need), on, draws })
     return simulation.servedMin.reduce((sum, minutes) => sum + minutes, 0)
   }
-  const wanted = minutesWanted(need) - 1e-6
-  const latest = need.readyByMin
-  const complete = Math.max(from, need.readyByMin - durationMin)
-  const servedAtLatest = served(latest)
-  if (servedAtLatest >= wanted) return { startMin: latest, servedMin: servedAtLatest, serves: true }
-  const servedComplete = served(complete)
-  if (servedComplete < wanted) return { startMin: complete, servedMin: servedComplete, serves: false }
-  let early = Math.floor(complete)
+  const chosen = choose({ need, firstStart, durationMin, served })
+  const least = chosen.servedMin - SAME_SERVED_MIN
+  const bound = Math.max(firstStart, chosen.startMin - WINDOW_LENGTH_MIN)
+  return { ...chosen, earliestStartMin: () => (bound >= chosen.startMin ? chosen.startMin : earliest({ bound, chosen, served, least })) }
+}
+
+interface Search {
+  readonly need: ShowerNeed
+  readonly firstStart: number
+  readonly durationMin: number
+  readonly served: (startMin: number) => number
+}
+
+/** The latest start that serves all; where none does, the one of those tried that serves most, the latest of equals. */
+function choose({ need, firstStart, durationMin, served }: Search): Chosen {
+  const latest = Math.max(firstStart, need.readyByMin)
   let late = latest
-  while (late - early > 1) {
-    const middle = Math.floor((early + late) / 2)
-    if (served(middle) >= wanted) early = middle
-    else late = middle
+  let best = { startMin: late, servedMin: served(late), serves: false }
+  if (servesAll(need, best.servedMin)) return { ...best, serves: true }
+  for (const endFraction of [...END_FRACTIONS].reverse()) {
+    const startMin = Math.max(firstStart, Math.floor(endOfRun(need, endFraction) - durationMin))
+    if (startMin >= late) continue
+    const servedMin = served(startMin)
+    if (servesAll(need, servedMin)) return { ...halve({ need, early: startMin, late, served }), serves: true }
+    if (servedMin > best.servedMin + SAME_SERVED_MIN) best = { startMin, servedMin, serves: false }
+    late = startMin
   }
-  return { startMin: early, servedMin: minutesWanted(need), serves: true }
+  return best
+}
+
+/** Between a start that serves all and a later one that does not: the last whole minute that does. */
+function halve({
+  need,
+  early,
+  late,
+  served,
+}: Pick<Search, 'need' | 'served'> & { readonly early: number; readonly late: number }): Pick<StartChoice, 'startMin' | 'servedMin'> {
+  let good = early
+  let bad = late
+  let servedMin = served(good)
+  while (bad - good > 1) {
+    const middle = good + Math.floor((bad - good) / 2)
+    const minutes = served(middle)
+    if (servesAll(need, minutes)) {
+      good = middle
+      servedMin = minutes
+    } else bad = middle
+  }
+  return { startMin: good, servedMin }
+}
+
+interface Earlier {
+  readonly bound: number
+  readonly chosen: Chosen
+  readonly served: (startMin: number) => number
+  readonly least: number
+}
+
+/** How early the run may start and still serve as much: a finite run that ends too soon lets the tank cool. Tried every quarter hour. */
+const WINDOW_STEP_MIN = 15
+
+function earliest({ bound, chosen, served, least }: Earlier): number {
+  let good = chosen.startMin
+  while (good > bound) {
+    const next = Math.max(bound, good - WINDOW_STEP_MIN)
+    if (served(next) < least) break
+    good = next
+  }
+  return good
 }

@@ -1,23 +1,40 @@
-/** The day as a curve: outlet, coldest node and charge at regular minutes from midnight, read off the settled cycle. */
-import type { MinuteInterval } from '../time/types.ts'
+/** The day as a curve: outlet, coldest node and charge at regular minutes from midnight, read off the expected cycles. */
 import { MIN_PER_DAY } from '../units.ts'
-import { type Cycle, drawsOf } from './cycle.ts'
+import type { Cycle } from './cycle.ts'
+import type { MinuteInterval } from '../time/types.ts'
 import { simulate, type TankState } from './simulate.ts'
 import type { Readiness } from './types.ts'
 
 const SAMPLE_MIN = 15
 const SAMPLES = MIN_PER_DAY / SAMPLE_MIN
 
-export function traceOf(cycle: Cycle, start: TankState, on: readonly MinuteInterval[]): Readiness['trace'] {
-  const states: TankState[] = []
-  // The cycle covers one day's length; a minute before midnight stands for the same minute of the evening to come.
-  const place = (minute: number, state: TankState) => {
-    const slot = Math.floor((((minute % MIN_PER_DAY) + MIN_PER_DAY) % MIN_PER_DAY) / SAMPLE_MIN)
-    states[slot] ??= state
+/** A cycle's states at quarter hours of its own day, from before midnight on. */
+export interface Sampled {
+  readonly cycle: Cycle
+  readonly states: readonly { readonly slot: number; readonly state: TankState }[]
+}
+
+export function sampled(cycle: Cycle, state: TankState, on: readonly MinuteInterval[]): Sampled {
+  const states: { readonly slot: number; readonly state: TankState }[] = []
+  // Samples fall on quarter hours of the day, whatever minute the cycle begins at: each stands for the quarter hour it is in.
+  const sample = (minute: number, at: TankState) => states.push({ slot: Math.floor(minute / SAMPLE_MIN), state: at })
+  simulate(cycle.tank, state, { ...cycle, on, sample, sampleEveryMin: SAMPLE_MIN })
+  return { cycle, states }
+}
+
+/**
+ * The curve of one day of a sequence that repeats itself: its own cycle from midnight on, then what the cycles after it hold of
+ * its evening (a day that repeats alone finds its evening in its own cycle, a day earlier).
+ */
+export function traceOf(cycles: readonly Sampled[], day: number): Readiness['trace'] {
+  const found: (TankState | undefined)[] = Array.from({ length: SAMPLES })
+  for (let later = 0; later <= Math.min(2, cycles.length); later++) {
+    const { states } = cycles[(day + later) % cycles.length] as Sampled
+    for (const { slot, state } of states) if (inDay(slot + later * SAMPLES)) found[slot + later * SAMPLES] ??= state
   }
-  simulate(cycle.tank, start, { startMin: cycle.startMin, endMin: cycle.endMin, on, draws: cycle.needs.flatMap(drawsOf), sample: place })
-  const { inletC, setPointC } = cycle.tank
-  const filled = Array.from({ length: SAMPLES }, (_, slot) => states[slot] ?? states[slot - 1] ?? start)
+  const { tank } = (cycles[day] as Sampled).cycle
+  const { inletC, setPointC } = tank
+  const filled = fill(found)
   const mean = (state: TankState) => state.nodesC.reduce((sum, temperatureC) => sum + temperatureC, 0) / state.nodesC.length
   const round = (value: number) => Math.round(value * 10) / 10
   return {
@@ -26,4 +43,13 @@ export function traceOf(cycle: Cycle, start: TankState, on: readonly MinuteInter
     coldestC: filled.map((state) => round(state.nodesC.at(-1) ?? 0)),
     chargeFraction: filled.map((state) => Math.round(Math.min(1, Math.max(0, (mean(state) - inletC) / (setPointC - inletC))) * 100) / 100),
   }
+}
+
+const inDay = (slot: number): boolean => slot >= 0 && slot < SAMPLES
+
+/** A quarter hour that fell between two cycles takes its neighbour's state. */
+function fill(found: readonly (TankState | undefined)[]): readonly TankState[] {
+  const first = found.find((state) => state !== undefined)
+  let last = first as TankState
+  return found.map((state) => (last = state ?? last))
 }

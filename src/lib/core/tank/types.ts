@@ -29,6 +29,8 @@ export interface TankSpec {
   readonly lowerElement: HeatingElement | null
   /** Share of the volume above the upper element; default one third (sources differ, see the constant). */
   readonly shareAboveUpperFraction: number
+  /** Share of the volume below the lower element, which no element heats; default one sixth (sources differ, see the constant). */
+  readonly shareBelowLowerFraction?: number
   readonly setPointC: number
   readonly deadBandK: number
   readonly ambientC: number
@@ -61,7 +63,7 @@ export interface UnitDay {
   readonly needs: readonly ShowerNeed[]
   /** Hours in which a tenant is willing to press; whole day if empty. */
   readonly willing: readonly MinuteInterval[]
-  /** Where the day starts from: the periodic state of this very day repeated, a cold tank, or given node temperatures. */
+  /** Where the day starts from: what the days before it leave, a cold tank, or given node temperatures. */
   readonly start: { readonly kind: 'periodic' } | { readonly kind: 'cold' } | { readonly kind: 'nodes'; readonly nodesC: readonly number[] }
 }
 
@@ -106,5 +108,7 @@ export interface Readiness {
     readonly coldestC: readonly number[]
     readonly chargeFraction: readonly number[]
   }
+  /** State at the start and the end of the day's cycle: from after the last need before it to after its own last. */
+  readonly startNodesC: readonly number[]
   readonly endNodesC: readonly number[]
 }
