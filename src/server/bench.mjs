@@ -23,7 +23,8 @@ await build({
   format: 'esm',
   logLevel: 'warning',
 })
-for (const name of files) {
+const only = process.argv[2]
+for (const name of files.filter((file) => only === undefined || file === `${only}.ts`)) {
   const module = await import(pathToFileURL(inRoot(OUT, name.replace(/\.ts$/, '.mjs'))).href)
   for (const [bench, measure] of Object.entries(module)) {
     if (!bench.startsWith('bench') || typeof measure !== 'function') continue

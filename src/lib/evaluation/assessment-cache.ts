@@ -1,26 +1,27 @@
-/** Remembers assessments of one evaluation run by their inputs: most days of a week are the same day to the model. */
+/** Remembers assessments of one evaluation run by their inputs: units of the same hardware and habits are the same week to the model. */
 import { type AlwaysOn, alwaysOn } from '#lib/core/tank/always-on.ts'
-import { assessReadiness } from '#lib/core/tank/readiness.ts'
 import type { Readiness, UnitDay } from '#lib/core/tank/types.ts'
+import { assessWeek } from '#lib/core/tank/week.ts'
 
+/** In step with the days. */
 export interface Assessment {
-  readonly readiness: Readiness
-  readonly baseline: AlwaysOn
+  readonly readiness: readonly Readiness[]
+  readonly baseline: readonly AlwaysOn[]
 }
-export type Assess = (day: UnitDay) => Assessment
+export type Assess = (days: readonly UnitDay[]) => Assessment
 
-/** An assessment takes about 4 kB; a property of 10,000 units has more distinct ones than are worth keeping. */
-const LIMIT = 4_000
+/** An assessment takes about 30 kB; a property of 10,000 units has more distinct ones than are worth keeping. */
+const LIMIT = 500
 
 /** One cache a run: it holds inputs for as long as the run lasts, never from one night to the next. */
 export function cachedAssess(): Assess {
   const known = new Map<string, Assessment>()
-  return (day) => {
-    const key = JSON.stringify(day)
+  return (days) => {
+    const key = JSON.stringify(days)
     const found = known.get(key)
     if (found) return found
     if (known.size >= LIMIT) known.clear()
-    const assessment = { readiness: assessReadiness(day), baseline: alwaysOn(day) }
+    const assessment = { readiness: assessWeek(days), baseline: alwaysOn(days) }
     known.set(key, assessment)
     return assessment
   }

@@ -1,4 +1,4 @@
-/** One unit on one local day: readiness, runs, energy and cost, or the reason why there is nothing to compute. Pure. */
+/** One unit's local days: readiness, runs, energy and cost, or the reason why there is nothing to compute. Pure. */
 import type { DurationOutcome, RunSource } from '#lib/core/controller/types.ts'
 import { tankPowerW } from '#lib/core/tank/model.ts'
 import type { NeedOutcome, UnitDay } from '#lib/core/tank/types.ts'
@@ -6,7 +6,7 @@ import type { Assess } from './assessment-cache.ts'
 import { assumptionsOf } from './assumptions.ts'
 import { energyCost } from './energy-cost.ts'
 import type { DayContext, DayResult, DayRun, Site, UnitHardware, Wants } from './types.ts'
-import { unitDayOf } from './unit-day.ts'
+import { unitDayOf, wantedOf } from './unit-day.ts'
 
 export const NO_HARDWARE = 'Nothing is recorded about the heater. Record its tank, element and controller.'
 export const NOT_SAID = 'The tenant has not said when they shower.'
@@ -15,35 +15,37 @@ export const NO_SHOWER = 'No shower is wanted on this day.'
 
 interface UnitCase {
   readonly site: Site
-  readonly context: DayContext
+  readonly contexts: readonly DayContext[]
   readonly hardware: UnitHardware | null
   /** Of that hardware; worked out once for all days. */
   readonly duration: DurationOutcome | null
-  readonly wants: Wants
+  /** In step with the contexts. */
+  readonly wants: readonly Wants[]
 }
 
-export function evaluateDay(unit: UnitCase, assess: Assess): DayResult {
-  const { site, context, hardware, duration, wants } = unit
-  if (!hardware || !duration) return nothing(context, 'unknown', NO_HARDWARE)
-  if (wants.kind === 'not-said') return nothing(context, 'unknown', NOT_SAID)
-  const week = wants.kind === 'week' ? wants.week : []
-  const willing = wants.kind === 'week' ? wants.willing : []
-  const day = unitDayOf({ site, context, hardware, duration, week, willing })
-  const { readiness, baseline } = assess(day)
-  const cost = energyCost(readiness.heating, context.prices)
-  return {
-    context,
-    status: readiness.status,
-    reason: wants.kind === 'nobody' ? NOBODY : readiness.status === 'no-need' ? NO_SHOWER : '',
-    readiness,
-    runs: runsOfDay(day, readiness.needs, context),
-    powerW: tankPowerW(day.tank, site.supplyVoltageV),
-    peakKwh: cost.peakKwh,
-    costMinor: cost.costMinor,
-    baselineEnergyKwh: baseline.energyInKwh,
-    baselineCostMinor: energyCost(baseline.heating, context.prices).costMinor,
-    assumptions: assumptionsOf({ site, context, hardware, duration }),
-  }
+/** A unit's days in order, each from what the days before it leave. */
+export function evaluateDays({ site, contexts, hardware, duration, wants }: UnitCase, assess: Assess): readonly DayResult[] {
+  if (!hardware || !duration) return contexts.map((context) => nothing(context, 'unknown', NO_HARDWARE))
+  const days = contexts.map((context, index) => unitDayOf({ site, context, hardware, duration, ...wantedOf(wants[index]) }))
+  const { readiness, baseline } = assess(days)
+  return contexts.map((context, index) => {
+    if (wants[index]?.kind === 'not-said') return nothing(context, 'unknown', NOT_SAID)
+    const [day, own, always] = [days[index]!, readiness[index]!, baseline[index]!]
+    const cost = energyCost(own.heating, context.prices)
+    return {
+      context,
+      status: own.status,
+      reason: wants[index]?.kind === 'nobody' ? NOBODY : own.status === 'no-need' ? NO_SHOWER : '',
+      readiness: own,
+      runs: runsOfDay(day, own.needs, context),
+      powerW: tankPowerW(day.tank, site.supplyVoltageV),
+      peakKwh: cost.peakKwh,
+      costMinor: cost.costMinor,
+      baselineEnergyKwh: always.energyInKwh,
+      baselineCostMinor: energyCost(always.heating, context.prices).costMinor,
+      assumptions: assumptionsOf({ site, context, hardware, duration }),
+    }
+  })
 }
 
 const nothing = (context: DayContext, status: 'unknown' | 'no-need', reason: string): DayResult => ({

@@ -1,7 +1,7 @@
 /** Units of a property through the model, one by one, outside any transaction; a unit that cannot be computed is an answer, not an end. */
 import { setImmediate } from 'node:timers/promises'
 import type { Assess } from './assessment-cache.ts'
-import { evaluateDay } from './evaluate-day.ts'
+import { evaluateDays } from './evaluate-day.ts'
 import type { Finding } from './evidence.ts'
 import { unitFindings } from './findings.ts'
 import type { PropertyInputs, UnitInputs } from './load-inputs.server.ts'
@@ -29,10 +29,8 @@ export function evaluateOne({ site, contexts }: Pick<PropertyInputs, 'site' | 'c
   const { hardware, wants } = inputs
   try {
     const duration = hardware && durationOf(hardware)
-    const days = contexts.map((context, index) =>
-      evaluateDay({ site, context, hardware, duration, wants: wants[index] ?? { kind: 'nobody' } }, assess),
-    )
-    return { status: 'evaluated', inputs, days, findings: unitFindings({ site, hardware, duration, wants, days }) }
+    const days = evaluateDays({ site, contexts, hardware, duration, wants }, assess)
+    return { status: 'evaluated', inputs, days, findings: unitFindings({ site, contexts, hardware, duration, wants, days }) }
   } catch (error) {
     return { status: 'failed', inputs, error }
   }

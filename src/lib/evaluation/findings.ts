@@ -9,10 +9,11 @@ import { assumedLines, type Finding, found } from './evidence.ts'
 import { fixesFor } from './fixes.ts'
 import { hardwareFindings } from './hazards.ts'
 import { hygieneFindings } from './hygiene-findings.ts'
-import type { DayResult, Site, UnitHardware, Wants } from './types.ts'
+import type { DayContext, DayResult, Site, UnitHardware, Wants } from './types.ts'
 
 export interface FindingCase {
   readonly site: Site
+  readonly contexts: readonly DayContext[]
   readonly hardware: UnitHardware | null
   readonly duration: DurationOutcome | null
   /** What the tenancy of a day wants, in step with `days`. */
@@ -31,8 +32,8 @@ export function unitFindings(unit: FindingCase): readonly Finding[] {
 }
 
 /** One flag a unit, with the figures of its worst day. */
-function coldFinding({ site, hardware, wants, days }: FindingCase): Finding | null {
-  const cold = days.map((day, index) => ({ day, wants: wants[index], need: worstNeed(day) })).filter((one) => one.need !== null)
+function coldFinding({ site, contexts, hardware, wants, days }: FindingCase): Finding | null {
+  const cold = days.map((day) => ({ day, need: worstNeed(day) })).filter((one) => one.need !== null)
   const worst = cold.reduce<(typeof cold)[number] | null>(
     (best, one) => (best === null || weight(one.need) > weight(best.need) ? one : best),
     null,
@@ -42,17 +43,7 @@ function coldFinding({ site, hardware, wants, days }: FindingCase): Finding | nu
   const at = (minute: number) => clockWords(minute, day.context.clockChange)
   const showers = `${need.need.count === 1 ? 'one shower' : `${need.need.count} showers`} at ${at(need.need.readyByMin)}`
   const shortfallMin = need.status === 'short' ? need.shortfallMin : null
-  const fixes =
-    worst.wants?.kind === 'week'
-      ? fixesFor({
-          site,
-          context: day.context,
-          hardware,
-          week: worst.wants.week,
-          willing: worst.wants.willing,
-          needs: day.readiness?.needs ?? [],
-        })
-      : []
+  const fixes = fixesFor({ site, contexts, hardware, wants, days, worst: day })
   return {
     kind: 'misses-recovery',
     severity: 'cold',

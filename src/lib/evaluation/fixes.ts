@@ -1,4 +1,4 @@
-/** Which single change would make a short unit ready: each candidate is run through the model again before it is named. */
+/** Which single change would make a short unit ready on every day: each candidate is run through the model again before it is named. */
 import { formatFarad, formatOhm } from '#lib/core/controller/describe.ts'
 import { runDuration } from '#lib/core/controller/run-duration.ts'
 import type {
@@ -8,14 +8,12 @@ import type {
   OneShotRcController,
   TimeSwitchController,
 } from '#lib/core/controller/types.ts'
-import { assessReadiness } from '#lib/core/tank/readiness.ts'
-import type { NeedOutcome } from '#lib/core/tank/types.ts'
+import { servesWeek } from '#lib/core/tank/serves-week.ts'
 import { formatMinuteOfDay } from '#lib/format.ts'
 import { clockWords } from '#lib/strip/clock.ts'
-import type { Preference } from '#db/queries/preference.ts'
 import { minutes } from './assumptions.ts'
-import type { DayContext, Site, UnitHardware } from './types.ts'
-import { unitDayOf } from './unit-day.ts'
+import type { DayContext, DayResult, Site, UnitHardware, Wants } from './types.ts'
+import { unitDayOf, wantedOf } from './unit-day.ts'
 
 export interface Fix {
   readonly label: string
@@ -24,11 +22,12 @@ export interface Fix {
 
 interface ShortUnit {
   readonly site: Site
-  readonly context: DayContext
+  readonly contexts: readonly DayContext[]
   readonly hardware: UnitHardware
-  readonly week: Preference['week']
-  readonly willing: Preference['willing']
-  readonly needs: readonly NeedOutcome[]
+  readonly wants: readonly Wants[]
+  readonly days: readonly DayResult[]
+  /** The one of the days that is furthest from ready. */
+  readonly worst: DayResult
 }
 
 /** Settings are turned in steps that a hand can set. */
@@ -40,22 +39,23 @@ const E24 = [10, 11, 12, 13, 15, 16, 18, 20, 22, 24, 27, 30, 33, 36, 39, 43, 47,
 const LONGEST_EXTENSION_MIN = 360
 
 export function fixesFor(unit: ShortUnit): readonly Fix[] {
-  const times = otherTimes(unit)
+  const times = otherTimes(unit.worst)
   const change = controllerFix(unit)
   return [...(change ? [change] : []), ...times]
 }
 
-/** Whether the day is ready with another controller; readings of the old setting say nothing about the new one. */
-function readyWith(unit: ShortUnit, controller: Controller): boolean {
+/** Whether every day is ready with another controller; readings of the old setting say nothing about the new one. */
+function readyWith({ site, contexts, wants, ...unit }: ShortUnit, controller: Controller): boolean {
   const hardware: UnitHardware = { ...unit.hardware, installation: { ...unit.hardware.installation, controller }, measured: [] }
   const duration = runDuration(controller, [])
   if (duration.timesOut !== 'always') return false
-  return assessReadiness(unitDayOf({ ...unit, hardware, duration })).status === 'ready'
+  return servesWeek(contexts.map((context, index) => unitDayOf({ site, context, hardware, duration, ...wantedOf(wants[index]) })))
 }
 
 function controllerFix(unit: ShortUnit): Fix | null {
   const { controller } = unit.hardware.installation
-  const requiredMin = Math.max(0, ...unit.needs.map((need) => need.requiredRunMin ?? 0))
+  const needs = unit.days.flatMap((day) => day.readiness?.needs ?? [])
+  const requiredMin = Math.max(0, ...needs.map((need) => need.requiredRunMin ?? 0))
   if (requiredMin === 0) return null
   switch (controller.kind) {
     case 'dial':
@@ -112,7 +112,7 @@ function clockFix(unit: ShortUnit, controller: TimeSwitchController): Fix | null
 
 /** The step that ends before, or holds, the need begins earlier by whole steps of the switch. */
 function programmeFix(unit: ShortUnit, controller: TimeSwitchController): Fix | null {
-  const need = unit.needs.find((outcome) => outcome.status !== 'ready')
+  const need = unit.worst.readiness?.needs.find((outcome) => outcome.status !== 'ready')
   const index = controller.programme.findLastIndex((step) => need !== undefined && step.onMin <= need.need.readyByMin)
   const step = controller.programme[index]
   if (!need || !step) return null
@@ -128,8 +128,8 @@ function programmeFix(unit: ShortUnit, controller: TimeSwitchController): Fix | 
 }
 
 /** Nearest times at which today's hardware makes it; the model tried each. */
-function otherTimes({ needs, context }: ShortUnit): readonly Fix[] {
-  const short = needs.find((need) => need.status !== 'ready' && need.nextBestReadyByMin.length > 0)
+function otherTimes({ readiness, context }: DayResult): readonly Fix[] {
+  const short = readiness?.needs.find((need) => need.status !== 'ready' && need.nextBestReadyByMin.length > 0)
   if (!short) return []
   const times = short.nextBestReadyByMin.map((minute) => clockWords(minute, context.clockChange))
   return [{ label: `Shower at ${times.join(' or ')}`, value: `instead of ${clockWords(short.need.readyByMin, context.clockChange)}` }]

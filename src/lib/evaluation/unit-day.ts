@@ -6,7 +6,7 @@ import type { ShowerNeed, UnitDay } from '#lib/core/tank/types.ts'
 import { elapsedOf, offsetMin } from '#lib/core/time/civil.ts'
 import type { MinuteInterval } from '#lib/core/time/types.ts'
 import type { Preference } from '#db/queries/preference.ts'
-import type { DayContext, Site, UnitHardware } from './types.ts'
+import type { DayContext, Site, UnitHardware, Wants } from './types.ts'
 
 interface Moment {
   readonly site: Pick<Site, 'zone' | 'supplyVoltageV'>
@@ -53,6 +53,10 @@ interface UnitCase extends Moment {
   readonly week: Preference['week']
   readonly willing: Preference['willing']
 }
+
+/** Whose showers nobody has told, and who is not there, wants none. */
+export const wantedOf = (wants: Wants | undefined): Pick<UnitCase, 'week' | 'willing'> =>
+  wants?.kind === 'week' ? { week: wants.week, willing: wants.willing } : { week: [], willing: [] }
 
 export const unitDayOf = ({ site, context, hardware, duration, week, willing }: UnitCase): UnitDay => ({
   tank: hardware.installation.load.tank,

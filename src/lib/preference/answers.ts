@@ -1,7 +1,7 @@
 /** Whether a heater can do a week of showers, and what it costs: computed in the browser by the core of the nightly evaluation. Pure. */
 import type { RunSource } from '#lib/core/controller/types.ts'
-import { assessReadiness } from '#lib/core/tank/readiness.ts'
 import type { NeedOutcome, Readiness, ShowerNeed, UnitDay } from '#lib/core/tank/types.ts'
+import { assessReadiness, assessWeek } from '#lib/core/tank/week.ts'
 import { MIN_PER_DAY } from '#lib/core/units.ts'
 import { energyCost } from '#lib/evaluation/energy-cost.ts'
 import type { PriceTable } from '#lib/evaluation/types.ts'
@@ -26,59 +26,76 @@ export interface Answer {
   readonly bad: boolean
 }
 
-/** A day's answer before days that come to the same are joined. */
-interface DayAnswer {
-  readonly needs: string
-  readonly cost: string
-  readonly costMinor: number | null
-  readonly bad: boolean
-}
-
-/** A difference in a day's cost is worth a word from a tenth of it on. */
+/** A cheaper time is worth a word from a tenth of the day's cost on. */
 const WORTH_FRACTION = 0.1
+/** Days of a week differ by what the day before left in the tank. Less than this apart they are told as one, by the worst of them. */
+const SAME = { startMin: 15, shortfallMin: 5, costFraction: 0.25 } as const
 
 /** One answer for days that come to the same. */
 export function answersOf(heater: Heater, week: Week): readonly Answer[] {
-  const found: { readonly days: number[]; readonly answer: DayAnswer }[] = []
-  const computed = new Map<string, DayAnswer>()
-  heater.days.forEach((day, weekday) => {
-    const showers = week[weekday] ?? []
-    const key = JSON.stringify([day, showers])
-    const answer = computed.get(key) ?? answerOf(heater, weekday, showers)
-    computed.set(key, answer)
-    const known = found.find((one) => isSame(one.answer, answer))
-    if (known) known.days.push(weekday)
-    else found.push({ days: [weekday], answer })
+  const groups: DayCase[][] = []
+  const days = heater.days.map((day, weekday): UnitDay => ({ ...heater.unit, runs: day.runs, needs: needsOf(week[weekday] ?? []) }))
+  const assessed = assessWeek(days)
+  days.forEach((day, weekday) => {
+    const one: DayCase = { weekday, day, readiness: assessed[weekday]!, cost: dayCost(heater, weekday, assessed[weekday]!) }
+    const known = groups.find(([first]) => first && isSame(first, one))
+    if (known) known.push(one)
+    else groups.push([one])
   })
-  return found.map(({ days, answer: { needs, cost, bad } }) => ({
-    label: daysLabel(days),
-    words: [needs, cost].filter(Boolean).join(' '),
-    bad,
-  }))
+  return groups.map((cases) => ({ label: daysLabel(cases.map(({ weekday }) => weekday)), ...answerOf(heater, cases) }))
 }
 
-function isSame(one: DayAnswer, other: DayAnswer): boolean {
-  if (one.needs !== other.needs) return false
-  if (one.costMinor === null || other.costMinor === null) return one.costMinor === other.costMinor
-  return Math.abs(one.costMinor - other.costMinor) <= WORTH_FRACTION * Math.max(one.costMinor, other.costMinor)
+const needsOf = (showers: readonly Shower[]): readonly ShowerNeed[] =>
+  showers.map(({ readyByMinuteOfDay, ...shower }) => ({ ...shower, readyByMin: readyByMinuteOfDay }))
+
+interface DayCase {
+  readonly weekday: number
+  readonly day: UnitDay
+  readonly readiness: Readiness
+  readonly cost: DayCost | null
 }
 
-function answerOf(heater: Heater, weekday: number, showers: readonly Shower[]): DayAnswer {
-  const day = heater.days[weekday]
-  if (!day || showers.length === 0) return { needs: 'no shower.', cost: '', costMinor: null, bad: false }
-  const needs = showers.map(({ readyByMinuteOfDay, ...shower }) => ({ ...shower, readyByMin: readyByMinuteOfDay }))
-  const readiness = readinessOn(heater, weekday, needs)
-  const pressed = day.runs.kind === 'pressed'
+function isSame(one: DayCase, other: DayCase): boolean {
+  if (one.day.needs.length !== other.day.needs.length) return false
+  const { needs } = other.readiness
+  if (!one.readiness.needs.every((need, index) => needs[index] !== undefined && isSameNeed(need, needs[index]))) return false
+  // What a day costs tells days apart only where they do what is wanted.
+  if (one.readiness.status !== 'ready') return true
+  if (!one.cost || !other.cost) return one.cost === other.cost
+  const [cost, otherCost] = [one.cost.costMinor, other.cost.costMinor]
+  return Math.abs(cost - otherCost) <= SAME.costFraction * Math.max(cost, otherCost)
+}
+
+const isSameNeed = (one: NeedOutcome, other: NeedOutcome): boolean =>
+  one.status === other.status &&
+  JSON.stringify(one.need) === JSON.stringify(other.need) &&
+  Math.abs((one.startByMin ?? 0) - (other.startByMin ?? 0)) <= SAME.startMin &&
+  Math.abs(one.shortfallMin - other.shortfallMin) <= SAME.shortfallMin
+
+/** Of days that are the same: each need as it is on its worst day, and the cost of their mean. */
+function answerOf(heater: Heater, cases: readonly DayCase[]): Omit<Answer, 'label'> {
+  const [first] = cases
+  if (!first || first.day.needs.length === 0) return { words: 'no shower.', bad: false }
+  const pressed = first.day.runs.kind === 'pressed'
+  const needs = first.readiness.needs.map((_, index) => worstOf(cases.flatMap(({ readiness }) => readiness.needs[index] ?? [])))
   return {
-    needs: readiness.needs.map((need) => needWords(need, pressed)).join(' '),
-    cost: costWords({ heater, weekday, needs, readiness }),
-    costMinor: dayCost(heater, weekday, readiness)?.costMinor ?? null,
-    bad: readiness.status !== 'ready',
+    words: [...needs.map((need) => needWords(need, pressed)), costWords(heater, first, meanCost(cases))].filter(Boolean).join(' '),
+    bad: first.readiness.status !== 'ready',
   }
 }
 
-const readinessOn = ({ unit, days }: Heater, weekday: number, needs: readonly ShowerNeed[]): Readiness =>
-  assessReadiness({ ...unit, runs: days[weekday]?.runs ?? { kind: 'clocked', onIntervals: [], uncertaintyMin: 0 }, needs })
+const worstOf = (needs: readonly NeedOutcome[]): NeedOutcome =>
+  needs.reduce((worst, need) =>
+    need.shortfallMin > worst.shortfallMin || (need.shortfallMin === worst.shortfallMin && (need.startByMin ?? 0) < (worst.startByMin ?? 0))
+      ? need
+      : worst,
+  )
+
+function meanCost(cases: readonly DayCase[]): DayCost | null {
+  const costs = cases.flatMap(({ cost }) => cost ?? [])
+  const mean = (of: (cost: DayCost) => number): number => costs.reduce((sum, cost) => sum + of(cost), 0) / costs.length
+  return costs.length === 0 ? null : { costMinor: mean((cost) => cost.costMinor), peakMinor: mean((cost) => cost.peakMinor) }
+}
 
 function needWords(need: NeedOutcome, pressed: boolean): string {
   const at = formatMinuteOfDay(need.need.readyByMin)
@@ -92,15 +109,14 @@ function needWords(need: NeedOutcome, pressed: boolean): string {
   return `at ${at} the run is ${need.shortfallMin} min too short: warm for ${Math.floor(need.minutesServed)} of ${need.minutesWanted} minutes.${better}`
 }
 
-const startWords = (minute: number): string =>
-  minute < 0 ? `${formatMinuteOfDay(minute + MIN_PER_DAY)} the evening before` : formatMinuteOfDay(minute)
+/** Told to five minutes, the earlier: neighbouring days differ by a minute or two and are one answer. */
+const START_STEP_MIN = 5
 
-interface CostCase {
-  readonly heater: Heater
-  readonly weekday: number
-  readonly needs: readonly ShowerNeed[]
-  readonly readiness: Readiness
+function startWords(startByMin: number): string {
+  const minute = Math.floor(startByMin / START_STEP_MIN) * START_STEP_MIN
+  return minute < 0 ? `${formatMinuteOfDay(minute + MIN_PER_DAY)} the evening before` : formatMinuteOfDay(minute)
 }
+
 interface DayCost {
   readonly costMinor: number
   readonly peakMinor: number
@@ -116,13 +132,12 @@ function dayCost(heater: Heater, weekday: number, { heating }: Readiness): DayCo
   return costMinor === null || peak.costMinor === null ? null : { costMinor, peakMinor: peak.costMinor }
 }
 
-function costWords({ heater, weekday, needs, readiness }: CostCase): string {
-  const cost = dayCost(heater, weekday, readiness)
+function costWords(heater: Heater, one: DayCase, cost: DayCost | null): string {
   if (!cost) return ''
   const money = (minor: number) => formatMoney(minor, heater.currency)
   if (cost.peakMinor <= 0) return `Costs about ${money(cost.costMinor)} a day, none of it on-peak.`
   const said = `Costs about ${money(cost.costMinor)} a day, ${money(cost.peakMinor)} of it on-peak.`
-  const better = readiness.status === 'ready' ? cheaperTime({ heater, weekday, needs, readiness }) : null
+  const better = one.readiness.status === 'ready' ? cheaperTime(heater, one) : null
   return better ? `${said} At ${formatMinuteOfDay(better.readyByMin)} instead: ${money(better.costMinor)}.` : said
 }
 
@@ -130,14 +145,17 @@ const STEP_MIN = 30
 const REACH_MIN = 180
 
 /** The nearest time to which the first on-peak shower could move to cost notably less and still be warm. */
-function cheaperTime({ heater, weekday, needs, readiness }: CostCase): { readonly readyByMin: number; readonly costMinor: number } | null {
-  const now = dayCost(heater, weekday, readiness)
-  const [first, ...rest] = needs
-  if (!now || !first || rest.length > 0 || heater.days[weekday]?.runs.kind !== 'pressed') return null
+function cheaperTime(
+  heater: Heater,
+  { weekday, day, readiness, cost: now }: DayCase,
+): { readonly readyByMin: number; readonly costMinor: number } | null {
+  const [first, ...rest] = day.needs
+  if (!now || !first || rest.length > 0 || day.runs.kind !== 'pressed') return null
+  const start = { kind: 'nodes', nodesC: readiness.startNodesC } as const
   for (let awayMin = STEP_MIN; awayMin <= REACH_MIN; awayMin += STEP_MIN) {
     for (const readyByMin of [first.readyByMin - awayMin, first.readyByMin + awayMin]) {
       if (readyByMin < 0 || readyByMin >= MIN_PER_DAY) continue
-      const moved = readinessOn(heater, weekday, [{ ...first, readyByMin }])
+      const moved = assessReadiness({ ...day, needs: [{ ...first, readyByMin }], start })
       const cost = moved.status === 'ready' ? dayCost(heater, weekday, moved) : null
       if (cost && cost.costMinor <= now.costMinor * (1 - WORTH_FRACTION)) return { readyByMin, costMinor: cost.costMinor }
     }

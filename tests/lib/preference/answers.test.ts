@@ -24,9 +24,10 @@ describe('answersOf', () => {
     ['ready', week({ weekdays: [shower(at(6, 45), 1, 3)], weekend: [] })],
   ] as const)('says the same as the night’s evaluation of a %s day', async (status, wanted) => {
     await setPreference(world.tenant, { tenancyId: unitOf(world, COLD).tenancyId, input: { week: wanted, willing: [] }, nowMs: NOW_MS + 1 })
-    const evaluation = await findEvaluation(world.landlord, unitOf(world, COLD).unitId, '2026-12-02')
+    const evaluation = await findEvaluation(world.landlord, unitOf(world, COLD).unitId, '2026-12-07')
     expect(evaluation?.status).toBe(status)
     const [answer] = answersOf(heater, wanted)
+    // Monday is the worst day of the five: the tank has stood cold over the weekend.
     const said = status === 'ready' ? 'works at 06:45' : `${evaluation?.shortfallMin} min too short`
     expect(answer).toMatchObject({ label: 'Monday to Friday', bad: status === 'short', words: expect.stringContaining(said) })
   })
