@@ -11,10 +11,13 @@ import { requireRole } from '#lib/auth/permission.ts'
 import { describeController } from '#lib/core/controller/describe.ts'
 import { runDuration } from '#lib/core/controller/run-duration.ts'
 import { checkHardware, PROFILES } from '#lib/core/hardware/check-hardware.ts'
+import { pasteurisingRun } from '#lib/core/hygiene/pasteurise.ts'
 import { assessScald } from '#lib/core/hygiene/scald.ts'
 import { addDays, civilOf } from '#lib/core/time/civil.ts'
 import { notFound } from '#lib/http/app-error.ts'
 import { describeInstallation, differences } from '#lib/hardware/view.ts'
+import { loadUnitModel } from './load-unit-model.server.ts'
+import { answerOf } from './model.ts'
 import { stripDayOf } from './strip-day.ts'
 
 export async function loadUnit(
@@ -29,9 +32,13 @@ export async function loadUnit(
   const records = await listHardware(db, unit.id)
   const current = records[0] ?? null
   const recorders = await listRecorders(db, unit.id)
+  const model = await loadUnitModel(db, { property, unit, nowMs })
   return {
     unit,
     today,
+    model,
+    answer: model && answerOf(model),
+    pasteurising: model && pasteurisingRun({ ...model.days[0]!.unit, policy: model.policy }),
     days: days.map((evaluation) => ({ ...evaluation, strip: stripDayOf(evaluation) })),
     flags: await listOpenFlags(db, { unitId: unit.id }),
     tenancies: await listTenancies(db, unit.id),
