@@ -44,7 +44,7 @@ export const runsOf = (hardware: UnitHardware, duration: DurationOutcome, moment
     day: moment.context.day,
     duration,
     toElapsedMin: (minuteOfDay) => elapsedOf(moment.context.day, minuteOfDay, moment.site.zone),
-    clockOffsetMin: clockOffsetMin(hardware, moment),
+    aheadAtStartMin: offsetMin(hardware.recordedAtMs, moment.site.zone) - offsetMin(moment.context.startsAtMs, moment.site.zone),
   })
 
 interface UnitCase extends Moment {

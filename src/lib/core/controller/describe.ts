@@ -2,13 +2,14 @@
 import type { Controller, SwitchStep } from './types.ts'
 
 const WEEKDAYS = ['Mon', 'Tue', 'Wed', 'Thu', 'Fri', 'Sat', 'Sun']
-const clock = (minute: number): string =>
+/** A minute of a switch's day as its dial shows it; the day after wraps. */
+export const clockWords = (minute: number): string =>
   `${String(Math.floor((minute % 1440) / 60)).padStart(2, '0')}:${String(Math.round(minute % 60)).padStart(2, '0')}`
 const steps = (list: readonly SwitchStep[]): string =>
   list.length === 0
     ? 'without a programme'
     : list
-        .map((step) => `${clock(step.onMin)}–${clock(step.offMin)} ${step.weekday === null ? 'daily' : WEEKDAYS[step.weekday]}`)
+        .map((step) => `${clockWords(step.onMin)}–${clockWords(step.offMin)} ${step.weekday === null ? 'daily' : WEEKDAYS[step.weekday]}`)
         .join(', ')
 
 const prefixed = (value: number, steps: readonly (readonly [number, string])[]): string => {

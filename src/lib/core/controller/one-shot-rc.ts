@@ -1,29 +1,14 @@
 /**
- * The 555-type monostable with capacitor leakage and bias: its law, and when it stalls.
+ * The 555-type monostable with capacitor leakage and bias: its law, and exactly when it stalls.
  * Node: R from the supply; C and leakage R_L to ground; a constant sink I_b (threshold plus discharge-pin leakage).
  * Constant I_b over-states the delay of a bipolar part but gives the same stall condition (TI E2E thread 564703, 2017).
  */
-import type { CapacitorLeakage, OneShotRcController } from './types.ts'
+import { leakageOhm } from './capacitors.ts'
+import { IC_FAMILIES, IC_TOLERANCE_FRACTION } from './ic-families.ts'
+import type { OneShotRcController } from './types.ts'
 
-/** Threshold of the divider, 2/3 of the supply. ln 3 follows from it; datasheets round to 1.1 (0.126 % above). */
-export const THRESHOLD_FRACTION = 2 / 3
-
-/** Threshold plus discharge-pin leakage, which sit on the same node. */
-export const BIAS_A: Readonly<Record<'bipolar' | 'cmos', { readonly typicalA: number; readonly worstA: number }>> = {
-  // NE555: threshold 30 nA typical, 250 nA max; discharge 20 / 100 nA (TI SLFS022 p. 5; ST Doc 2182 table 3).
-  bipolar: { typicalA: 50e-9, worstA: 350e-9 },
-  // TS555: threshold 10 pA; discharge 1 nA typical, 100 nA max (ST TS555 p. 7).
-  cmos: { typicalA: 1e-9, worstA: 100e-9 },
-}
-
-/** Initial error of the interval, 3 % max (TI SLFS022A p. 5; TLC555 SLFS043C p. 9). */
-export const IC_TOLERANCE_FRACTION = 0.03
-
-/**
- * A datasheet's leakage limit is a test after one to five minutes at rated voltage; parts in service leak far less. One
- * hundredth of the limit is taken as typical for wet electrolytics: common practice, no source.
- */
-export const TYPICAL_SHARE_OF_ELECTROLYTIC_LIMIT = 0.01
+/** Two equal resistors below the threshold tap and one above it: V_th = 2/3 V, from which ln 3 follows; datasheets round it to 1.1. */
+const DIVIDER_RATIO = 2
 
 export interface RcCircuit {
   readonly resistanceOhm: number
@@ -33,80 +18,77 @@ export interface RcCircuit {
   readonly leakageOhm: number | null
   readonly biasA: number
   readonly startV?: number
+  /** Threshold over what is left above it, k / (1 − k); 2 in a perfect chip. */
+  readonly dividerRatio?: number
 }
 
-export type RcOutcome =
-  | { readonly status: 'ends'; readonly durationS: number }
-  | { readonly status: 'never'; readonly settlesAtV: number; readonly thresholdV: number }
+interface Node {
+  /** Where the capacitor would come to rest, and what it has to pass. */
+  readonly settlesAtV: number
+  readonly thresholdV: number
+}
+export type RcOutcome = (Node & { readonly status: 'ends'; readonly durationS: number }) | (Node & { readonly status: 'never' })
 
-/** t = tau · ln((V_inf − V_0) / (V_inf − V_th)); never when V_inf ≤ V_th. */
-export function rcDuration({ resistanceOhm, capacitanceF, supplyV, leakageOhm, biasA, startV = 0 }: RcCircuit): RcOutcome {
-  const share = leakageOhm === null ? 1 : leakageOhm / (resistanceOhm + leakageOhm)
-  const settlesAtV = (supplyV - biasA * resistanceOhm) * share
-  const thresholdV = THRESHOLD_FRACTION * supplyV
-  if (settlesAtV <= thresholdV) return { status: 'never', settlesAtV, thresholdV }
-  const tauS = capacitanceF * resistanceOhm * share
-  return { status: 'ends', durationS: tauS * Math.log((settlesAtV - startV) / (settlesAtV - thresholdV)) }
+/**
+ * t = tau · ln((V_inf − V_0) / (V_inf − V_th)); never when V_inf ≤ V_th. The headroom V_inf − V_th is multiplied out before it is
+ * computed, so that nothing cancels near the stall and R_L = 2 R is never, to the last bit.
+ */
+export function rcDuration(circuit: RcCircuit): RcOutcome {
+  const { resistanceOhm, capacitanceF, supplyV, biasA, startV = 0, dividerRatio = DIVIDER_RATIO } = circuit
+  const leakiness = circuit.leakageOhm === null ? 0 : resistanceOhm / circuit.leakageOhm
+  const biasV = biasA * resistanceOhm
+  const thresholdV = (supplyV * dividerRatio) / (1 + dividerRatio)
+  const settlesAtV = (supplyV - biasV) / (1 + leakiness)
+  const headroomV = (supplyV * (1 - dividerRatio * leakiness) - (1 + dividerRatio) * biasV) / ((1 + dividerRatio) * (1 + leakiness))
+  if (headroomV <= 0) return { status: 'never', settlesAtV, thresholdV }
+  // Begun at or above the threshold it ends at once.
+  const fromV = Math.min(startV, thresholdV)
+  const tauS = (capacitanceF * resistanceOhm) / (1 + leakiness)
+  return { status: 'ends', durationS: tauS * Math.log1p((thresholdV - fromV) / headroomV), settlesAtV, thresholdV }
 }
 
-/** Equivalent leakage resistance: the published limit, and what is typical. */
-export function leakageOhm(
-  leakage: CapacitorLeakage,
-  capacitanceF: number,
-  supplyV: number,
-): { readonly typicalOhm: number | null; readonly worstOhm: number | null } {
-  const microfarad = capacitanceF * 1e6
-  // Leakage current at rated voltage in microampere, the greater of the two terms.
-  const limit = (perCv: number, floorMicroA: number, ratedV: number) => (ratedV / Math.max(perCv * microfarad * ratedV, floorMicroA)) * 1e6
-  if (leakage.kind === 'resistance') return { typicalOhm: leakage.leakageOhm, worstOhm: leakage.leakageOhm }
-  if (leakage.kind === 'current') {
-    const ohm = leakage.leakageA > 0 ? (THRESHOLD_FRACTION * supplyV) / leakage.leakageA : null
-    return { typicalOhm: ohm, worstOhm: ohm }
-  }
-  const series = leakage.kind === 'series' ? leakage : { series: 'electrolytic' as const, ratedV: 25 }
-  switch (series.series) {
-    case 'electrolytic': {
-      // 0.01 CV or 3 µA (Vishay 038 RSU, doc. 28309, p. 100).
-      const worstOhm = limit(0.01, 3, series.ratedV)
-      return { typicalOhm: worstOhm / TYPICAL_SHARE_OF_ELECTROLYTIC_LIMIT, worstOhm }
-    }
-    case 'low-leakage': {
-      // 0.002 CV or 0.2 µA (Nichicon KL).
-      const worstOhm = limit(0.002, 0.2, series.ratedV)
-      return { typicalOhm: worstOhm / TYPICAL_SHARE_OF_ELECTROLYTIC_LIMIT, worstOhm }
-    }
-    case 'film-polypropylene': {
-      // Self-time-constant at least 30,000 s (Icel PPB).
-      const ohm = 30_000 / capacitanceF
-      return { typicalOhm: ohm, worstOhm: ohm }
-    }
-    case 'film-polyester': {
-      // 3,000 s up to 100 V (index lines of a maker's list; read in a secondary copy).
-      const ohm = 3_000 / capacitanceF
-      return { typicalOhm: ohm, worstOhm: ohm }
-    }
-  }
-}
+/** A chip whose interval is longer by a fraction has its threshold higher: 3^(1 + f) − 1 in place of 2. The interval without leakage then is exactly that much longer. */
+const dividerRatioAt = (errorFraction: number): number => 3 ** (1 + errorFraction) - 1
 
-/** Corner values of a controller as circuits: shortest possible, typical, longest possible. */
-export function rcCorners(timer: OneShotRcController): {
+export interface RcCorners {
+  /** Every part at its shortest; leakage and bias only ever lengthen, so it has neither. */
   readonly shortest: RcCircuit
+  /** Nominal parts with typical leakage and bias. */
   readonly typical: RcCircuit
+  /** The typical circuit with one part at its longest, for each part with a tolerance. */
+  readonly typicalLonger: readonly RcCircuit[]
+  /** Every part at its longest, leakage and bias at their published limits. */
   readonly longest: RcCircuit
-} {
+}
+
+export function rcCorners(timer: OneShotRcController): RcCorners {
   const { resistanceOhm, resistanceToleranceFraction: dr, capacitanceF, capacitanceToleranceFraction: dc, supplyV, icFamily } = timer
-  const leak = leakageOhm(timer.leakage, capacitanceF, supplyV)
-  const bias = BIAS_A[icFamily]
+  const thresholdV = (supplyV * DIVIDER_RATIO) / (1 + DIVIDER_RATIO)
+  const leak = leakageOhm(timer.leakage, { capacitanceF, thresholdV })
+  const { typicalBiasA, worstBiasA } = IC_FAMILIES[icFamily]
+  const typical: RcCircuit = { resistanceOhm, capacitanceF, supplyV, leakageOhm: leak.typicalOhm, biasA: typicalBiasA }
   return {
-    // Leakage and bias only ever lengthen, so the shortest run has neither.
-    shortest: { resistanceOhm: resistanceOhm * (1 - dr), capacitanceF: capacitanceF * (1 - dc), supplyV, leakageOhm: null, biasA: 0 },
-    typical: { resistanceOhm, capacitanceF, supplyV, leakageOhm: leak.typicalOhm, biasA: bias.typicalA },
+    shortest: {
+      resistanceOhm: resistanceOhm * (1 - dr),
+      capacitanceF: capacitanceF * (1 - dc),
+      supplyV,
+      leakageOhm: null,
+      biasA: 0,
+      dividerRatio: dividerRatioAt(-IC_TOLERANCE_FRACTION),
+    },
+    typical,
+    typicalLonger: [
+      { ...typical, resistanceOhm: resistanceOhm * (1 + dr) },
+      { ...typical, capacitanceF: capacitanceF * (1 + dc) },
+      { ...typical, dividerRatio: dividerRatioAt(IC_TOLERANCE_FRACTION) },
+    ],
     longest: {
       resistanceOhm: resistanceOhm * (1 + dr),
       capacitanceF: capacitanceF * (1 + dc),
       supplyV,
       leakageOhm: leak.worstOhm,
-      biasA: bias.worstA,
+      biasA: worstBiasA,
+      dividerRatio: dividerRatioAt(IC_TOLERANCE_FRACTION),
     },
   }
 }

@@ -1,11 +1,9 @@
 /** How long a run really lasts: measured where somebody measured, computed from parts, or as set. */
-import { IC_TOLERANCE_FRACTION, rcCorners, rcDuration } from './one-shot-rc.ts'
-import type { Controller, DurationOutcome, MeasuredDuration, OneShotRcController } from './types.ts'
+import { rcOutcome } from './rc-outcome.ts'
+import type { Controller, DialController, DurationOutcome, MeasuredDuration, OneShotFixedController } from './types.ts'
 
 /** One stop-watch reading says nothing about spread; 3 % stands in for it (common practice, no source). */
 export const SINGLE_READING_SPREAD_FRACTION = 0.03
-
-const S_PER_MIN = 60
 
 /** Clocked controllers have no duration of their own: their nominal is `null` and `runSource` gives their hours. */
 export function runDuration(controller: Controller, measured: readonly MeasuredDuration[]): DurationOutcome {
@@ -37,12 +35,10 @@ function computedDuration(controller: Controller): DurationOutcome {
     case 'one-shot-rc':
       return rcOutcome(controller)
     case 'one-shot-fixed':
-    case 'dial': {
-      const { settingMin, toleranceFraction } = controller
-      const range = { minMin: settingMin * (1 - toleranceFraction), maxMin: settingMin * (1 + toleranceFraction) }
-      const reasons = [`Set to ${settingMin} min, tolerance ${(toleranceFraction * 100).toFixed(0)} %.`]
-      return { source: 'setting', nominalMin: settingMin, typical: range, guaranteed: range, timesOut: 'always', reasons }
-    }
+      return setDuration(controller, controller.settingMin)
+    case 'dial':
+      // A dial cannot be turned past the end of its scale, whatever was written down.
+      return setDuration(controller, Math.min(controller.settingMin, controller.scaleMaxMin))
     case 'time-switch':
     case 'supplier-contactor': {
       const none = { minMin: 0, maxMin: null }
@@ -58,38 +54,20 @@ function computedDuration(controller: Controller): DurationOutcome {
   }
 }
 
-function rcOutcome(timer: OneShotRcController): DurationOutcome {
-  const corners = rcCorners(timer)
-  const typical = rcDuration(corners.typical)
-  const longest = rcDuration(corners.longest)
-  const shortest = rcDuration(corners.shortest)
-  const nominalMin = (timer.resistanceOhm * timer.capacitanceF * Math.log(3)) / S_PER_MIN
-  // Tolerances combine by root sum of squares; leakage and bias are not folded in, they are in the centre value.
-  const rss = Math.hypot(timer.resistanceToleranceFraction, timer.capacitanceToleranceFraction, IC_TOLERANCE_FRACTION)
-  const minutes = (outcome: typeof typical): number | null => (outcome.status === 'ends' ? outcome.durationS / S_PER_MIN : null)
-  const typicalMin = minutes(typical)
-  const longestMin = minutes(longest)
-  const shortestMin = minutes(shortest) ?? nominalMin
-  const timesOut = typicalMin === null ? 'never' : longestMin === null ? 'typically' : 'always'
+function setDuration(
+  { toleranceFraction, settingMin: writtenMin }: DialController | OneShotFixedController,
+  settingMin: number,
+): DurationOutcome {
+  const range = { minMin: settingMin * (1 - toleranceFraction), maxMin: settingMin * (1 + toleranceFraction) }
   return {
-    source: 'computed',
-    nominalMin,
-    typical: { minMin: (typicalMin ?? nominalMin) * (1 - rss), maxMin: typicalMin === null ? null : typicalMin * (1 + rss) },
-    guaranteed: {
-      minMin: shortestMin * (1 - IC_TOLERANCE_FRACTION),
-      maxMin: longestMin === null ? null : longestMin * (1 + IC_TOLERANCE_FRACTION),
-    },
-    timesOut,
+    source: 'setting',
+    nominalMin: settingMin,
+    typical: range,
+    guaranteed: range,
+    timesOut: 'always',
     reasons: [
-      `R × C × ln 3 gives ${nominalMin.toFixed(1)} min.`,
-      typicalMin === null
-        ? 'With typical leakage and bias it never reaches its threshold.'
-        : `With typical leakage and bias ${typicalMin.toFixed(1)} min.`,
-      ...(longest.status === 'never'
-        ? [
-            `At the published limits of leakage and bias the capacitor settles at ${longest.settlesAtV.toFixed(2)} V, below the ${longest.thresholdV.toFixed(2)} V threshold: it may never time out.`,
-          ]
-        : []),
+      `Set to ${settingMin} min, tolerance ${(toleranceFraction * 100).toFixed(0)} %.`,
+      ...(writtenMin > settingMin ? [`On record are ${writtenMin} min, past the end of its scale.`] : []),
     ],
   }
 }

@@ -9,11 +9,14 @@ export interface RunSourceDay {
   readonly duration: DurationOutcome
   /** Elapsed minutes from local midnight of a wall-clock minute; differs from it on clock-change days only. */
   readonly toElapsedMin: (minuteOfDay: number) => number
-  /** Minutes by which a switch's clock is ahead of local time because it did not follow the last clock change. */
-  readonly clockOffsetMin: number
+  /**
+   * Minutes by which the clock of a switch that does not follow clock changes is ahead of local time at the day's first instant,
+   * for that reason alone.
+   */
+  readonly aheadAtStartMin: number
 }
 
-export function runSource(controller: Controller, { day, duration, toElapsedMin, clockOffsetMin }: RunSourceDay): RunSource {
+export function runSource(controller: Controller, { day, duration, toElapsedMin, aheadAtStartMin }: RunSourceDay): RunSource {
   switch (controller.kind) {
     case 'one-shot-rc':
     case 'one-shot-fixed':
@@ -23,12 +26,12 @@ export function runSource(controller: Controller, { day, duration, toElapsedMin,
       return { kind: 'pressed', guaranteedMin: guaranteed.minMin, expectedMin, longestMin: guaranteed.maxMin }
     }
     case 'time-switch': {
-      const aheadMin = controller.driftMin + (controller.followsClockChange ? 0 : clockOffsetMin)
-      return {
-        kind: 'clocked',
-        onIntervals: dayIntervals({ steps: controller.programme, day, aheadMin, toElapsedMin }),
-        uncertaintyMin: controller.stepMin / 2,
-      }
+      const { programme: steps, followsClockChange, driftMin, stepMin } = controller
+      // A clock that does not follow counts on through a change: on that day its minutes are elapsed ones.
+      const clock = followsClockChange
+        ? { aheadMin: driftMin, toElapsedMin }
+        : { aheadMin: driftMin + aheadAtStartMin, toElapsedMin: (minute: number) => minute }
+      return { kind: 'clocked', onIntervals: dayIntervals({ steps, day, ...clock }), uncertaintyMin: stepMin / 2 }
     }
     case 'supplier-contactor':
       return {

@@ -1,5 +1,6 @@
 /** What times a load, and the one question every kind answers: when is it on, and how sure is that. */
 import type { MinuteInterval, Weekday } from '../time/types.ts'
+import type { IcFamily } from './ic-families.ts'
 
 /** How the timing capacitor leaks: a resistance across it, a current through it, a maker's limit, or not known. */
 export type CapacitorLeakage =
@@ -20,7 +21,7 @@ export interface OneShotRcController {
   readonly capacitanceF: number
   readonly capacitanceToleranceFraction: number
   readonly supplyV: number
-  readonly icFamily: 'bipolar' | 'cmos'
+  readonly icFamily: IcFamily
   readonly leakage: CapacitorLeakage
 }
 /** A one-shot of fixed length, started by a press. */
