@@ -1,17 +1,10 @@
 /** Which single change would make a short unit ready on every day: each candidate is run through the model again before it is named. */
-import { formatFarad, formatOhm } from '#lib/core/controller/describe.ts'
+import { partsAdvice } from '#lib/core/controller/parts-advice.ts'
 import { runDuration } from '#lib/core/controller/run-duration.ts'
-import type {
-  Controller,
-  DialController,
-  OneShotFixedController,
-  OneShotRcController,
-  TimeSwitchController,
-} from '#lib/core/controller/types.ts'
+import type { Controller } from '#lib/core/controller/types.ts'
 import { servesWeek } from '#lib/core/tank/serves-week.ts'
-import { formatMinuteOfDay } from '#lib/format.ts'
+import { runNeed } from '#lib/hardware/run-need.ts'
 import { clockWords } from '#lib/strip/clock.ts'
-import { minutes } from './assumptions.ts'
 import type { DayContext, DayResult, Site, UnitHardware, Wants } from './types.ts'
 import { unitDayOf, wantedOf } from './unit-day.ts'
 
@@ -30,13 +23,11 @@ interface ShortUnit {
   readonly worst: DayResult
 }
 
-/** Settings are turned in steps that a hand can set. */
-const DIAL_STEP_MIN = 5
-const TRIES = 12
-/** IEC 60063, E24. */
-const E24 = [10, 11, 12, 13, 15, 16, 18, 20, 22, 24, 27, 30, 33, 36, 39, 43, 47, 51, 56, 62, 68, 75, 82, 91] as const
-/** A switch is not lengthened by more than this: past it the hardware, not the programme, is at fault. */
-const LONGEST_EXTENSION_MIN = 360
+/**
+ * Heating goes on during the shower, so a run somewhat below the required one may do: the model is asked about that much less
+ * first, then about the whole.
+ */
+const LESS_MIN = [10, 0] as const
 
 export function fixesFor(unit: ShortUnit): readonly Fix[] {
   const times = otherTimes(unit.worst)
@@ -52,79 +43,25 @@ function readyWith({ site, contexts, wants, ...unit }: ShortUnit, controller: Co
   return servesWeek(contexts.map((context, index) => unitDayOf({ site, context, hardware, duration, ...wantedOf(wants[index]) })))
 }
 
+/** The parts, setting or programme that the core advises and with which the model finds the days ready; else why there is none. */
 function controllerFix(unit: ShortUnit): Fix | null {
   const { controller } = unit.hardware.installation
   const needs = unit.days.flatMap((day) => day.readiness?.needs ?? [])
   const requiredMin = Math.max(0, ...needs.map((need) => need.requiredRunMin ?? 0))
   if (requiredMin === 0) return null
-  switch (controller.kind) {
-    case 'dial':
-    case 'one-shot-fixed':
-      return settingFix(unit, controller, requiredMin)
-    case 'one-shot-rc':
-      return resistorFix(unit, controller, requiredMin)
-    case 'time-switch':
-      return clockFix(unit, controller) ?? programmeFix(unit, controller)
-    case 'supplier-contactor':
-      return null
-  }
-}
-
-function settingFix(unit: ShortUnit, controller: DialController | OneShotFixedController, requiredMin: number): Fix | null {
-  const maxMin = controller.kind === 'dial' ? controller.scaleMaxMin : LONGEST_EXTENSION_MIN + controller.settingMin
-  // Heating that goes on during the shower may let a setting below the required run do; the search begins two steps under it.
-  const likelyMin = (Math.ceil(requiredMin / DIAL_STEP_MIN) - 2) * DIAL_STEP_MIN
-  const firstMin = Math.max(likelyMin, (Math.floor(controller.settingMin / DIAL_STEP_MIN) + 1) * DIAL_STEP_MIN)
-  for (let settingMin = firstMin; settingMin <= Math.min(maxMin, firstMin + TRIES * DIAL_STEP_MIN); settingMin += DIAL_STEP_MIN) {
-    if (!readyWith(unit, { ...controller, settingMin })) continue
-    const moreMin = settingMin - controller.settingMin
-    return controller.kind === 'dial'
-      ? { label: `Set the dial to ${settingMin} min`, value: `${moreMin} min more than now` }
-      : { label: `Fit a timer of ${settingMin} min`, value: `${moreMin} min more than now` }
-  }
-  return controller.kind === 'dial'
-    ? { label: 'Fit a timer with a longer scale', value: `the dial ends at ${minutes(maxMin)}; ${minutes(requiredMin)} are needed` }
-    : null
-}
-
-/** The next resistor of the E24 series that is long enough and still always times out. */
-function resistorFix(unit: ShortUnit, controller: OneShotRcController, requiredMin: number): Fix | null {
-  const exponent = Math.floor(Math.log10(controller.resistanceOhm)) - 1
-  const values = [0, 1].flatMap((decade) => E24.map((digits) => digits * 10 ** (exponent + decade)))
-  for (const resistanceOhm of values.filter((value) => value > controller.resistanceOhm * 1.001)) {
-    const changed = { ...controller, resistanceOhm }
-    if (runDuration(changed, []).guaranteed.minMin < requiredMin) continue
-    if (readyWith(unit, changed)) {
-      return {
-        label: `Fit a ${formatOhm(resistanceOhm)} timing resistor`,
-        value: `with the ${formatFarad(controller.capacitanceF)} capacitor as it is`,
-      }
+  const { context, readiness } = unit.worst
+  const readyByMin = readiness?.needs.find((need) => need.status !== 'ready')?.need.readyByMin ?? null
+  const need = runNeed({ requiredMin, readyByMin, day: context.day, clockChange: context.clockChange })
+  let refused: string | null = null
+  for (const lessMin of LESS_MIN) {
+    const advice = partsAdvice(controller, { ...need, minMin: Math.max(1, requiredMin - lessMin) })
+    if (advice.status === 'none') refused = advice.reason
+    else {
+      const first = advice.suggestions.find((suggestion) => readyWith(unit, suggestion.controller))
+      if (first) return { label: first.what, value: first.reason.replace(/\.$/, '') }
     }
   }
-  return null
-}
-
-/** A clock that is off is set right first: the programme may be long enough. */
-function clockFix(unit: ShortUnit, controller: TimeSwitchController): Fix | null {
-  const right: TimeSwitchController = { ...controller, driftMin: 0, followsClockChange: true }
-  return readyWith(unit, right) ? { label: 'Set its clock right', value: 'the programme is long enough' } : null
-}
-
-/** The step that ends before, or holds, the need begins earlier by whole steps of the switch. */
-function programmeFix(unit: ShortUnit, controller: TimeSwitchController): Fix | null {
-  const need = unit.worst.readiness?.needs.find((outcome) => outcome.status !== 'ready')
-  const index = controller.programme.findLastIndex((step) => need !== undefined && step.onMin <= need.need.readyByMin)
-  const step = controller.programme[index]
-  if (!need || !step) return null
-  for (let earlierMin = controller.stepMin; earlierMin <= LONGEST_EXTENSION_MIN; earlierMin += controller.stepMin) {
-    const onMin = step.onMin - earlierMin
-    if (onMin < 0) break
-    const programme = controller.programme.map((other, at) => (at === index ? { ...other, onMin } : other))
-    if (readyWith(unit, { ...controller, programme })) {
-      return { label: `Switch on at ${formatMinuteOfDay(onMin)}`, value: `${earlierMin} min earlier than ${formatMinuteOfDay(step.onMin)}` }
-    }
-  }
-  return null
+  return refused === null ? null : { label: 'No setting or stocked part of this timer does', value: refused.replace(/\.$/, '') }
 }
 
 /** Nearest times at which today's hardware makes it; the model tried each. */

@@ -6,6 +6,7 @@ import { checkHardware } from '#lib/core/hardware/check-hardware.ts'
 import type { Check } from '#lib/core/hardware/types.ts'
 import { clockSaid, minutes } from './assumptions.ts'
 import { type Finding, found } from './evidence.ts'
+import { sureParts } from './sure-parts.ts'
 import { clockOffsetMin } from './unit-day.ts'
 import type { DayResult, Site, UnitHardware } from './types.ts'
 
@@ -31,7 +32,7 @@ export function hardwareFindings(unit: HardwareCase): readonly Finding[] {
 }
 
 /** `typically` is a hazard too: it stops with an ordinary part and not at the published limits. */
-function neverStops({ hardware, duration }: HardwareCase): Finding | null {
+function neverStops({ hardware, duration, days }: HardwareCase): Finding | null {
   if (duration.timesOut === 'always') return null
   const never = duration.timesOut === 'never'
   return {
@@ -52,6 +53,7 @@ function neverStops({ hardware, duration }: HardwareCase): Finding | null {
           value: 'an electrician isolates the heater or fits a timer that always stops',
           from: 'common practice, no source',
         },
+        ...sureParts(hardware, duration, days),
         {
           kind: 'caution',
           label: 'What it can do',

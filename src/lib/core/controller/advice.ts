@@ -31,7 +31,7 @@ export const none = (reason: string): PartsAdvice => ({ status: 'none', reason }
 /** More than this nobody reads in a cupboard. */
 export const MOST_SUGGESTIONS = 5
 /** Whole minutes to count on are rounded down, those at the longest up. */
-export const spanWords = ({ guaranteed }: DurationOutcome): string =>
+export const spanWords = ({ guaranteed }: Pick<DurationOutcome, 'guaranteed'>): string =>
   `at least ${Math.floor(guaranteed.minMin)} min, at most ${guaranteed.maxMin === null ? 'no limit' : `${Math.ceil(guaranteed.maxMin)} min`}`
 export const meets = (duration: DurationOutcome, { minMin, limitMin }: RunNeed): boolean =>
   duration.timesOut === 'always' &&

@@ -47,7 +47,7 @@ export function programmeAdvice(controller: TimeSwitchController, need: RunNeed)
 }
 
 /** Minutes of the last on-interval before the moment, as the model has it, with its start as late as it may be. */
-function surelyOnMin(controller: TimeSwitchController, { weekday, minuteOfDay }: ReadyBy): number {
+export function surelyOnMin(controller: TimeSwitchController, { weekday, minuteOfDay }: ReadyBy): number {
   const source = runSource(controller, {
     day: DAY_OF[weekday],
     duration: runDuration(controller, []),

@@ -6,34 +6,42 @@ import { publishedMaxOhm } from './max-resistance.ts'
 import { rcCorners, rcDuration } from './one-shot-rc.ts'
 import { isE12 } from './preferred-values.ts'
 import { type Candidate, rcCandidates } from './rc-parts.ts'
+import { guaranteedRange } from './rc-outcome.ts'
 import { runDuration } from './run-duration.ts'
-import type { DurationOutcome, OneShotRcController } from './types.ts'
+import type { DurationRange, OneShotRcController } from './types.ts'
 
 interface Checked {
   readonly candidate: Candidate
-  readonly duration: DurationOutcome
+  readonly guaranteed: DurationRange
 }
 
 export function rcAdvice(installed: OneShotRcController, need: RunNeed): PartsAdvice {
   const best = new Map<string, Checked>()
-  let longest: Checked | null = null
-  // A guaranteed minimum never passes the nominal run, nor does a guaranteed maximum stay under it: what lies outside cannot do.
-  for (const candidate of rcCandidates(installed, { fromMin: 0, toMin: need.limitMin })) {
-    const nominalMin = (candidate.timer.resistanceOhm * candidate.timer.capacitanceF * Math.log(3)) / 60
-    if (nominalMin < need.minMin && longest !== null && nominalMin <= longest.duration.guaranteed.minMin) continue
-    const checked = { candidate, duration: runDuration(candidate.timer, []) }
-    if (!meets(checked.duration, need)) {
-      if (checked.duration.timesOut === 'always' && checked.duration.guaranteed.minMin > (longest?.duration.guaranteed.minMin ?? 0))
-        longest = checked
-      continue
-    }
+  // A guaranteed minimum never passes the nominal run and a guaranteed maximum never stays under it: what lies outside cannot do.
+  for (const candidate of rcCandidates(installed, { fromMin: need.minMin, toMin: need.limitMin })) {
+    const checked = { candidate, guaranteed: guaranteedRange(candidate.timer) }
+    const { minMin, maxMin } = checked.guaranteed
+    if (minMin < need.minMin || maxMin === null || maxMin > need.limitMin) continue
     const kind = kindOf(candidate)
     const other = best.get(kind)
     if (!other || compare(checked, other) < 0) best.set(kind, checked)
   }
-  if (best.size === 0) return none(whyNone(need, longest))
-  const ranked = [...best.values()].sort(compare).slice(0, MOST_SUGGESTIONS)
-  return { status: 'found', suggestions: ranked.map(toSuggestion) }
+  const suggestions = [...best.values()].sort(compare).slice(0, MOST_SUGGESTIONS).map(toSuggestion)
+  // The search looked at the range alone; what is named has been through the whole model.
+  const confirmed = suggestions.filter(({ duration }) => meets(duration, need))
+  return confirmed.length > 0 ? { status: 'found', suggestions: confirmed } : none(whyNone(need, longestSure(installed, need)))
+}
+
+/** Of all that surely ends, what surely runs longest within reach of the need. */
+function longestSure(installed: OneShotRcController, { limitMin }: RunNeed): Checked | null {
+  let longest: Checked | null = null
+  for (const candidate of rcCandidates(installed, { fromMin: 0, toMin: limitMin })) {
+    const nominalMin = (candidate.timer.resistanceOhm * candidate.timer.capacitanceF * Math.log(3)) / 60
+    if (longest && nominalMin <= longest.guaranteed.minMin) continue
+    const guaranteed = guaranteedRange(candidate.timer)
+    if (guaranteed.maxMin !== null && guaranteed.minMin > (longest?.guaranteed.minMin ?? 0)) longest = { candidate, guaranteed }
+  }
+  return longest
 }
 
 /** One suggestion a way of doing it: which parts are changed, which series, how many pieces. */
@@ -41,19 +49,20 @@ const kindOf = ({ changes, capacitor }: Candidate): string => `${changes.join()}
 
 /** Fewer parts to change, then fewer pieces, then values that every shop has, then the least over what is needed. */
 function compare(one: Checked, other: Checked): number {
-  const key = ({ candidate, duration }: Checked) => [
+  const key = ({ candidate, guaranteed }: Checked) => [
     candidate.changes.length,
     candidate.capacitor?.pieces ?? 0,
     isE12(candidate.timer.resistanceOhm) ? 0 : 1,
-    duration.guaranteed.maxMin ?? Infinity,
+    guaranteed.maxMin ?? Infinity,
   ]
   const [mine, theirs] = [key(one), key(other)]
   const at = mine.findIndex((value, index) => value !== theirs[index])
   return at < 0 ? 0 : (mine[at] ?? 0) - (theirs[at] ?? 0)
 }
 
-function toSuggestion({ candidate, duration }: Checked): Suggestion {
+function toSuggestion({ candidate }: Checked): Suggestion {
   const { timer, changes } = candidate
+  const duration = runDuration(timer, [])
   const resistor = `${formatOhm(timer.resistanceOhm)}, ±${percent(timer.resistanceToleranceFraction)}, ${isE12(timer.resistanceOhm) ? 'E12' : 'E24'}`
   const parts = [
     ...(changes.includes('resistor') ? [`a ${formatOhm(timer.resistanceOhm)} timing resistor`] : []),
@@ -89,11 +98,11 @@ function whyNone({ minMin, limitMin }: RunNeed, longest: Checked | null): string
   const needed = `${Math.ceil(minMin)} min`
   const instead = `Fit a timer of fixed length for ${needed} instead.`
   if (!longest) return `No stocked resistor and capacitor surely stop within ${Math.floor(limitMin)} min. ${instead}`
-  const { duration, candidate } = longest
-  const parts = `${formatOhm(candidate.timer.resistanceOhm)} and ${capacitorWords(candidate)}`
-  return duration.guaranteed.minMin < minMin
-    ? `No stocked resistor and capacitor surely run ${needed} and surely stop. The longest that do: ${parts}, ${spanWords(duration)}. Longer ones leak too much or need a resistor above the makers’ rule. ${instead}`
-    : `The spread of stocked parts is too wide: what surely runs ${needed} may run longer than ${Math.floor(limitMin)} min (${parts}, ${spanWords(duration)}). ${instead}`
+  const { guaranteed, candidate } = longest
+  const parts = `${formatOhm(candidate.timer.resistanceOhm)} and ${capacitorWords(candidate)}: ${spanWords({ guaranteed })}`
+  return guaranteed.minMin < minMin
+    ? `No stocked resistor and capacitor surely run ${needed} and surely stop. The longest that do are ${parts}. Longer ones leak too much or need a resistor above the makers’ rule. ${instead}`
+    : `The spread of stocked parts is too wide: what surely runs ${needed} may run longer than ${Math.floor(limitMin)} min, such as ${parts}. ${instead}`
 }
 
 const percent = (fraction: number): string => `${Number((fraction * 100).toPrecision(3))} %`

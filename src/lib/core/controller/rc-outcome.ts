@@ -3,12 +3,18 @@ import { formatOhm } from './describe.ts'
 import { IC_FAMILIES, IC_TOLERANCE_FRACTION } from './ic-families.ts'
 import { publishedMaxOhm } from './max-resistance.ts'
 import { type RcCircuit, rcCorners, rcDuration, type RcOutcome } from './one-shot-rc.ts'
-import type { DurationOutcome, OneShotRcController } from './types.ts'
+import type { DurationOutcome, DurationRange, OneShotRcController } from './types.ts'
 
 const S_PER_MIN = 60
 const minutesOf = (circuit: RcCircuit): number | null => {
   const outcome = rcDuration(circuit)
   return outcome.status === 'ends' ? outcome.durationS / S_PER_MIN : null
+}
+
+/** The guaranteed range alone; a search over thousands of parts asks for nothing else. */
+export function guaranteedRange(timer: OneShotRcController): DurationRange {
+  const { shortest, longest } = rcCorners(timer)
+  return { minMin: minutesOf(shortest) ?? 0, maxMin: minutesOf(longest) }
 }
 
 export function rcOutcome(timer: OneShotRcController): DurationOutcome {
