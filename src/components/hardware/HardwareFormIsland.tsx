@@ -7,12 +7,14 @@ import { checkHardware } from '#lib/core/hardware/check-hardware.ts'
 import type { Check, Installation, ProfileId } from '#lib/core/hardware/types.ts'
 import { ApiProblem, apiSend } from '#lib/http/client.ts'
 import type { RecordHardwareInput } from '#lib/hardware/record-schema.ts'
+import type { NeededRun } from '#lib/hardware/run-need.ts'
 import { VERDICT_WORDS } from '#lib/hardware/view.ts'
 import { WithQueries } from '../ui/WithQueries.tsx'
 import { CircuitFields } from './CircuitFields.tsx'
 import { ControllerFields } from './ControllerFields.tsx'
 import { NumberField, TextField } from './inputs.tsx'
 import { TankFields } from './TankFields.tsx'
+import { TimerAdvice } from './TimerAdvice.tsx'
 
 interface Props {
   readonly installation: Installation
@@ -22,9 +24,10 @@ interface Props {
   readonly submitLabel: string
   /** Where to go once it is recorded. */
   readonly doneHref: string
+  readonly needed: NeededRun | null
 }
 
-function HardwareForm({ installation: first, expectedRevision, profile, submitUrl, submitLabel, doneHref }: Props) {
+function HardwareForm({ installation: first, expectedRevision, profile, submitUrl, submitLabel, doneHref, needed }: Props) {
   const [installation, setInstallation] = useState(first)
   const [reason, setReason] = useState('')
   const [measuredMin, setMeasuredMin] = useState<number | null>(null)
@@ -89,6 +92,7 @@ function HardwareForm({ installation: first, expectedRevision, profile, submitUr
       </form>
       <aside className="flex flex-col gap-4" aria-label="What this comes to">
         <RealRun installation={installation} />
+        <TimerAdvice controller={installation.controller} needed={needed} />
         <Checks checks={checks} />
       </aside>
     </div>
