@@ -13,6 +13,8 @@ export interface VisitProposal {
   readonly changes: readonly string[]
   /** The numbers behind each finding as they stood then; absent in visits planned before they were kept. */
   readonly evidence?: readonly { readonly summary: string; readonly lines: readonly EvidenceLine[] }[]
+  /** What a visit without a flag answers, such as a clock change; one visit a unit and cause. */
+  readonly cause?: string
 }
 
 export interface Visit {

@@ -1,5 +1,6 @@
 /** All plain forms of the product. */
 import { account } from './account.ts'
+import { clock } from './clock.ts'
 import { digest } from './digest.ts'
 import { flag } from './flag.ts'
 import { people } from './people.ts'
@@ -9,4 +10,4 @@ import { tariff } from './tariff.ts'
 import { tenancy } from './tenancy.ts'
 import { tenant } from './tenant.ts'
 
-export const server = { account, digest, flag, people, property, roster, tariff, tenancy, tenant }
+export const server = { account, clock, digest, flag, people, property, roster, tariff, tenancy, tenant }

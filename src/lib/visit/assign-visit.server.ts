@@ -5,10 +5,11 @@ import { addAudit } from '#db/queries/audit.ts'
 import { type Flag, findFlag, listPlannedVisits } from '#db/queries/flag.ts'
 import { hasAccess, listMembers } from '#db/queries/organisation.ts'
 import { findProperty } from '#db/queries/property.ts'
-import { findUnit } from '#db/queries/unit.ts'
-import { addVisit, type VisitProposal } from '#db/queries/visit.ts'
+import { findUnit, type Unit } from '#db/queries/unit.ts'
+import { addVisit, listVisitsOfProperty, type VisitProposal } from '#db/queries/visit.ts'
 import { actingPerson, requireRole } from '#lib/auth/permission.ts'
 import { processConfig } from '#lib/config.server.ts'
+import { isClockCause } from '#lib/clock-round/round.ts'
 import { MAINS_CAUTION } from '#lib/core/hardware/verdict.ts'
 import { formatDay } from '#lib/format.ts'
 import { AppError, invalid, notFound } from '#lib/http/app-error.ts'
@@ -41,6 +42,8 @@ export async function assignVisit(db: OrgDb, { input, organisationSlug, nowMs }:
     const planned = new Set((await listPlannedVisits(trx, property.id)).map((visit) => visit.flagId))
     if (flags.some((flag) => planned.has(flag.id)))
       throw new AppError('conflict', 'A visit is planned for this flag already. Nobody was told twice.')
+    if (flags.some((flag) => flag.kind === 'clock-is-off') && (await clockVisitPlanned(trx, unit)))
+      throw new AppError('conflict', 'A visit of the clock round is planned for this switch already. Nobody was told twice.')
     const proposal = proposalOf(flags)
     const dueDay = fields.dueDay || null
     const visitId = await addVisit(trx, {
@@ -90,6 +93,12 @@ export async function assignVisit(db: OrgDb, { input, organisationSlug, nowMs }:
     return visitId
   })
 }
+
+/** A visit of a clock round carries no flag, and sets the same clock. */
+const clockVisitPlanned = async (trx: OrgTrx, { id, propertyId }: Unit): Promise<boolean> =>
+  (await listVisitsOfProperty(trx, propertyId)).some(
+    (visit) => visit.unitId === id && visit.state === 'planned' && isClockCause(visit.proposal.cause),
+  )
 
 async function openFlags(trx: OrgTrx, ids: readonly (FlagId | null)[], unitId: string): Promise<readonly Flag[]> {
   const flags: Flag[] = []

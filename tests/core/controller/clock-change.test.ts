@@ -1,7 +1,7 @@
 /** Clock changes of named zones against the IANA database, and what they do to a switch that does not follow. */
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
-import { clockEffect, nextClockChanges, visitWhen } from '#lib/core/controller/clock-change.ts'
+import { clockEffect, clockRound, nextClockChanges, visitWhen } from '#lib/core/controller/clock-change.ts'
 import { runDuration } from '#lib/core/controller/run-duration.ts'
 import { runSource } from '#lib/core/controller/run-source.ts'
 import type { Controller, TimeSwitchController } from '#lib/core/controller/types.ts'
@@ -43,7 +43,7 @@ describe('clockEffect', () => {
   it('a switch that does not follow is an hour late after spring, and right again after autumn', () => {
     expect(effects('Europe/London', '2026-01-15T00:00:00Z').map(({ effect }) => effect)).toEqual([
       { status: 'off', aheadMin: -60 },
-      { status: 'right', because: 'comes-right' },
+      { status: 'right', because: 'comes-right', aheadMin: 0 },
     ])
   })
   it('a switch set in summer is an hour early after autumn, south of the equator in April', () => {
@@ -58,7 +58,7 @@ describe('clockEffect', () => {
   it('adds what its clock has drifted, and calls it right where the change cancels that', () => {
     const drifted = (driftMin: number) => effects('Europe/London', '2026-01-15T00:00:00Z', { ...SWITCH, driftMin })[0]?.effect
     expect(drifted(-12)).toEqual({ status: 'off', aheadMin: -72 })
-    expect(drifted(60)).toEqual({ status: 'right', because: 'comes-right' })
+    expect(drifted(60)).toEqual({ status: 'right', because: 'comes-right', aheadMin: 0 })
   })
   it('asks the supplier about a contactor, and leaves alone what follows or has no clock', () => {
     const effectOf = (controller: Controller) => effects('Europe/London', '2026-01-15T00:00:00Z', controller)[0]?.effect
@@ -91,6 +91,41 @@ describe('clockEffect', () => {
         },
       ),
     )
+  })
+})
+
+describe('clockRound', () => {
+  const round = (zone: string, over: Partial<TimeSwitchController> = {}, right = '2026-01-15T00:00:00Z') =>
+    clockRound({ ...SWITCH, ...over }, { zone, nowMs: Date.parse('2026-01-15T00:00:00Z'), rightAtMs: Date.parse(right) }).map(
+      ({ effect }) => effect,
+    )
+
+  it('asks for a visit at both changes: what is set at the first is off at the second', () => {
+    expect(round('America/New_York')).toEqual([
+      { status: 'off', aheadMin: -60 },
+      { status: 'off', aheadMin: 60 },
+    ])
+    expect(round('Australia/Sydney')).toEqual([
+      { status: 'off', aheadMin: 60 },
+      { status: 'off', aheadMin: -60 },
+    ])
+  })
+  it('leaves a switch alone that the last change put wrong and the next puts right, and lists it at the one after', () => {
+    expect(round('Europe/London', {}, '2025-07-01T00:00:00Z')).toEqual([
+      { status: 'right', because: 'comes-right', aheadMin: 0 },
+      { status: 'off', aheadMin: 60 },
+    ])
+  })
+  it('knows a switch that was set an hour ahead before the change as right after it', () => {
+    expect(round('Europe/London', { driftMin: 60 })).toEqual([
+      { status: 'right', because: 'comes-right', aheadMin: 0 },
+      { status: 'off', aheadMin: 60 },
+    ])
+  })
+  it('is empty where clocks never change, and never asks for a visit to what follows', () => {
+    expect(round('Asia/Kolkata')).toEqual([])
+    expect(round('Asia/Kathmandu')).toEqual([])
+    for (const effect of round('Europe/London', { followsClockChange: true })) expect(effect.status).toBe('right')
   })
 })
 

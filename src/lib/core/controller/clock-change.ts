@@ -8,8 +8,9 @@ import type { Controller } from './types.ts'
 const RIGHT_WITHIN_MIN = 1
 
 export type ClockEffect =
-  /** Nothing to do: it has no clock, follows by itself, or the change makes it right again. */
-  | { readonly status: 'right'; readonly because: 'no-clock' | 'follows' | 'comes-right' }
+  /** Nothing to do: it has no clock, follows by itself, or the change makes it right again, to `aheadMin`. */
+  | { readonly status: 'right'; readonly because: 'no-clock' | 'follows' }
+  | { readonly status: 'right'; readonly because: 'comes-right'; readonly aheadMin: number }
   /** The supplier's clock; only they can say. */
   | { readonly status: 'ask-supplier' }
   /** Off after the change. `aheadMin` above 0: its clock is fast and it switches early; below 0: late. */
@@ -35,7 +36,8 @@ export function clockEffect(controller: Controller, { zone, change, rightAtMs }:
       // Between being set and the change the wall clock may have moved already; what counts is where it is after it.
       const movedMin = offsetMin(rightAtMs, zone) - offsetMin(change.atMs, zone)
       const aheadMin = movedMin + controller.driftMin
-      if (Math.abs(movedMin) < RIGHT_WITHIN_MIN || Math.abs(aheadMin) < RIGHT_WITHIN_MIN) return { status: 'right', because: 'comes-right' }
+      if (Math.abs(movedMin) < RIGHT_WITHIN_MIN || Math.abs(aheadMin) < RIGHT_WITHIN_MIN)
+        return { status: 'right', because: 'comes-right', aheadMin }
       return { status: 'off', aheadMin }
     }
   }
@@ -76,4 +78,30 @@ const SEARCH_MS = 2 * 366 * 86_400_000
 export function nextClockChanges(zone: Zone, fromMs: number): readonly RoundChange[] {
   const changes = clockChangesIn({ startsAtMs: fromMs, endsAtMs: fromMs + SEARCH_MS }, zone)
   return changes.slice(0, 2).map((change, index) => ({ ...change, untilMs: changes[index + 1]?.atMs ?? null }))
+}
+
+export interface RoundStep {
+  readonly change: RoundChange
+  readonly effect: ClockEffect
+}
+
+/**
+ * What the next two changes do to one controller. The second is answered for a switch that was set after the first: whoever makes
+ * the first round has to make the second too, and a switch that came right by itself goes off with it.
+ */
+export function clockRound(
+  controller: Controller,
+  { zone, nowMs, rightAtMs }: { readonly zone: Zone; readonly nowMs: number; readonly rightAtMs: number },
+): readonly RoundStep[] {
+  const steps: RoundStep[] = []
+  let now = { controller, rightAtMs }
+  for (const change of nextClockChanges(zone, nowMs)) {
+    const effect = clockEffect(now.controller, { zone, change, rightAtMs: now.rightAtMs })
+    steps.push({ change, effect })
+    if (now.controller.kind === 'time-switch' && !now.controller.followsClockChange) {
+      const driftMin = effect.status === 'right' && effect.because === 'comes-right' ? effect.aheadMin : 0
+      now = { controller: { ...now.controller, driftMin }, rightAtMs: change.atMs }
+    }
+  }
+  return steps
 }
