@@ -1,5 +1,6 @@
 /** What carries and protects the load; empty is "not known" and never counts as good. */
 import type { Circuit } from '#lib/core/hardware/types.ts'
+import { ControlFields } from './ControlFields.tsx'
 import { ChoiceField, KnownField, NumberField } from './inputs.tsx'
 
 interface Props {
@@ -36,11 +37,27 @@ const POLES = [
   ['2', 'two'],
 ] as const
 
+/** Insulation ratings that the tables hold. */
+const RATINGS = {
+  awg: [
+    ['60', '60 °C'],
+    ['75', '75 °C'],
+    ['90', '90 °C'],
+  ],
+  mm2: [['70', '70 °C']],
+} as const
+const MATERIALS = [
+  ['copper', 'copper'],
+  ['aluminium', 'aluminium'],
+] as const
+
 function conductorOf(size: (typeof SIZES)[number]): Circuit['conductor'] {
   const [value, system] = size.split(' ')
   if (!value || (system !== 'awg' && system !== 'mm2')) return null
   return { size: value, system, material: 'copper', ratingC: system === 'awg' ? 60 : 70 }
 }
+
+const ratingOf = (rating: string): 60 | 70 | 75 | 90 => (rating === '75' ? 75 : rating === '90' ? 90 : rating === '70' ? 70 : 60)
 
 export function CircuitFields({ circuit, problemOf, onChange }: Props) {
   const set = (patch: Partial<Circuit>) => onChange({ ...circuit, ...patch })
@@ -64,10 +81,40 @@ export function CircuitFields({ circuit, problemOf, onChange }: Props) {
         onChange={(breakerA) => set({ breakerA })}
       />
       <ChoiceField
-        label="Copper conductor"
+        label="Conductor"
         value={size}
         options={SIZES.map((one) => [one, one === 'unknown' ? 'not known' : one.replace('mm2', 'mm²').replace('awg', 'AWG')] as const)}
         onChange={(chosen) => set({ conductor: conductorOf(chosen) })}
+      />
+      {circuit.conductor && (
+        <>
+          <ChoiceField
+            label="Conductor is of"
+            value={circuit.conductor.material}
+            options={MATERIALS}
+            onChange={(material) => circuit.conductor && set({ conductor: { ...circuit.conductor, material } })}
+          />
+          <ChoiceField
+            label="Insulation rated for"
+            value={String(circuit.conductor.ratingC)}
+            options={RATINGS[circuit.conductor.system]}
+            onChange={(rating) => circuit.conductor && set({ conductor: { ...circuit.conductor, ratingC: ratingOf(rating) } })}
+          />
+        </>
+      )}
+      <NumberField
+        label="Air around the cable"
+        unit="°C, at the warmest"
+        value={circuit.ambientC}
+        problem={problem('ambientC')}
+        onChange={(ambientC) => set({ ambientC })}
+      />
+      <NumberField
+        label="Current-carrying conductors together"
+        unit="with its own"
+        value={circuit.groupedConductors}
+        problem={problem('groupedConductors')}
+        onChange={(groupedConductors) => set({ groupedConductors })}
       />
       <NumberField
         label="Cable length"
@@ -104,6 +151,9 @@ export function CircuitFields({ circuit, problemOf, onChange }: Props) {
         value={circuit.extraLowVoltageSeparated}
         onChange={(extraLowVoltageSeparated) => set({ extraLowVoltageSeparated })}
       />
+      <div className="sm:col-span-2">
+        <ControlFields control={circuit.control} problemOf={problemOf} onChange={(control) => set({ control })} />
+      </div>
     </fieldset>
   )
 }

@@ -9,7 +9,7 @@ const CIRCUIT: Circuit = {
   conductor: { size: '10', system: 'awg', material: 'copper', ratingC: 60 },
   lengthM: 15,
   ambientC: 25,
-  groupedConductors: null,
+  groupedConductors: 2,
   contactRatingA: 30,
   contactRatingClass: 'resistive',
   polesSwitched: 2,

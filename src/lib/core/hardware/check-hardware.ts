@@ -3,6 +3,9 @@
  * "not known", never a pass; a limit from memory never decides a pass alone. It screens; it does not certify.
  */
 import { actualPowerW, actualVolumeL } from '../tank/model.ts'
+import { conductor, voltageDrop } from './conductor-checks.ts'
+import { controlChecks } from './control-checks.ts'
+import { ampere } from './figures.ts'
 import { gbBs7671 } from './profiles/gb-bs7671.ts'
 import { iec60364 } from './profiles/iec-60364.ts'
 import type { RuleProfile } from './profiles/profile.ts'
@@ -24,10 +27,11 @@ export function checkHardware(installation: Installation, profileId: ProfileId):
     contact(installation, loadA),
     smallestDevice({ installation, profile, loadA }),
     ...(profile.largestDevice ? [largestDevice({ installation, profile, loadA })] : []),
-    conductor({ installation, profile, loadA }),
+    conductor({ installation, profile, loadA, continuousA: continuousA({ installation, profile, loadA }) }),
     voltageDrop({ installation, profile, loadA }),
     poles(installation, profile),
     ...safetyChecks(installation, profile),
+    ...controlChecks(installation),
   ]
 }
 
@@ -44,7 +48,6 @@ interface Case {
   readonly loadA: number
 }
 
-const ampere = (value: number): string => `${Number(value.toFixed(2))} A`
 function elementVoltage({ load, circuit }: Installation): Check {
   const rated = [load.tank.upperElement, load.tank.lowerElement].flatMap((element) => (element ? [element.ratedVoltageV] : []))
   const lowestV = Math.min(...rated)
@@ -154,53 +157,6 @@ function largestDevice({ installation, profile, loadA }: Case): Check {
     reason: fails
       ? 'The device is too large to protect this appliance. A marked maximum on the nameplate comes first.'
       : 'Within the largest size for this appliance.',
-  })
-}
-
-function conductor(one: Case): Check {
-  const { installation, profile } = one
-  const wire = installation.circuit.conductor
-  const neededA = continuousA(one)
-  const base = { id: 'conductor', title: 'Conductor', limit: `at least ${ampere(Math.max(neededA, installation.circuit.breakerA ?? 0))}` }
-  const row = wire && profile.conductors.system === wire.system ? profile.conductors.rows.find((one) => one.size === wire.size) : undefined
-  const ampacityA = wire?.material === 'copper' ? row?.ampacityA[wire.ratingC] : undefined
-  if (!wire || !row || ampacityA === undefined) {
-    return check(profile.conductors, {
-      ...base,
-      verdict: 'not-known',
-      figure: wire ? `${wire.size} ${wire.system} ${wire.material}, ${wire.ratingC} °C` : 'not known',
-      reason: 'Size, material and insulation rating are not all known, or this table does not hold them.',
-    })
-  }
-  const { breakerA } = installation.circuit
-  const tooSmall = ampacityA < neededA - 1e-9
-  const unprotected = breakerA !== null && breakerA > (row.capA ?? ampacityA) + 1e-9
-  return check(profile.conductors, {
-    ...base,
-    figure: `${ampere(ampacityA)} for ${wire.size} ${wire.system}${row.capA === null ? '' : `, device at most ${ampere(row.capA)}`}`,
-    verdict: tooSmall || unprotected ? 'fail' : 'pass',
-    reason: tooSmall
-      ? 'The conductor is too small for this load.'
-      : unprotected
-        ? `A ${ampere(breakerA ?? 0)} device does not protect this conductor.`
-        : 'Before ambient and grouping corrections the conductor carries the load and is protected.',
-  })
-}
-
-function voltageDrop({ installation, profile, loadA }: Case): Check {
-  const { conductor: wire, lengthM, supplyVoltageV } = installation.circuit
-  const row = wire && profile.conductors.rows.find((one) => one.size === wire.size && profile.conductors.system === wire.system)
-  const limit = `${profile.voltageDrop.fraction * 100} % of ${supplyVoltageV} V`
-  const base = { id: 'voltage-drop', title: 'Voltage drop', limit }
-  if (!row || lengthM === null)
-    return check(profile.voltageDrop, { ...base, verdict: 'not-known', figure: 'not known', reason: 'Enter the cable’s size and length.' })
-  const dropV = 2 * (row.ohmPerKm / 1_000) * lengthM * loadA
-  const over = dropV > profile.voltageDrop.fraction * supplyVoltageV
-  return check(profile.voltageDrop, {
-    ...base,
-    figure: `${dropV.toFixed(2)} V (${((dropV / supplyVoltageV) * 100).toFixed(2)} %)`,
-    verdict: over ? 'attention' : 'pass',
-    reason: over ? 'More than is advised: the element heats more slowly.' : 'Within what is advised.',
   })
 }
 

@@ -22,8 +22,16 @@ export interface RuleProfile {
       readonly ampacityA: Readonly<Record<number, number>>
       readonly capA: number | null
       readonly ohmPerKm: number
+      /** This row is from memory, though its table is not. */
+      readonly confirm?: true
     }[]
   }
+  /** What is left of a conductor's capacity in warm air, by insulation rating; the first row whose temperature is not passed. */
+  readonly ambient: Limit & { readonly rows: readonly { readonly upToC: number; readonly factor: Readonly<Record<number, number>> }[] }
+  /** What is left of it beside other current-carrying conductors, counted together with its own. */
+  readonly grouping: Limit & { readonly rows: readonly { readonly upTo: number; readonly factor: number }[] }
+  /** Whether the next standard device above a conductor's capacity protects it (NEC 240.4(B)), or none above does (I_n ≤ I_z). */
+  readonly nextSizeUp: boolean
   readonly voltageDrop: Limit & { readonly fraction: number }
   readonly polesToSwitch: Limit & { readonly poles: 1 | 2 }
   readonly isolator: Limit

@@ -1,0 +1,3 @@
+/** Figures of checks as they are read: with their unit, no more digits than matter. */
+export const ampere = (value: number): string => (value < 1 ? `${Number((value * 1_000).toFixed(1))} mA` : `${Number(value.toFixed(2))} A`)
+export const volt = (value: number): string => `${value.toFixed(2)} V`
