@@ -20,6 +20,8 @@ export interface FlagEvidence {
   readonly shortfallMin: number | null
   /** The local day of which the figures are. */
   readonly day: string | null
+  /** What several findings of one kind are told apart by, e.g. the checks that fail; absent where a kind is one finding. */
+  readonly marks?: readonly string[]
 }
 
 export interface Flag {

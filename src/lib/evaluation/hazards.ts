@@ -75,7 +75,7 @@ function failsScreening({ site, hardware }: HardwareCase): Finding | null {
     kind: 'hardware-fails',
     severity: 'dangerous',
     summary: `${first.title}: ${first.figure}, ${first.limit}${more}`,
-    evidence: { shortfallMin: null, day: null, lines: [...fails.flatMap(checkLines), MAINS] },
+    evidence: { shortfallMin: null, day: null, marks: fails.map((one) => one.id), lines: [...fails.flatMap(checkLines), MAINS] },
   }
 }
 

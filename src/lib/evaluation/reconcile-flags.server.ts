@@ -16,7 +16,7 @@ export interface Reconciliation {
   readonly subjects: readonly FlagSubject[]
   /** All open flags of these subjects; others are left alone. */
   readonly openFlags: readonly Flag[]
-  /** Dismissals that still hold: their kind is not opened again for that subject. */
+  /** Dismissals that still hold: what they dismissed is not opened again for that subject; another hazard of the same kind is. */
   readonly dismissals: readonly Flag[]
   readonly nowMs: number
 }
@@ -34,7 +34,8 @@ export async function reconcileFlags(
 ): Promise<FlagChanges> {
   const key = (flag: { readonly unitId: UnitId | null; readonly kind: string }) => `${flag.unitId ?? ''} ${flag.kind}`
   const open = new Map(openFlags.map((flag) => [key(flag), flag]))
-  const dismissed = new Set(dismissals.map(key))
+  const isDismissed = (unitId: UnitId | null, finding: Finding) =>
+    dismissals.some((one) => key(one) === key({ unitId, kind: finding.kind }) && covers(one, finding))
   const changes = { opened: 0, refreshed: 0, closed: 0 }
   for (const { unitId, findings, keepOthers } of subjects) {
     const foundKinds = new Set(findings.map((finding) => finding.kind))
@@ -43,7 +44,7 @@ export async function reconcileFlags(
       if (known) {
         await refreshFlag(trx, known.id, { ...finding, seenAtMs: nowMs })
         changes.refreshed++
-      } else if (!dismissed.has(key({ unitId, kind: finding.kind }))) {
+      } else if (!isDismissed(unitId, finding)) {
         await addFlag(trx, { id: newId<FlagId>(), propertyId, unitId, ...finding, openedAtMs: nowMs })
         changes.opened++
       }
@@ -56,6 +57,13 @@ export async function reconcileFlags(
   }
   return changes
 }
+
+const WORSE: readonly Flag['severity'][] = ['attention', 'cold', 'dangerous']
+
+/** A dismissal covers what it was given for: no mark that it did not have, and nothing more severe. */
+const covers = (dismissed: Flag, { severity, evidence }: Finding): boolean =>
+  WORSE.indexOf(severity) <= WORSE.indexOf(dismissed.severity) &&
+  (evidence.marks ?? []).every((mark) => dismissed.evidence.marks?.includes(mark) ?? true)
 
 export const addChanges = (one: FlagChanges, other: FlagChanges): FlagChanges => ({
   opened: one.opened + other.opened,
