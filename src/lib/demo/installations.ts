@@ -78,7 +78,7 @@ const britishTank = ({ nominalVolumeL, setPointC, mixingValveC }: TankChoice): T
 })
 
 const COMMON_CIRCUIT = {
-  groupedConductors: null,
+  groupedConductors: 2,
   contactRatingClass: 'resistive',
   isolatorInSight: true,
   reliefValve: true,

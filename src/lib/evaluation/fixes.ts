@@ -1,12 +1,13 @@
 /** Which single change would make a short unit ready on every day: each candidate is run through the model again before it is named. */
 import { partsAdvice } from '#lib/core/controller/parts-advice.ts'
-import { runDuration } from '#lib/core/controller/run-duration.ts'
 import type { Controller } from '#lib/core/controller/types.ts'
 import { servesWeek } from '#lib/core/tank/serves-week.ts'
+import type { UnitDay } from '#lib/core/tank/types.ts'
 import { runNeed } from '#lib/hardware/run-need.ts'
 import { clockWords } from '#lib/strip/clock.ts'
+import { otherFixes } from './other-fixes.ts'
 import type { DayContext, DayResult, Site, UnitHardware, Wants } from './types.ts'
-import { unitDayOf, wantedOf } from './unit-day.ts'
+import { durationOf, unitDayOf, wantedOf } from './unit-day.ts'
 
 export interface Fix {
   readonly label: string
@@ -30,17 +31,19 @@ interface ShortUnit {
 const LESS_MIN = [10, 0] as const
 
 export function fixesFor(unit: ShortUnit): readonly Fix[] {
-  const times = otherTimes(unit.worst)
   const change = controllerFix(unit)
-  return [...(change ? [change] : []), ...times]
+  return [...(change ? [change] : []), ...otherFixes(daysWith(unit, unit.hardware)), ...otherTimes(unit.worst)]
+}
+
+function daysWith({ site, contexts, wants }: ShortUnit, hardware: UnitHardware): readonly UnitDay[] {
+  const duration = durationOf(hardware)
+  return contexts.map((context, index) => unitDayOf({ site, context, hardware, duration, ...wantedOf(wants[index]) }))
 }
 
 /** Whether every day is ready with another controller; readings of the old setting say nothing about the new one. */
-function readyWith({ site, contexts, wants, ...unit }: ShortUnit, controller: Controller): boolean {
+function readyWith(unit: ShortUnit, controller: Controller): boolean {
   const hardware: UnitHardware = { ...unit.hardware, installation: { ...unit.hardware.installation, controller }, measured: [] }
-  const duration = runDuration(controller, [])
-  if (duration.timesOut !== 'always') return false
-  return servesWeek(contexts.map((context, index) => unitDayOf({ site, context, hardware, duration, ...wantedOf(wants[index]) })))
+  return durationOf(hardware).timesOut === 'always' && servesWeek(daysWith(unit, hardware))
 }
 
 /** The parts, setting or programme that the core advises and with which the model finds the days ready; else why there is none. */

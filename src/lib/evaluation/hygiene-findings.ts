@@ -1,12 +1,14 @@
 /** Findings about stored water: the growth range and scalding, each with the guidance it is held against. */
 import { assessHygiene, GROWTH_RANGE_C, HYGIENE_POLICIES } from '#lib/core/hygiene/assess-hygiene.ts'
 import { assessScald } from '#lib/core/hygiene/scald.ts'
+import { MIN_PER_DAY } from '#lib/core/units.ts'
 import { bothC } from './assumptions.ts'
 import { type Finding, found } from './evidence.ts'
 import type { DayResult, Site, UnitHardware } from './types.ts'
 
-/** Cooler guidance is met by nearly every tank; a day spent mostly in the range is worth a look (the product's own rule). */
+/** Cooler guidance is met by nearly every tank; a week spent mostly in the range is worth a look (the product's own rule). */
 const GROWTH_FRACTION = 0.5
+const DAYS_A_WEEK = 7
 
 interface HygieneCase {
   readonly site: Site
@@ -18,39 +20,36 @@ export function hygieneFindings(unit: HygieneCase): readonly Finding[] {
   return [growth(unit), scald(unit)].filter((finding) => finding !== null)
 }
 
-/** Judged on the day whose coldest water stays longest in the range. */
+/** Judged over the coming week, which is taken to repeat itself. */
 function growth({ site, hardware, days }: HygieneCase): Finding | null {
   const { setPointC } = hardware.installation.load.tank
-  const judged = days.flatMap((day) => {
-    if (!day.readiness || day.status === 'no-need') return []
-    const { coldestC, sampleMin } = day.readiness.trace
-    return [{ day, finding: assessHygiene({ coldestC, sampleMin, setPointC, policy: site.hygienePolicy }) }]
-  })
-  const worst = judged
-    .filter(({ finding }) => finding.sincePasteurisedH === null && finding.growthRangeFraction >= GROWTH_FRACTION)
-    .sort((one, other) => other.finding.growthRangeHours - one.finding.growthRangeHours)[0]
-  if (!worst) return null
+  const week = days.slice(0, DAYS_A_WEEK).flatMap((day) => (day.readiness ? [day.readiness.trace] : []))
+  const sampleMin = week[0]?.sampleMin
+  if (sampleMin === undefined || days.every((day) => day.status === 'no-need' || day.status === 'unknown')) return null
+  const finding = assessHygiene({ coldestC: week.flatMap((trace) => trace.coldestC), sampleMin, setPointC, policy: site.hygienePolicy })
+  if (finding.sincePasteurisedH !== null || finding.growthRangeFraction < GROWTH_FRACTION) return null
   const policy = HYGIENE_POLICIES[site.hygienePolicy]
-  const hours = Math.round(worst.finding.growthRangeHours)
+  const hours = Math.round(finding.growthRangeHours)
+  const ofHours = Math.round((week.length * MIN_PER_DAY) / 60)
   return {
     kind: 'growth-range',
     severity: 'attention',
-    summary: `Stored water is between ${GROWTH_RANGE_C.from} and ${GROWTH_RANGE_C.to} °C for ${hours} h of the day`,
+    summary: `Stored water is between ${GROWTH_RANGE_C.from} and ${GROWTH_RANGE_C.to} °C for ${hours} of ${ofHours} h ahead`,
     evidence: {
       shortfallMin: null,
-      day: worst.day.context.day,
+      day: null,
       lines: [
         { kind: 'assumed', label: 'Guidance followed', value: policy.name, from: policy.source },
         { kind: 'assumed', label: 'Set point', value: bothC(setPointC), from: 'entered' },
-        found('Coldest water in the growth range', `${hours} h of 24`),
-        found('In words', worst.finding.reason),
-        ...worst.finding.sources.map((source) => ({ kind: 'limit' as const, label: 'Source', value: source, from: source })),
+        found('Coldest water in the growth range', `${hours} h of ${ofHours}`),
+        found('In words', finding.reason),
+        ...finding.sources.map((source) => ({ kind: 'limit' as const, label: 'Source', value: source, from: source })),
         {
           kind: 'caution',
           label: 'Legionella',
           value:
             'Stored water between about 20 and 45 °C can grow Legionella. Ask whoever assesses water risk for this building; nothing here certifies.',
-          from: worst.finding.sources[0] ?? policy.source,
+          from: finding.sources[0] ?? policy.source,
         },
       ],
     },
