@@ -20,6 +20,7 @@ const PAGES = [
       `${HOUSE}/units/5C`,
       `${HOUSE}/units/4B/hardware`,
       `${HOUSE}/units/import`,
+      `${HOUSE}/clock-change?outage=200`,
       `${HOUSE}/flags`,
       `${HOUSE}/tariff`,
       `${HOUSE}/settings`,

@@ -44,7 +44,12 @@ export function TimerAdvice({ controller, needed }: Props) {
 }
 
 function Advice({ advice }: { readonly advice: PartsAdvice }) {
-  if (advice.status === 'none') return <p className="border-l-4 border-crimson py-2 pl-3">{advice.reason}</p>
+  if (advice.status === 'none')
+    return (
+      <div className="py-2">
+        <p className="border-l-4 border-crimson pl-3">{advice.reason}</p>
+      </div>
+    )
   return (
     <ol>
       {advice.suggestions.map(({ what, reason }, index) => (

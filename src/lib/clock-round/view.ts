@@ -26,7 +26,7 @@ export const offWords = (aheadMin: number): string => `${formatDuration(Math.abs
 
 /** What it means for who lives there. */
 export const meansWords = (aheadMin: number): string =>
-  aheadMin > 0 ? 'warm too soon; may reach into dearer hours' : 'not ready in time on the first morning'
+  aheadMin > 0 ? 'warm too soon; may reach into dearer hours' : 'may not be ready in time on the first morning'
 
 export const untilWords = ({ change }: Round, zone: string): string =>
   change.untilMs === null ? 'until it is set' : `until it is set, or ${formatInstant(change.untilMs, zone, 'd MMMM yyyy')}`

@@ -94,9 +94,12 @@ function clockIsOff({ site, hardware, days }: HardwareCase): Finding | null {
   const { controller } = hardware.installation
   const context = days[0]?.context
   if (controller.kind !== 'time-switch' || !context) return null
-  const offsetMin = controller.followsClockChange ? 0 : clockOffsetMin(hardware, { site, context })
+  const offsetOn = (on: typeof context) => (controller.followsClockChange ? 0 : clockOffsetMin(hardware, { site, context: on }))
+  const offsetMin = offsetOn(context)
   const aheadMin = controller.driftMin + offsetMin
-  if (Math.abs(aheadMin) < CLOCK_IS_OFF_FROM_MIN) return null
+  // A clock that a change within these days puts right was set ahead for it, or needs nobody any more.
+  const laterMin = controller.driftMin + offsetOn(days.at(-1)?.context ?? context)
+  if (Math.min(Math.abs(aheadMin), Math.abs(laterMin)) < CLOCK_IS_OFF_FROM_MIN) return null
   return {
     kind: 'clock-is-off',
     severity: 'attention',

@@ -9,8 +9,9 @@ const HELD_PAST_MIN = 10
 /** `null` for what is not started by a press of a button. */
 export function pressWords(controller: Controller): string | null {
   if (controller.kind !== 'one-shot-rc' && controller.kind !== 'one-shot-fixed') return null
-  const { typical, guaranteed } = runDuration(controller, [])
-  const runMin = Math.round(((typical.maxMin ?? typical.minMin) + guaranteed.minMin) / 2)
+  const { nominalMin } = runDuration(controller, [])
+  if (nominalMin === null) return null
+  const runMin = Math.round(nominalMin)
   const endOf = (presses: Parameters<typeof runsOfPresses>[0]) => Math.round(runsOfPresses(presses, runMin)[0]?.endMin ?? runMin)
   const half = Math.round(runMin / 2)
   const again = endOf([

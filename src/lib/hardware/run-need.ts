@@ -4,8 +4,8 @@ import { weekdayOf } from '#lib/core/time/civil.ts'
 import type { Day } from '#lib/core/time/types.ts'
 import type { ClockChange } from '#lib/strip/clock.ts'
 
-/** A run of more than twice what is needed costs more in loss and peak than the spread of its parts explains (common practice, no source). */
-const LIMIT_FACTOR = 2
+/** Longer than two and a half times what is needed is more than the spread of good parts explains, and counts in the building's load (common practice, no source). */
+const LIMIT_FACTOR = 2.5
 
 export interface NeededRun {
   readonly requiredMin: number

@@ -35,13 +35,16 @@ function switchAfterOutage(powerReserveH: number | null, outageMin: number): Out
   if (powerReserveH === null)
     return {
       status: 'not-known',
-      reason: `Its power reserve is not on record: without one its clock is ${Math.round(outageMin)} min slow.`,
+      reason: `Its power reserve is not on record: without one a motor clock stands for the whole cut, and an electronic one loses the time.`,
     }
   const slowByMin = outageMin - powerReserveH * MIN_PER_HOUR
   if (slowByMin <= 0) return { status: 'keeps', reason: `Its reserve of ${powerReserveH} h outlasts the cut.` }
   return {
     status: 'set-clock',
     slowByMin,
-    reason: `The cut outlasts its reserve of ${powerReserveH} h: a motor clock is ${Math.round(slowByMin)} min slow; an electronic one has lost the time.`,
+    reason: `The cut outlasts its reserve of ${powerReserveH} h: a motor clock stands ${hours(slowByMin)} behind; an electronic one has lost the time.`,
   }
 }
+
+const hours = (minutes: number): string =>
+  minutes < 2 * MIN_PER_HOUR ? `${Math.round(minutes)} min` : `${Number((minutes / MIN_PER_HOUR).toFixed(1))} h`

@@ -10,6 +10,9 @@ import { guaranteedRange } from './rc-outcome.ts'
 import { runDuration } from './run-duration.ts'
 import type { DurationRange, OneShotRcController } from './types.ts'
 
+/** Nominal runs beyond this multiple of the need are not looked at when the nearest is told. */
+const NEAREST_WITHIN = 4
+
 interface Checked {
   readonly candidate: Candidate
   readonly guaranteed: DurationRange
@@ -29,19 +32,27 @@ export function rcAdvice(installed: OneShotRcController, need: RunNeed): PartsAd
   const suggestions = [...best.values()].sort(compare).slice(0, MOST_SUGGESTIONS).map(toSuggestion)
   // The search looked at the range alone; what is named has been through the whole model.
   const confirmed = suggestions.filter(({ duration }) => meets(duration, need))
-  return confirmed.length > 0 ? { status: 'found', suggestions: confirmed } : none(whyNone(need, longestSure(installed, need)))
+  return confirmed.length > 0 ? { status: 'found', suggestions: confirmed } : none(whyNone(need, nearest(installed, need)))
 }
 
-/** Of all that surely ends, what surely runs longest within reach of the need. */
-function longestSure(installed: OneShotRcController, { limitMin }: RunNeed): Checked | null {
-  let longest: Checked | null = null
-  for (const candidate of rcCandidates(installed, { fromMin: 0, toMin: limitMin })) {
+/** What comes nearest: of all that surely ends the longest, and where that is long enough the one with the lowest end. */
+function nearest(installed: OneShotRcController, { minMin }: RunNeed): Checked | null {
+  let found: Checked | null = null
+  for (const candidate of rcCandidates(installed, { fromMin: 0, toMin: minMin * NEAREST_WITHIN })) {
+    const enough = (one: Checked | null) => one !== null && one.guaranteed.minMin >= minMin
     const nominalMin = (candidate.timer.resistanceOhm * candidate.timer.capacitanceF * Math.log(3)) / 60
-    if (longest && nominalMin <= longest.guaranteed.minMin) continue
-    const guaranteed = guaranteedRange(candidate.timer)
-    if (guaranteed.maxMin !== null && guaranteed.minMin > (longest?.guaranteed.minMin ?? 0)) longest = { candidate, guaranteed }
+    // Neither a shorter one nor, once one is long enough, one that cannot end sooner is looked at.
+    if (found && (enough(found) ? nominalMin >= (found.guaranteed.maxMin ?? Infinity) : nominalMin <= found.guaranteed.minMin)) continue
+    const checked = { candidate, guaranteed: guaranteedRange(candidate.timer) }
+    if (checked.guaranteed.maxMin === null || (enough(found) && !enough(checked))) continue
+    const nearer: boolean =
+      found === null ||
+      (enough(checked)
+        ? !enough(found) || checked.guaranteed.maxMin < (found.guaranteed.maxMin ?? Infinity)
+        : checked.guaranteed.minMin > found.guaranteed.minMin)
+    if (nearer) found = checked
   }
-  return longest
+  return found
 }
 
 /** One suggestion a way of doing it: which parts are changed, which series, how many pieces. */
@@ -94,15 +105,15 @@ function capacitorWords({ capacitor, timer }: Candidate): string {
   return capacitor.pieces === 1 ? `a capacitor of ${each}` : `${capacitor.pieces} capacitors side by side, each ${each}`
 }
 
-function whyNone({ minMin, limitMin }: RunNeed, longest: Checked | null): string {
+function whyNone({ minMin, limitMin }: RunNeed, best: Checked | null): string {
   const needed = `${Math.ceil(minMin)} min`
   const instead = `Fit a timer of fixed length for ${needed} instead.`
-  if (!longest) return `No stocked resistor and capacitor surely stop within ${Math.floor(limitMin)} min. ${instead}`
-  const { guaranteed, candidate } = longest
+  if (!best) return `No stocked resistor and capacitor surely stop. ${instead}`
+  const { guaranteed, candidate } = best
   const parts = `${formatOhm(candidate.timer.resistanceOhm)} and ${capacitorWords(candidate)}: ${spanWords({ guaranteed })}`
   return guaranteed.minMin < minMin
     ? `No stocked resistor and capacitor surely run ${needed} and surely stop. The longest that do are ${parts}. Longer ones leak too much or need a resistor above the makers’ rule. ${instead}`
-    : `The spread of stocked parts is too wide: what surely runs ${needed} may run longer than ${Math.floor(limitMin)} min, such as ${parts}. ${instead}`
+    : `Stocked parts spread too widely: of those that surely run ${needed} the closest are ${parts}; at most ${Math.floor(limitMin)} min are wanted. ${instead}`
 }
 
 const percent = (fraction: number): string => `${Number((fraction * 100).toPrecision(3))} %`
