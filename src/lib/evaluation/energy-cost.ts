@@ -1,4 +1,5 @@
-/** What heating costs at the local times at which it happens: marginal energy prices, split exactly at price boundaries, rounded once. */
+/** The core's cost of heating along a day's table of prices, which the browser is sent in place of a whole tariff; rounded once. */
+import { costAlong } from '#lib/core/tariff/cost.ts'
 import type { MinuteInterval } from '#lib/core/time/types.ts'
 import { MIN_PER_HOUR } from '#lib/core/units.ts'
 import type { PriceTable } from './types.ts'
@@ -11,19 +12,17 @@ export interface EnergyCost {
 
 export function energyCost(heating: readonly (MinuteInterval & { readonly powerW: number })[], prices: PriceTable | null): EnergyCost {
   if (!prices) return { costMinor: null, peakKwh: 0 }
-  let costMinor = 0
-  let peakKwh = 0
-  for (const { startMin, endMin, powerW } of heating) {
-    for (let atMin = startMin; atMin < endMin - 1e-9;) {
-      const slot = Math.floor((atMin - prices.fromMin) / prices.slotMin + 1e-9)
-      const untilMin = Math.min(endMin, prices.fromMin + (slot + 1) * prices.slotMin)
-      const price = prices.priceMinorPerKwh[slot]
-      if (price === undefined) return { costMinor: null, peakKwh }
-      const energyKwh = ((powerW / 1_000) * (untilMin - atMin)) / MIN_PER_HOUR
-      costMinor += energyKwh * price
-      if (prices.onPeak[slot]) peakKwh += energyKwh
-      atMin = untilMin
-    }
-  }
-  return { costMinor: Math.round(costMinor), peakKwh }
+  const { costMinor, peakKwh, unpricedAt } = costAlong(
+    heating.map(({ startMin, endMin, powerW }) => ({ startsAt: startMin, endsAt: endMin, powerW })),
+    {
+      unitsPerHour: MIN_PER_HOUR,
+      bandAt: (atMin) => {
+        const slot = Math.floor((atMin - prices.fromMin) / prices.slotMin + 1e-9)
+        const priceMinorPerKwh = prices.priceMinorPerKwh[slot]
+        if (priceMinorPerKwh === undefined) return null
+        return { endsAt: prices.fromMin + (slot + 1) * prices.slotMin, priceMinorPerKwh, onPeak: prices.onPeak[slot] ?? false }
+      },
+    },
+  )
+  return { costMinor: unpricedAt === null ? Math.round(costMinor) : null, peakKwh }
 }

@@ -2,6 +2,7 @@
 import { readFileSync } from 'node:fs'
 import { beforeEach, describe, expect, it } from 'vitest'
 import { findProperty } from '#db/queries/property.ts'
+import { exportTariff } from '#lib/tariff/export-tariff.server.ts'
 import { importTariff } from '#lib/tariff/import-tariff.server.ts'
 import { loadTariff } from '#lib/tariff/load-tariff.server.ts'
 import { NOW_MS } from '../../support/factories.ts'
@@ -45,5 +46,17 @@ describe('importTariff', () => {
   it("answers not found for another organisation's property, and forbids other roles", async () => {
     await expect(load(read('pge-e19-2019.urdb.json'), { db: world.stranger })).rejects.toMatchObject({ code: 'not-found' })
     await expect(load(read('pge-e19-2019.urdb.json'), { db: world.electrician })).rejects.toMatchObject({ code: 'forbidden' })
+  })
+})
+
+describe('exportTariff', () => {
+  it('gives back the record of each version by its first day, and of the one in force', async () => {
+    const property = (await findProperty(world.landlord, world.building.propertyId))!
+    const { effectiveFrom, record } = await exportTariff(world.landlord, { property, from: null, nowMs: NOW_MS })
+    expect(record).toHaveProperty('energyratestructure')
+    const again = await exportTariff(world.landlord, { property, from: effectiveFrom, nowMs: NOW_MS })
+    expect(again.record).toEqual(record)
+    await expect(exportTariff(world.landlord, { property, from: '1999-01-01', nowMs: NOW_MS })).rejects.toMatchObject({ code: 'not-found' })
+    await expect(exportTariff(world.tenant, { property, from: null, nowMs: NOW_MS })).rejects.toMatchObject({ code: 'forbidden' })
   })
 })

@@ -27,22 +27,62 @@ function piecesOf({ startsAtMs, slotMin, energyKwh }: LoadSeries): readonly Load
   }))
 }
 
-export function costOf(tariff: Tariff | PreparedTariff, load: LoadSeries | readonly LoadPiece[]): CostOutcome {
-  const { bandAt } = asPrepared(tariff)
+/** What one stretch of a price line costs; times in the caller's unit. */
+interface Band {
+  readonly endsAt: number
+  readonly priceMinorPerKwh: number
+  readonly onPeak: boolean
+}
+interface Stretch {
+  readonly startsAt: number
+  readonly endsAt: number
+  readonly powerW: number
+}
+interface Along {
+  /** `null`: no price from here on. */
+  readonly bandAt: (at: number) => Band | null
+  readonly unitsPerHour: number
+}
+
+/** Sums power along a line of prices, split exactly at its boundaries; stops where there is no price and says where. */
+export function costAlong(
+  stretches: readonly Stretch[],
+  { bandAt, unitsPerHour }: Along,
+): { readonly costMinor: number; readonly energyKwh: number; readonly peakKwh: number; readonly unpricedAt: number | null } {
   let costMinor = 0
   let energyKwh = 0
   let peakKwh = 0
-  for (const { startsAtMs, endsAtMs, powerW } of 'slotMin' in load ? piecesOf(load) : load) {
-    for (let atMs = startsAtMs; atMs < endsAtMs;) {
-      const band = bandAt(atMs)
-      if (band.price.status !== 'priced') return band.price
-      const untilMs = Math.min(band.endsAtMs, endsAtMs)
-      const kwh = (powerW / 1_000) * ((untilMs - atMs) / MS_PER_HOUR)
-      costMinor += kwh * band.price.priceMinorPerKwh
+  for (const { startsAt, endsAt, powerW } of stretches) {
+    for (let at = startsAt; at < endsAt - 1e-9;) {
+      const band = bandAt(at)
+      if (!band) return { costMinor, energyKwh, peakKwh, unpricedAt: at }
+      const until = Math.min(band.endsAt, endsAt)
+      const kwh = (powerW / 1_000) * ((until - at) / unitsPerHour)
+      costMinor += kwh * band.priceMinorPerKwh
       energyKwh += kwh
       if (band.onPeak) peakKwh += kwh
-      atMs = untilMs
+      at = until
     }
+  }
+  return { costMinor, energyKwh, peakKwh, unpricedAt: null }
+}
+
+export function costOf(tariff: Tariff | PreparedTariff, load: LoadSeries | readonly LoadPiece[]): CostOutcome {
+  const { bandAt } = asPrepared(tariff)
+  const pieces = 'slotMin' in load ? piecesOf(load) : load
+  const { costMinor, energyKwh, peakKwh, unpricedAt } = costAlong(
+    pieces.map(({ startsAtMs, endsAtMs, powerW }) => ({ startsAt: startsAtMs, endsAt: endsAtMs, powerW })),
+    {
+      unitsPerHour: MS_PER_HOUR,
+      bandAt: (atMs) => {
+        const { price, endsAtMs, onPeak } = bandAt(atMs)
+        return price.status === 'priced' ? { endsAt: endsAtMs, priceMinorPerKwh: price.priceMinorPerKwh, onPeak } : null
+      },
+    },
+  )
+  if (unpricedAt !== null) {
+    const { price } = bandAt(unpricedAt)
+    if (price.status !== 'priced') return price
   }
   return { status: 'costed', costMinor, amountMinor: roundMinor(costMinor), energyKwh, peakKwh }
 }

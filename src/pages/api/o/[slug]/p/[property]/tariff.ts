@@ -1,14 +1,15 @@
-/** `GET`: the rate record in force, as it was imported. */
+/** `GET`: a version of the tariff as an open rate record; `?from=` names its first day, without it the one in force. */
 import { apiRoute } from '#lib/http/api-route.ts'
-import { notFound } from '#lib/http/app-error.ts'
+import { exportTariff } from '#lib/tariff/export-tariff.server.ts'
 import { openProperty } from '#lib/property/open-property.server.ts'
-import { loadTariff } from '#lib/tariff/load-tariff.server.ts'
 
-export const GET = apiRoute(async ({ db, params, nowMs }) => {
+export const GET = apiRoute(async ({ db, params, query, nowMs }) => {
   const property = await openProperty(db, params.property)
-  const tariff = await loadTariff(db, property, nowMs)
-  if (!tariff?.record) throw notFound('rate record')
-  return new Response(JSON.stringify(tariff.record, null, 1), {
-    headers: { 'content-type': 'application/json', 'content-disposition': `attachment; filename="${property.slug}-tariff.json"` },
+  const { effectiveFrom, record } = await exportTariff(db, { property, from: query.get('from'), nowMs })
+  return new Response(JSON.stringify(record, null, 1), {
+    headers: {
+      'content-type': 'application/json',
+      'content-disposition': `attachment; filename="${property.slug}-tariff-${effectiveFrom}.json"`,
+    },
   })
 })
