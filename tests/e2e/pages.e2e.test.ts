@@ -18,6 +18,7 @@ const PAGES = [
       `${HOUSE}/calendar`,
       `${HOUSE}/units`,
       `${HOUSE}/units/5C`,
+      `${HOUSE}/clock-change`,
       `${HOUSE}/units/4B/hardware`,
       `${HOUSE}/units/import`,
       `${HOUSE}/clock-change?outage=200`,

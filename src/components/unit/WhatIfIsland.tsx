@@ -1,5 +1,5 @@
 /** Tries a change on a unit: readiness, cost and hygiene at once, computed in the browser by the core of the nightly evaluation. Saves nothing. */
-import { useDeferredValue, useId, useMemo, useState } from 'react'
+import { useDeferredValue, useEffect, useId, useMemo, useState } from 'react'
 import { answerOf, type Change, changed, NO_CHANGE, type UnitModel } from '#lib/unit/model.ts'
 import { outlookWords } from '#lib/unit/outlook-words.ts'
 import { compare, type TryField, tryFields } from '#lib/unit/what-if.ts'
@@ -23,6 +23,9 @@ export function WhatIfIsland({ model, firstDay, recordHref }: Props) {
     ),
   )
   const [turn, setTurn] = useState(0)
+  // What is typed before the script has taken over would be lost, so nothing can be typed until then.
+  const [ready, setReady] = useState(false)
+  useEffect(() => setReady(true), [])
   const dayId = useId()
   const fields = useMemo(() => tryFields(model), [model])
   const now = useMemo(() => answerOf(model), [model])
@@ -39,7 +42,8 @@ export function WhatIfIsland({ model, firstDay, recordHref }: Props) {
   }
   return (
     <div className="flex flex-col gap-5">
-      <form className="grid gap-4 sm:grid-cols-3" onSubmit={(event) => event.preventDefault()}>
+      <fieldset disabled={!ready} className="grid gap-4 sm:grid-cols-3">
+        <legend className="sr-only">What to try</legend>
         {fields.map((field) => (
           <TryNumber
             // Going back to what is installed makes the fields anew.
@@ -48,7 +52,7 @@ export function WhatIfIsland({ model, firstDay, recordHref }: Props) {
             onChange={(value) => setChange((before) => ({ ...before, [field.name]: value }))}
           />
         ))}
-      </form>
+      </fieldset>
       <p className="flex flex-wrap items-end gap-4">
         <label htmlFor={dayId} className="flex flex-col gap-1">
           <span className="font-bold">Day shown</span>
