@@ -148,16 +148,6 @@ export async function listUnitEvaluations(db: OrgDb, unitId: UnitId, fromDay: st
   return rows.map(toEvaluation)
 }
 
-/** The newest evaluation of a property, to say how old the figures are; `null` when there is none. */
-export async function lastEvaluatedAtMs(db: OrgDb, propertyId: PropertyId): Promise<number | null> {
-  const row = await db
-    .selectFrom('evaluation')
-    .where('evaluation.property_id', '=', propertyId)
-    .select((eb) => eb.fn.max('evaluation.evaluated_at_ms').as('at_ms'))
-    .executeTakeFirst()
-  return row?.at_ms ?? null
-}
-
 /** Writes the evaluation of a unit and day, in the place of an earlier one. */
 export async function putEvaluation(db: OrgTrx, value: NewEvaluation): Promise<void> {
   const columns = toColumns(value)

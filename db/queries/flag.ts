@@ -84,16 +84,6 @@ export async function listOpenFlags(
   return rows.map(toFlag)
 }
 
-export async function countOpenFlags(db: OrgDb, propertyId: PropertyId): Promise<number> {
-  const row = await db
-    .selectFrom('flag')
-    .where('flag.property_id', '=', propertyId)
-    .where('flag.closed_at_ms', 'is', null)
-    .select((eb) => eb.fn.countAll<number>().as('count'))
-    .executeTakeFirst()
-  return row?.count ?? 0
-}
-
 /** Closed flags of a property or unit, last closed first. */
 export async function listClosedFlags(
   db: OrgDb,

@@ -37,8 +37,5 @@ export function formatDuration(durationMin: number): string {
 }
 
 export const formatEnergy = (energyKwh: number): string => `${energyKwh.toFixed(energyKwh < 100 ? 1 : 0)} kWh`
-export const formatTemperature = (temperatureC: number, measure: 'metric' | 'us'): string =>
-  measure === 'us' ? `${Math.round((temperatureC * 9) / 5 + 32)} °F` : `${Math.round(temperatureC)} °C`
-
 /** "1 unit", "3 units". */
 export const counted = (count: number, one: string, many = `${one}s`): string => `${count} ${count === 1 ? one : many}`

@@ -10,7 +10,6 @@ export const L_PER_US_GAL = 3.785411784
 export const W_PER_K_PER_BTU_PER_H_F = 0.527_528
 
 export const kwhFromJ = (energyJ: number): number => energyJ / J_PER_KWH
-export const jFromKwh = (energyKwh: number): number => energyKwh * J_PER_KWH
 export const cFromF = (temperatureF: number): number => ((temperatureF - 32) * 5) / 9
 export const fFromC = (temperatureC: number): number => (temperatureC * 9) / 5 + 32
 export const lFromUsGal = (volumeUsGal: number): number => volumeUsGal * L_PER_US_GAL

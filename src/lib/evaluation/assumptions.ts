@@ -5,7 +5,8 @@ import type { DurationOutcome } from '#lib/core/controller/types.ts'
 import { SHARE_ABOVE_UPPER_FRACTION } from '#lib/core/tank/defaults.ts'
 import { lossWPerK } from '#lib/core/tank/loss.ts'
 import { actualVolumeL, tankPowerW } from '#lib/core/tank/model.ts'
-import { fFromC, usGalFromL } from '#lib/core/units.ts'
+import { recoveryGalPerH } from '#lib/core/tank/recovery.ts'
+import { fFromC, lFromUsGal, usGalFromL } from '#lib/core/units.ts'
 import { clockOffsetMin } from './unit-day.ts'
 import type { DayContext, Site, UnitHardware } from './types.ts'
 
@@ -33,6 +34,7 @@ export function assumptionsOf({ site, context, hardware, duration }: Given): rea
     { name: 'Set point', value: bothC(tank.setPointC), from: 'entered' },
     { name: 'Supply voltage', value: `${site.supplyVoltageV} V`, from: 'entered' },
     { name: 'Element power at that voltage', value: `${Math.round(tankPowerW(tank, site.supplyVoltageV))} W`, from: 'computed' },
+    { name: 'Recovery', value: recoverySaid(tankPowerW(tank, site.supplyVoltageV), tank.setPointC - context.inletC), from: 'computed' },
     {
       name: 'Standing loss',
       value: `${lossWPerK(tank.loss, volumeL).toFixed(2)} W/K`,
@@ -48,6 +50,13 @@ export function assumptionsOf({ site, context, hardware, duration }: Given): rea
     ...runAssumptions({ site, context, hardware, duration }),
   ]
 }
+
+/** The trade's recovery rate at this supply, through the rise from today's cold water to the set point. */
+const recoverySaid = (powerW: number, riseK: number): string =>
+  riseK <= 0
+    ? 'none needed'
+    : `${Math.round(lFromUsGal(recoveryGalPerH({ powerW, riseF: riseK * F_PER_K })))} L/h through ${Math.round(riseK)} K`
+const F_PER_K = 9 / 5
 
 function runAssumptions({ site, context, hardware, duration }: Given): readonly Assumption[] {
   const { controller } = hardware.installation

@@ -1,6 +1,6 @@
 /** The load that a month's bill is previewed with, by arithmetic: nothing is lost or doubled, on months of clock changes too. */
 import { describe, expect, it } from 'vitest'
-import type { UnitId } from '#db/ids.ts'
+import { newId, type UnitId } from '#db/ids.ts'
 import { billMonth } from '#lib/core/tariff/bill.ts'
 import { readUrdb } from '#lib/core/tariff/urdb-import.ts'
 import { instantOf } from '#lib/core/time/civil.ts'
@@ -9,7 +9,7 @@ import { billView } from '#lib/tariff/bill-view.ts'
 import { monthLoad } from '#lib/tariff/month-load.ts'
 
 const zone = 'America/Los_Angeles'
-const unitId = 'unit' as UnitId
+const unitId = newId<UnitId>()
 const HOUR_MS = 3_600_000
 /** A run at 06:30 on each day of the week from Monday 2 November 2026, an hour of 4 kW of which 3 kWh are taken. */
 const days = ['02', '03', '04', '05', '06', '07', '08'].map((date) => `2026-11-${date}`)

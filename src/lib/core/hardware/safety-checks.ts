@@ -1,10 +1,14 @@
 /** The checks that are answered by looking: isolator, relief valve, mixing valve, expansion, separation of low voltage. */
+import { actualVolumeL } from '../tank/model.ts'
+import { expansionL } from '../tank/water.ts'
 import type { RuleProfile } from './profiles/profile.ts'
 import type { Check, Installation } from './types.ts'
 import { check } from './verdict.ts'
 
 /** CPSC and DOE advise 120 °F at the tap; above it a mixing valve is called for. */
 const SCALD_SET_POINT_C = 49
+/** What a tank is filled with, for saying how much it grows. */
+const COLD_C = 15
 const VALVE_CAUTION = 'Never bypass a thermostat, high-limit or relief valve.'
 
 interface Seen {
@@ -86,9 +90,9 @@ export function safetyChecks({ load, circuit }: Installation, profile: RuleProfi
             title: 'Expansion vessel',
             seen: circuit.expansionVessel,
             limit: 'fitted in a closed system',
-            clause: 'Water expands 1.6 % from 15 to 60 °C (IAPWS-95); common practice, no source',
+            clause: 'Density of water (Kell 1975, checked against IAPWS-95); common practice, no source',
             confirm: false,
-            missing: 'Each heating pushes litres out: fit an expansion vessel.',
+            missing: `Each heating from ${COLD_C} °C pushes ${expansionL(actualVolumeL(load.tank), { fromC: COLD_C, toC: setPointC }).toFixed(1)} L out: fit an expansion vessel.`,
             caution: VALVE_CAUTION,
           }),
         ]

@@ -2,8 +2,6 @@
 
 /** Bases of the dimensions; Halton's points are even in as many as there are small primes. */
 const PRIMES = [2, 3, 5, 7, 11, 13] as const
-export const MOST_DIMENSIONS = PRIMES.length
-
 /** `count` points in [0, 1)^dimensions; the same seed gives the same points. */
 export function lowDiscrepancy(
   seed: number,

@@ -70,10 +70,6 @@ function firstInstantOf(day: Day, zone: Zone): number {
   return clockChangesIn({ startsAtMs: atMs - MS_PER_DAY, endsAtMs: atMs + 1 }, zone).at(-1)?.atMs ?? atMs
 }
 
-/** Instant of a minute counted in elapsed time from the day's first instant. */
-export const instantAtElapsed = (day: Day, elapsedMin: number, zone: Zone): number =>
-  dayBounds(day, zone).startsAtMs + elapsedMin * MS_PER_MIN
-
 /** Elapsed minutes from the day's first instant to a wall-clock minute of it. */
 export const elapsedOf = (day: Day, minuteOfDay: number, zone: Zone): number =>
   (instantOf(day, minuteOfDay, zone) - dayBounds(day, zone).startsAtMs) / MS_PER_MIN
