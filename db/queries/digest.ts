@@ -31,13 +31,19 @@ export interface DigestFigures {
   readonly daysInMonth: number
   readonly energyKwh: number
   readonly peakKwh: number
-  /** `null`: no tariff was in force. */
+  /** Of the unit-days that have a price; `null`: no tariff was in force. */
   readonly costMinor: number | null
+  readonly pricedUnitDays?: number
+  readonly computedUnitDays?: number
   readonly baselineEnergyKwh: number
   readonly baselineCostMinor: number | null
+  /** Baseline energy of the unit-days that have a price: what `baselineCostMinor` pays for. */
+  readonly pricedBaselineKwh?: number
   /** Always on less as run, over unit-days that were warm on time: what a cold shower did not get is not a saving. */
   readonly savedKwh?: number
   readonly savedMinor?: number | null
+  /** Of `savedKwh`, what `savedMinor` is for. */
+  readonly pricedSavedKwh?: number
   /** In order; the sums of the days are the totals above. */
   readonly days: readonly DigestDay[]
   /** Open at the start + raised − closed = open at the end. */

@@ -39,8 +39,9 @@ export function monthFigures(one: MonthCase): DigestFigures {
       warmUnits: warm.filter((evaluation) => evaluation.day === day).length,
     }
   })
-  const costs = computed.map((row) => row.costMinor)
-  const baselines = computed.map((row) => row.baselineCostMinor)
+  // A unit-day without a price keeps its energy and is counted as such; it does not take the month's cost away.
+  const priced = computed.filter(isPriced)
+  const warmPriced = warm.filter(isPriced)
   const openAt = (atMs: number) => flags.filter((flag) => flag.openedAtMs < atMs && (!flag.closed || flag.closed.atMs >= atMs))
   const openAtEnd = openAt(interval.endsAtMs)
   const done = visits.filter((visit) => visit.state === 'done' && within(visit.doneAtMs))
@@ -56,13 +57,15 @@ export function monthFigures(one: MonthCase): DigestFigures {
     // The total is the sum of the rounded days, so that the parts shown add up to it.
     energyKwh: round(sum(days, (day) => day.energyKwh)),
     peakKwh: round(sum(days, (day) => day.peakKwh)),
-    costMinor: costs.length > 0 && costs.every((cost) => cost !== null) ? sum(costs, (cost) => cost ?? 0) : null,
+    costMinor: priced.length > 0 ? sum(priced, (row) => row.costMinor) : null,
+    pricedUnitDays: priced.length,
+    computedUnitDays: computed.length,
     baselineEnergyKwh: round(sum(computed, (row) => row.baselineEnergyKwh)),
-    baselineCostMinor: baselines.length > 0 && baselines.every((cost) => cost !== null) ? sum(baselines, (cost) => cost ?? 0) : null,
+    baselineCostMinor: priced.length > 0 ? sum(priced, (row) => row.baselineCostMinor) : null,
+    pricedBaselineKwh: round(sum(priced, (row) => row.baselineEnergyKwh)),
     savedKwh: round(sum(warm, (row) => row.baselineEnergyKwh - row.energyInKwh)),
-    savedMinor: warm.some((row) => row.costMinor === null || row.baselineCostMinor === null)
-      ? null
-      : sum(warm, (row) => (row.baselineCostMinor ?? 0) - (row.costMinor ?? 0)),
+    savedMinor: warmPriced.length === 0 && warm.length > 0 ? null : sum(warmPriced, (row) => row.baselineCostMinor - row.costMinor),
+    pricedSavedKwh: round(sum(warmPriced, (row) => row.baselineEnergyKwh - row.energyInKwh)),
     days,
     flagsOpenAtStart: openAt(interval.startsAtMs).length,
     flagsRaised: flags.filter((flag) => within(flag.openedAtMs)).length,
@@ -80,6 +83,9 @@ export function monthFigures(one: MonthCase): DigestFigures {
     feedbackCold: one.feedback.cold,
   }
 }
+
+const isPriced = (row: Evaluation): row is Evaluation & { readonly costMinor: number; readonly baselineCostMinor: number } =>
+  row.costMinor !== null && row.baselineCostMinor !== null
 
 const visitList = <T extends { readonly unitCode: string }>(
   visits: readonly T[],

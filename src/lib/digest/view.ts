@@ -38,6 +38,7 @@ export function digestView(figures: DigestFigures, month: string): DigestView {
       ...(figures.daysCovered < figures.daysInMonth
         ? [`${figures.daysCovered} of ${figures.daysInMonth} days of ${monthName(month)} are covered; the others were not evaluated.`]
         : []),
+      ...unpricedWords(figures),
       'Figures are computed from what is installed and when people shower, not metered. Demand and fixed charges are not in them.',
     ],
   }
@@ -62,6 +63,14 @@ function linesOf(figures: DigestFigures): DigestView['lines'] {
   ]
 }
 
+function unpricedWords({ costMinor, pricedUnitDays, computedUnitDays }: DigestFigures): readonly string[] {
+  if (costMinor === null || pricedUnitDays === undefined || computedUnitDays === undefined || pricedUnitDays === computedUnitDays) return []
+  const missing = computedUnitDays - pricedUnitDays
+  return [
+    `No price was in force for ${missing} of ${counted(computedUnitDays, 'unit-day')}: their energy is in the figures, their cost is not.`,
+  ]
+}
+
 /** Unit codes and days: what an owner may know of a visit. */
 function visitWords(label: string, visits: readonly DigestVisit[] | undefined): readonly string[] {
   if (!visits || visits.length === 0) return []
@@ -83,8 +92,11 @@ const rangeOf = (savedKwh: number): string =>
   `from ${(savedKwh * SAVING_RANGE.low).toFixed(0)} to ${(savedKwh * SAVING_RANGE.high).toFixed(0)} kWh`
 
 /** Money saved is energy saved and hours moved; only the first is as uncertain as the losses, at the baseline's mean price. */
-function moneyWords({ savedKwh = 0, savedMinor = null, baselineCostMinor, baselineEnergyKwh, currency }: DigestFigures): string {
+function moneyWords(figures: DigestFigures): string {
+  const { savedMinor = null, baselineCostMinor, currency } = figures
   if (savedMinor === null) return ''
+  const savedKwh = figures.pricedSavedKwh ?? figures.savedKwh ?? 0
+  const baselineEnergyKwh = figures.pricedBaselineKwh ?? figures.baselineEnergyKwh
   const signed = (minor: number) => `${formatMoney(Math.round(Math.abs(minor)), currency)} ${minor < 0 ? 'more' : 'less'}`
   const priceMinorPerKwh = baselineCostMinor === null || baselineEnergyKwh <= 0 ? null : baselineCostMinor / baselineEnergyKwh
   if (priceMinorPerKwh === null || savedKwh <= 0) return `; at the tariff ${signed(savedMinor)}`

@@ -5,6 +5,7 @@ import type { MeasuredDuration } from '#lib/core/controller/types.ts'
 import type { Installation, ProfileId } from '#lib/core/hardware/types.ts'
 import type { HygienePolicyId } from '#lib/core/hygiene/types.ts'
 import type { InletClimate, Readiness } from '#lib/core/tank/types.ts'
+import type { PriceBand } from '#lib/core/tariff/price.ts'
 import type { Tariff } from '#lib/core/tariff/types.ts'
 import type { Day, MinuteInterval, Weekday, Zone } from '#lib/core/time/types.ts'
 import type { Preference } from '#db/queries/preference.ts'
@@ -36,13 +37,8 @@ export interface DayContext {
   readonly prices: PriceTable | null
 }
 
-/** Prices of equal slots of elapsed time, from the evening before to the end of the day. */
-export interface PriceTable {
-  readonly fromMin: number
-  readonly slotMin: number
-  readonly priceMinorPerKwh: readonly number[]
-  readonly onPeak: readonly boolean[]
-}
+/** Price bands from the day before to the morning after; their instants are milliseconds from the day's first. Plain data for the browser. */
+export type PriceTable = readonly PriceBand[]
 
 export interface UnitHardware {
   readonly recordId: HardwareRecordId

@@ -126,10 +126,8 @@ function dayCost(heater: Heater, weekday: number, { heating }: Readiness): DayCo
   const index = heater.days[weekday]?.table ?? null
   const table = index === null ? undefined : heater.tables[index]
   if (!table) return null
-  const { costMinor } = energyCost(heating, table)
-  const onPeak = table.priceMinorPerKwh.map((price, slot) => (table.onPeak[slot] ? price : 0))
-  const peak = energyCost(heating, { ...table, priceMinorPerKwh: onPeak })
-  return costMinor === null || peak.costMinor === null ? null : { costMinor, peakMinor: peak.costMinor }
+  const { costMinor, peakMinor } = energyCost(heating, table)
+  return costMinor === null ? null : { costMinor, peakMinor }
 }
 
 function costWords(heater: Heater, one: DayCase, cost: DayCost | null): string {

@@ -125,6 +125,16 @@ describe('readUrdb', () => {
     ['energyratestructure[0][0].rate', { energyratestructure: [[{ rate: '0.05' }]] }],
     ['energyratestructure[0][0].unit', { energyratestructure: [[{ rate: 0.05, unit: 'MWh' }]] }],
     ['energyratestructure[0][1].max', { energyratestructure: [[{ max: 300, rate: 0.1 }, { max: 200, rate: 0.2 }, { rate: 0.3 }]] }],
+    // Charges and bounds that are there and cannot be read would be missing from every bill.
+    ['fixedchargefirstmeter', { fixedchargefirstmeter: '12' }],
+    ['fixedmonthlycharge', { fixedmonthlycharge: '12' }],
+    ['mincharge', { mincharge: '3' }],
+    ['annualmincharge', { annualmincharge: '100' }],
+    ['annualmincharge', { annualmincharge: -100 }],
+    ['energyratestructure[0][0].max', { energyratestructure: [[{ max: '300', rate: 0.1 }, { rate: 0.2 }]] }],
+    ['energyratestructure[0][0].max', { energyratestructure: [[{ rate: 0.1 }, { rate: 0.2 }]] }],
+    // Steps of 8 minutes and 34.3 seconds.
+    ['energyweekdayschedule', { energyweekdayschedule: Array.from({ length: 12 }, () => Array(168).fill(0)) }],
     [
       'energyratestructure[0].unit',
       { energyratestructure: [[{ max: 300, rate: 0.1, unit: 'kWh' }, { max: 400, rate: 0.2, unit: 'kWh/kW' }, { rate: 0.3 }]] },

@@ -1,6 +1,7 @@
 /** A month's figures, words and drawings: parts that add up in months of every length, and no saving without its range. */
 import { beforeEach, describe, expect, it } from 'vitest'
 import { type DigestFigures, findLastEdition } from '#db/queries/digest.ts'
+import type { Evaluation } from '#db/queries/evaluation.ts'
 import { listFlagsTouched } from '#db/queries/flag.ts'
 import { monthBounds } from '#lib/core/time/civil.ts'
 import { energyChartSvg, THEME, unitsChartSvg } from '#lib/digest/chart.ts'
@@ -68,6 +69,27 @@ describe('monthFigures over flags and visits', () => {
       ...over,
     })
 
+  it('keeps the cost of a month in which one unit-day has no price, and says so', () => {
+    const evaluation = (costMinor: number | null): Evaluation =>
+      ({
+        status: 'ready',
+        day: '2026-03-02',
+        unitId: 'a',
+        energyInKwh: 5,
+        peakKwh: 1,
+        costMinor,
+        baselineEnergyKwh: 6,
+        baselineCostMinor: costMinor === null ? null : 150,
+        shortfallMin: 0,
+      }) as unknown as Evaluation
+    const month = figures({ evaluations: [evaluation(100), evaluation(null), evaluation(120)] })
+    // The figures' own sums: 100 + 120, 2 × 150; savings in money for two of the three, in energy for all.
+    expect(month).toMatchObject({ costMinor: 220, baselineCostMinor: 300, energyKwh: 15, savedKwh: 3, savedMinor: 80, pricedSavedKwh: 2 })
+    expect(digestView(month, '2026-03').paragraphs).toContain(
+      'No price was in force for 1 of 3 unit-days: their energy is in the figures, their cost is not.',
+    )
+    expect(figures({ evaluations: [evaluation(null)] }).costMinor).toBeNull()
+  })
   it('balances flags: open at the start + raised − closed = open at the end, both ends half-open', () => {
     const month = figures({
       flags: [
@@ -115,7 +137,8 @@ describe('digestView', () => {
     await write()
     const figures = (await edition())?.figures
     if (!figures) throw new Error('no digest')
-    const saved: DigestFigures = { ...figures, savedKwh: 100, savedMinor: 3_000, baselineEnergyKwh: 1_000, baselineCostMinor: 20_000 }
+    const every = { savedKwh: 100, pricedSavedKwh: 100, baselineEnergyKwh: 1_000, pricedBaselineKwh: 1_000 }
+    const saved: DigestFigures = { ...figures, ...every, savedMinor: 3_000, baselineCostMinor: 20_000 }
     // 100 kWh at the baseline's mean 20p is £20 of the £30; losses between none and twice move the money by £20 either way.
     expect(digestView(saved, '2026-12').saving).toContain(
       '100.0 kWh less (from 0 to 200 kWh); at the tariff £30.00 less (from £10.00 less to £50.00 less)',

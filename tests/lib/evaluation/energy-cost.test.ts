@@ -1,4 +1,4 @@
-/** The table of prices against the core's own instant-by-instant cost, and against a sum done by hand. */
+/** Heating in minutes of a day against the core's cost at instants, and against a sum done by hand. */
 import fc from 'fast-check'
 import { describe, expect, it } from 'vitest'
 import { costOf } from '#lib/core/tariff/cost.ts'
@@ -17,8 +17,8 @@ const climate = { kind: 'months', inletC: Array.from({ length: 12 }, () => 10) }
 describe('energyCost', () => {
   it('bills each side of a price boundary at its own price and rounds once', () => {
     const { prices } = dayContext({ zone, climate, tariff }, '2026-12-02')
-    // 06:30 to 07:30 at 4 kW: 2 kWh at 12.10 c and 2 kWh at 29.36 c are 82.92 c.
-    expect(energyCost([{ startMin: 390, endMin: 450, powerW: 4_000 }], prices)).toEqual({ costMinor: 83, peakKwh: 2 })
+    // 06:30 to 07:30 at 4 kW: 2 kWh at 12.10 c and 2 kWh at 29.36 c are 82.92 c, 58.72 c of them on-peak.
+    expect(energyCost([{ startMin: 390, endMin: 450, powerW: 4_000 }], prices)).toEqual({ costMinor: 83, peakKwh: 2, peakMinor: 59 })
   })
   it('agrees with the instant-by-instant cost, on clock-change days too', () => {
     const days = ['2026-12-02', '2026-12-05', '2026-03-08', '2026-11-01']
@@ -40,6 +40,14 @@ describe('energyCost', () => {
     )
   })
   it('has no cost without a tariff', () => {
-    expect(energyCost([{ startMin: 0, endMin: 60, powerW: 1_000 }], null)).toEqual({ costMinor: null, peakKwh: 0 })
+    expect(energyCost([{ startMin: 0, endMin: 60, powerW: 1_000 }], null)).toEqual({ costMinor: null, peakKwh: 0, peakMinor: 0 })
+  })
+  it('prices the first day of a tariff, and nothing that begins before it', () => {
+    const { prices } = dayContext(
+      { zone, climate, tariff: { zone, versions: [{ ...read.version, effectiveFrom: '2026-12-02' }] } },
+      '2026-12-02',
+    )
+    expect(energyCost([{ startMin: 390, endMin: 450, powerW: 4_000 }], prices).costMinor).toBe(83)
+    expect(energyCost([{ startMin: -30, endMin: 30, powerW: 4_000 }], prices).costMinor).toBeNull()
   })
 })

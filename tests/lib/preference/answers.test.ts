@@ -1,6 +1,7 @@
 /** The answer beside the form: the same as the night's evaluation, with what it costs on-peak and when it would cost less. */
 import { beforeAll, describe, expect, it } from 'vitest'
 import { findEvaluation } from '#db/queries/evaluation.ts'
+import type { PriceBand } from '#lib/core/tariff/price.ts'
 import { at, shower, week } from '#lib/demo/weeks.ts'
 import { answersOf, type Heater } from '#lib/preference/answers.ts'
 import { daysLabel } from '#lib/preference/form-fields.ts'
@@ -38,25 +39,30 @@ describe('answersOf', () => {
     expect(labels).toEqual(['Monday to Thursday', 'Friday', 'Saturday and Sunday'])
   })
   it('says what is on-peak, and a time at which it costs notably less and is warm', () => {
-    const [table] = heater.tables
-    if (!table) throw new Error('no tariff')
     // Dear from 06:00 to 08:00 and nothing else: the run before 07:30 lies in it, hours later none does.
-    const dear = table.priceMinorPerKwh.map((_, slot) => {
-      const minute = table.fromMin + slot * table.slotMin
-      return minute >= 360 && minute < 480 ? 50 : 10
+    const band = (fromHour: number, toHour: number, priceMinorPerKwh: number): PriceBand => ({
+      startsAtMs: fromHour * 3_600_000,
+      endsAtMs: toHour * 3_600_000,
+      price: { status: 'priced', priceMinorPerKwh, periodIndex: 0 },
+      onPeak: priceMinorPerKwh === 50,
     })
-    const tables = [{ ...table, priceMinorPerKwh: dear, onPeak: dear.map((price) => price === 50) }]
+    const tables = [[band(-24, 6, 10), band(6, 8, 50), band(8, 36, 10)]]
     const days = heater.days.map((day) => ({ ...day, table: 0 }))
     const wanted = week({ weekdays: [shower(at(7, 30), 1, 3)], weekend: [] })
     const [answer] = answersOf({ ...heater, tables, days }, wanted)
     expect(answer?.words).toMatch(/Costs about £0\.\d\d a day, £0\.\d\d of it on-peak\. At \d\d:\d\d instead: £0\.\d\d\./)
-    const cheap = [{ ...table, priceMinorPerKwh: dear.map(() => 10), onPeak: dear.map(() => false) }]
+    const cheap = [[band(-24, 36, 10)]]
     expect(answersOf({ ...heater, tables: cheap, days }, wanted)[0]?.words).toMatch(/none of it on-peak\.$/)
   })
   it('joins days whose cost differs by less than a tenth, and keeps a weekend apart that costs notably less', () => {
-    const [table] = heater.tables
-    if (!table) throw new Error('no tariff')
-    const priced = (priceMinorPerKwh: number) => ({ ...table, priceMinorPerKwh: table.priceMinorPerKwh.map(() => priceMinorPerKwh) })
+    const priced = (priceMinorPerKwh: number): readonly PriceBand[] => [
+      {
+        startsAtMs: -24 * 3_600_000,
+        endsAtMs: 36 * 3_600_000,
+        price: { status: 'priced', priceMinorPerKwh, periodIndex: 0 },
+        onPeak: false,
+      },
+    ]
     const labels = (weekendPrice: number) => {
       const days = heater.days.map((day, weekday) => ({ ...day, table: weekday < 5 ? 0 : 1 }))
       const every = [shower(at(7), 1, 3)]

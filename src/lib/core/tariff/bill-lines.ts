@@ -4,7 +4,7 @@ import { roundMinor } from './money.ts'
 import { demandGrid, energyGrid, monthIndexOf, scheduleBands } from './schedule.ts'
 import { cutDemand, cutEnergy, type TierCut } from './tiers.ts'
 import type { BillLine, LoadSeries, Tariff, TariffVersion } from './types.ts'
-import { demandWindows, energyByPeriod, meanKw, peakByPeriod, peakKw } from './usage.ts'
+import { demandStretches, energyByPeriod, meanKw, peakByPeriod, peakKw } from './usage.ts'
 
 /** Consecutive days of one month under one version. Bounds, fixed and demand charges are cut to its share of the month's days. */
 export interface BillPart {
@@ -31,11 +31,11 @@ export function lineOf(line: Omit<BillLine, 'exactMinor' | 'amountMinor'>): Bill
 
 export function partLines(part: BillPart, input: PartInput): readonly BillLine[] {
   const { version, interval } = part
-  const windows = demandWindows(input.load, interval, { windowMin: version.demandWindowMin, zone: input.tariff.zone })
+  const stretches = demandStretches(input.load, interval, { windowMin: version.demandWindowMin, zone: input.tariff.zone })
   const lines = [
-    ...energyLines(part, input, peakKw(windows)),
-    ...flatDemandLines(part, Math.max(peakKw(windows), input.leastKw)),
-    ...periodDemandLines(part, peakByPeriod(windows, scheduleBands(input.tariff, interval, demandGrid))),
+    ...energyLines(part, input, peakKw(stretches)),
+    ...flatDemandLines(part, Math.max(peakKw(stretches), input.leastKw)),
+    ...periodDemandLines(part, peakByPeriod(stretches, scheduleBands(input.tariff, interval, demandGrid))),
     ...coincidentLines(part, input.load),
     ...fixedLines(part),
   ]
@@ -50,7 +50,14 @@ function energyLines(part: BillPart, { tariff, load }: PartInput, peak: number):
   const lines = [...byPeriod].flatMap(([periodIndex, periodKwh]) =>
     cutEnergy(version.energyPeriods[periodIndex] ?? [], periodKwh, { totalKwh, basis })
       .filter(({ quantity }) => quantity > 0)
-      .map((cut) => cutLine(cut, { kind: 'energy', label: `Energy, period ${periodIndex}`, unit: 'kWh', periodIndex })),
+      .map((cut) =>
+        cutLine(cut, {
+          kind: 'energy',
+          label: `Energy, ${version.periodNames?.[periodIndex] ?? `period ${periodIndex}`}`,
+          unit: 'kWh',
+          periodIndex,
+        }),
+      ),
   )
   const fuel = version.fuelAdjustmentMinorPerKwh?.[monthIndexOf(firstDay)] ?? 0
   if (fuel === 0 || totalKwh === 0) return lines
@@ -79,7 +86,16 @@ function periodDemandLines(
     cutDemand(periodDemand.tiersByPeriod[periodIndex] ?? [], peak)
       .filter(({ quantity, priceMinor }) => quantity > 0 && priceMinor !== 0)
       .map((cut) =>
-        cutLine(cut, { kind: 'period-demand', label: `Demand, period ${periodIndex}`, unit: 'kW', periodIndex }, days / daysInMonth),
+        cutLine(
+          cut,
+          {
+            kind: 'period-demand',
+            label: `Demand, ${periodDemand.periodNames?.[periodIndex] ?? `period ${periodIndex}`}`,
+            unit: 'kW',
+            periodIndex,
+          },
+          days / daysInMonth,
+        ),
       ),
   )
 }

@@ -7,17 +7,20 @@ import type { Day, MsInterval } from '../time/types.ts'
 import { type BillPart, partLines, topUp } from './bill-lines.ts'
 import { versionOn } from './schedule.ts'
 import type { Bill, BillLine, LoadSeries, Tariff, TariffVersion } from './types.ts'
-import { demandWindows, loadEndMs, peakKw } from './usage.ts'
+import { demandStretches, loadEndMs, peakKw } from './usage.ts'
 
 /** `month` is `YYYY-MM`. Readings before it are used where the tariff looks back. */
 export function billMonth(tariff: Tariff, month: string, load: LoadSeries): Bill {
   const interval = monthBounds(month, tariff.zone)
   const runs = versionRuns(tariff, month)
-  const notes: string[] = []
+  const notes = new Set<string>()
   const lines = runs.flatMap(({ version, ...part }) => {
     if (!version) return []
     const { leastKw, note } = lookBack(version, { tariff, month, load })
-    if (note) notes.push(note)
+    if (note) notes.add(note)
+    if (version.minimum?.per === 'year') notes.add('The minimum of the year is not in a month’s bill: it is settled with the year’s.')
+    if (hasUnreadPeakHours(version, { interval: part.interval, load }))
+      notes.add('The readings miss some of the hours of the system’s peak: demand at them may be higher.')
     return partLines({ version, ...part }, { tariff, load, leastKw })
   })
   const unbilled = runs
@@ -25,7 +28,7 @@ export function billMonth(tariff: Tariff, month: string, load: LoadSeries): Bill
     .map((run) => ({ interval: run.interval, reason: `No version of the tariff is in force from ${run.firstDay} for ${run.days} days.` }))
   const covered = intersect(interval, { startsAtMs: load.startsAtMs, endsAtMs: loadEndMs(load) })
   const coveredFraction = covered ? (covered.endsAtMs - covered.startsAtMs) / (interval.endsAtMs - interval.startsAtMs) : 0
-  return { interval, lines, totalMinor: totalOf(lines), unbilled, coveredFraction, notes }
+  return { interval, lines, totalMinor: totalOf(lines), unbilled, coveredFraction, notes: [...notes] }
 }
 
 export interface YearBill {
@@ -76,6 +79,17 @@ function versionRuns(tariff: Tariff, month: string): readonly (Omit<BillPart, 'v
   })
 }
 
+/** Whether hours that this part bills lie outside the readings. */
+const hasUnreadPeakHours = (
+  { coincidentDemand = [] }: TariffVersion,
+  { interval, load }: { readonly interval: MsInterval; readonly load: LoadSeries },
+) =>
+  coincidentDemand
+    .filter(
+      ({ hours }) => intersect(interval, { startsAtMs: Math.max(...hours.map((hour) => hour.startsAtMs)), endsAtMs: Infinity }) !== null,
+    )
+    .some(({ hours }) => hours.some((hour) => hour.startsAtMs < load.startsAtMs || hour.endsAtMs > loadEndMs(load)))
+
 /** The least demand that earlier months leave. What no reading tells is not invented: it is noted. */
 function lookBack(
   { lookback, demandWindowMin }: TariffVersion,
@@ -88,7 +102,7 @@ function lookBack(
     (one) => months.kind === 'range' || months.counts[Number(one.slice(5, 7)) - 1],
   )
   const peaks = earlier.map((one) =>
-    peakKw(demandWindows(load, monthBounds(one, tariff.zone), { windowMin: demandWindowMin, zone: tariff.zone })),
+    peakKw(demandStretches(load, monthBounds(one, tariff.zone), { windowMin: demandWindowMin, zone: tariff.zone })),
   )
   const unknown = earlier.filter((one) => monthBounds(one, tariff.zone).startsAtMs < load.startsAtMs)
   const note =

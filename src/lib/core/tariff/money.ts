@@ -6,5 +6,5 @@
  */
 export const decimal = (value: number): number => Number(value.toPrecision(12))
 
-/** Whole minor units, a half upwards. */
-export const roundMinor = (exactMinor: number): number => Math.round(decimal(exactMinor))
+/** Whole minor units, a half upwards; adding nothing turns a negative zero into zero. */
+export const roundMinor = (exactMinor: number): number => Math.round(decimal(exactMinor)) + 0

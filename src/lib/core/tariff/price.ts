@@ -4,7 +4,7 @@
  */
 import type { Day, MsInterval } from '../time/types.ts'
 import { MIN_PER_DAY, MS_PER_MIN } from '../units.ts'
-import { energyGrid, monthIndexOf, scheduleBands } from './schedule.ts'
+import { energyGrid, monthIndexOf, rowIndexOf, scheduleBands } from './schedule.ts'
 import type { PeakInterval, PriceOutcome, Tariff, TariffVersion } from './types.ts'
 
 export { versionOn } from './schedule.ts'
@@ -14,9 +14,8 @@ export interface PriceBand extends MsInterval {
   readonly price: PriceOutcome
   readonly onPeak: boolean
 }
-/** A tariff with its price bands worked out once a day of the calendar, for callers who ask millions of times. */
+/** Price bands worked out beforehand, for callers who ask millions of times. */
 export interface PreparedTariff {
-  readonly tariff: Tariff
   readonly bandAt: (instantMs: number) => PriceBand
 }
 
@@ -29,45 +28,60 @@ export function periodPrice(version: TariffVersion, periodIndex: number, day: Da
 }
 
 /**
- * The dearest price of a month's weekdays and weekends, or `null` where they have one price only. Special days are left out, so
- * that one critical day does not take the peak from all others.
+ * Prices above which an hour is on-peak, or at which it is too: the dearest price of the weekdays and weekends of a month or season.
+ * Special days are left out, so that one critical day does not take the peak from all others; on such a day itself a dearer hour is
+ * on-peak even where all other days have one price.
  */
-function dearestOfMonth(version: TariffVersion, day: Day): number | null {
-  const month = monthIndexOf(day)
-  const periods = new Set([...(version.weekdayGrid[month] ?? []), ...(version.weekendGrid[month] ?? [])])
+function peakRule(version: TariffVersion, day: Day): (priceMinorPerKwh: number) => boolean {
+  const row = rowIndexOf(version, day)
+  const periods = new Set([...(version.weekdayGrid[row] ?? []), ...(version.weekendGrid[row] ?? [])])
   const prices = [...periods].map((period) => periodPrice(version, period, day))
   const dearest = Math.max(...prices)
-  return prices.length > 0 && dearest > Math.min(...prices) ? dearest : null
+  return dearest > Math.min(...prices) ? (price) => price >= dearest : (price) => price > dearest
 }
 
-function bandsOf(tariff: Tariff, range: MsInterval): readonly PriceBand[] {
-  const dearestOn = new Map<Day, number | null>()
+/** Stretches of one period each that tile a range, unpriced ones too. */
+export function allBands(tariff: Tariff, range: MsInterval): readonly PriceBand[] {
+  const ruleOn = new Map<Day, ReturnType<typeof peakRule>>()
   return scheduleBands(tariff, range, energyGrid).map(({ startsAtMs, endsAtMs, day, version, periodIndex }) => {
     if (!version) {
       const reason = `No version of the tariff is in force on ${day}.`
       return { startsAtMs, endsAtMs, price: { status: 'no-version', reason }, onPeak: false }
     }
     const priceMinorPerKwh = periodPrice(version, periodIndex, day)
-    let dearest = dearestOn.get(day)
-    if (dearest === undefined) dearestOn.set(day, (dearest = dearestOfMonth(version, day)))
-    const onPeak = dearest !== null && priceMinorPerKwh >= dearest
-    return { startsAtMs, endsAtMs, price: { status: 'priced', priceMinorPerKwh, periodIndex }, onPeak }
+    let isPeak = ruleOn.get(day)
+    if (!isPeak) ruleOn.set(day, (isPeak = peakRule(version, day)))
+    return { startsAtMs, endsAtMs, price: { status: 'priced', priceMinorPerKwh, periodIndex }, onPeak: isPeak(priceMinorPerKwh) }
   })
 }
 
 export function prepareTariff(tariff: Tariff): PreparedTariff {
   const byUtcDay = new Map<number, readonly PriceBand[]>()
-  const bandAt = (instantMs: number): PriceBand => {
-    const utcDay = Math.floor(instantMs / MS_PER_DAY)
-    let bands = byUtcDay.get(utcDay)
-    if (!bands) {
-      bands = bandsOf(tariff, { startsAtMs: utcDay * MS_PER_DAY, endsAtMs: (utcDay + 1) * MS_PER_DAY })
-      byUtcDay.set(utcDay, bands)
-    }
-    for (const band of bands) if (instantMs < band.endsAtMs) return band
-    throw new RangeError(`The bands of a day end before ${instantMs}.`)
+  return {
+    bandAt: (instantMs) => {
+      const utcDay = Math.floor(instantMs / MS_PER_DAY)
+      let bands = byUtcDay.get(utcDay)
+      if (!bands) {
+        bands = allBands(tariff, { startsAtMs: utcDay * MS_PER_DAY, endsAtMs: (utcDay + 1) * MS_PER_DAY })
+        byUtcDay.set(utcDay, bands)
+      }
+      for (const band of bands) if (instantMs < band.endsAtMs) return band
+      throw new RangeError(`The bands of a day end before ${instantMs}.`)
+    },
   }
-  return { tariff, bandAt }
+}
+
+/** Bands that somebody else worked out, in order and without a gap; before and after them there is no price. */
+export function preparedBands(bands: readonly PriceBand[]): PreparedTariff {
+  const unknown = { status: 'no-version', reason: 'No price is known for this time.' } as const
+  const startsAtMs = bands[0]?.startsAtMs ?? Infinity
+  return {
+    bandAt: (instantMs) => {
+      if (instantMs < startsAtMs) return { startsAtMs: -Infinity, endsAtMs: startsAtMs, price: unknown, onPeak: false }
+      const band = bands.find((one) => instantMs < one.endsAtMs)
+      return band ?? { startsAtMs: bands.at(-1)?.endsAtMs ?? -Infinity, endsAtMs: Infinity, price: unknown, onPeak: false }
+    },
+  }
 }
 
 export const asPrepared = (tariff: Tariff | PreparedTariff): PreparedTariff => ('bandAt' in tariff ? tariff : prepareTariff(tariff))
@@ -98,7 +112,7 @@ export function priceBands(tariff: Tariff | PreparedTariff, range: MsInterval): 
   return bands
 }
 
-/** On-peak: the dearest price of its month, where the month has more than one; a weekend without it has no peak. Cut to the range. */
+/** On-peak: the dearest price of its month or season, where that has more than one; a weekend without it has no peak. Cut to the range. */
 export const peakIntervals = (tariff: Tariff | PreparedTariff, range: MsInterval): readonly PeakInterval[] =>
   priceBands(tariff, range)
     .filter((band) => band.onPeak)

@@ -21,6 +21,13 @@ export function dayTypeOf(version: TariffVersion, day: Day): string {
 /** 0 = January. */
 export const monthIndexOf = (day: Day): number => Number(day.slice(5, 7)) - 1
 
+/** The grids' row for a local day: its month's, or its season's. */
+export function rowIndexOf({ seasons }: Pick<TariffVersion, 'seasons'>, day: Day): number {
+  if (!seasons?.length) return monthIndexOf(day)
+  const begun = seasons.findLastIndex((season) => season.startsOn <= day.slice(5))
+  return begun === -1 ? seasons.length - 1 : begun
+}
+
 /** Chooses the grid that a day type is billed by. */
 export type GridOf = (version: TariffVersion, dayType: string) => ScheduleGrid
 
@@ -29,7 +36,7 @@ export const energyGrid: GridOf = (version, dayType) =>
     ? version.weekdayGrid
     : (version.extraDayTypes?.find((one) => one.name === dayType)?.energyGrid ?? version.weekendGrid)
 
-const NO_PERIODS: ScheduleGrid = Array.from({ length: 12 }, () => [0])
+const NO_PERIODS: ScheduleGrid = []
 export const demandGrid: GridOf = ({ periodDemand, extraDayTypes }, dayType) => {
   if (!periodDemand) return NO_PERIODS
   if (dayType === 'weekday') return periodDemand.weekdayGrid
@@ -55,7 +62,7 @@ export function scheduleBands(tariff: Tariff, range: MsInterval, gridOf: GridOf)
       const dayEndMs = Math.min(segment.endsAtMs, midnightMs + MS_PER_DAY)
       const day = dayOfNumber(dayIndex)
       const version = versionOn(tariff, day)
-      const row = (version && gridOf(version, dayTypeOf(version, day))[monthIndexOf(day)]) ?? [0]
+      const row = (version && gridOf(version, dayTypeOf(version, day))[rowIndexOf(version, day)]) ?? [0]
       const columnMs = MS_PER_DAY / row.length
       let column = Math.floor((startsAtMs - midnightMs) / columnMs)
       while (startsAtMs < dayEndMs) {

@@ -12,9 +12,18 @@ export interface DemandTier {
   readonly maxKw: number | null
   readonly priceMinorPerKw: number
 }
-/** 12 rows (January first) of equal slots of the local day; a value is a period's index. */
+/**
+ * Rows of equal slots of the local day; a value is a period's index. A row for each month (January first) or, where the version
+ * names seasons, for each of those.
+ */
 export type ScheduleGrid = readonly (readonly number[])[]
 
+/** A stretch of every year, until the next one begins; the last runs over the new year into the first. */
+export interface Season {
+  readonly name: string
+  /** `MM-DD`. 29 February is 1 March in years without one. */
+  readonly startsOn: string
+}
 /** A day type beside weekday and weekend, such as a public holiday or a critical-peak day, with grids of its own. */
 export interface ExtraDayType {
   readonly name: string
@@ -43,6 +52,10 @@ export interface TariffVersion {
   /** Minor units per major unit, 100 for most. */
   readonly minorPerMajor: number
   readonly energyPeriods: readonly (readonly EnergyTier[])[]
+  /** What the energy periods are called, in their order; a bill without names numbers them. */
+  readonly periodNames?: readonly string[]
+  /** In the order of the year. Without them the grids' rows are months. */
+  readonly seasons?: readonly Season[]
   readonly weekdayGrid: ScheduleGrid
   readonly weekendGrid: ScheduleGrid
   /** Dates billed by another day type: `weekday`, `weekend` or the name of one of `extraDayTypes`. */
@@ -54,6 +67,7 @@ export interface TariffVersion {
   } | null
   readonly periodDemand: {
     readonly tiersByPeriod: readonly (readonly DemandTier[])[]
+    readonly periodNames?: readonly string[]
     readonly weekdayGrid: ScheduleGrid
     readonly weekendGrid: ScheduleGrid
   } | null
@@ -110,7 +124,7 @@ export interface Bill {
 export type PriceOutcome =
   | { readonly status: 'priced'; readonly priceMinorPerKwh: number; readonly periodIndex: number }
   | { readonly status: 'no-version'; readonly reason: string }
-/** `on-peak` = the dearest price of its month, when that month has more than one. */
+/** `on-peak` = the dearest price of its month or season, when that has more than one; or dearer, on a special day. */
 export interface PeakInterval extends MsInterval {
   readonly periodIndex: number
   readonly priceMinorPerKwh: number

@@ -24,7 +24,10 @@ function tiersOf<Tier>(
     const tier = fieldsOf(one) ?? {}
     if (!isNumber(tier.rate)) refuse(`${where}.rate`, 'This tier has no rate: nothing can be billed with it.')
     if (tier.adj !== undefined && !isNumber(tier.adj)) refuse(`${where}.adj`, 'The adjustment of this tier is not a number.')
-    const bound = boundOf(tier.max, index === tiers.length - 1)
+    const isLast = index === tiers.length - 1
+    const bound = boundOf(tier.max, isLast)
+    if (!isLast && !isNumber(tier.max))
+      refuse(`${where}.max`, 'A tier before the last needs an upper bound, or the ones after it are never billed.')
     if (bound !== null && bound <= below) refuse(`${where}.max`, 'Bounds of tiers must rise: each is counted from zero.')
     below = bound ?? below
     return read(tier, where, bound)

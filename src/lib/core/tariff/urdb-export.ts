@@ -4,7 +4,8 @@
  */
 import { dayNumber } from '../time/civil.ts'
 import { decimal } from './money.ts'
-import type { DemandTier, TariffVersion } from './types.ts'
+import { rowIndexOf } from './schedule.ts'
+import type { DemandTier, ScheduleGrid, TariffVersion } from './types.ts'
 
 export type UrdbRecord = Readonly<Record<string, unknown>>
 export interface WrittenUrdb {
@@ -14,6 +15,7 @@ export interface WrittenUrdb {
 
 const S_PER_DAY = 86_400
 const HOURS = 24
+const MONTHS = 12
 
 export function writeUrdb(version: TariffVersion): WrittenUrdb {
   const major = (minor: number): number => decimal(minor / version.minorPerMajor)
@@ -25,8 +27,8 @@ export function writeUrdb(version: TariffVersion): WrittenUrdb {
       energyratestructure: version.energyPeriods.map((tiers) =>
         tiers.map(({ max, unit, priceMinorPerKwh }) => ({ ...(max === null ? {} : { max }), rate: major(priceMinorPerKwh), unit })),
       ),
-      energyweekdayschedule: version.weekdayGrid,
-      energyweekendschedule: version.weekendGrid,
+      energyweekdayschedule: monthRows(version, version.weekdayGrid),
+      energyweekendschedule: monthRows(version, version.weekendGrid),
       ...demandFields(version, major),
       ...chargeFields(version, major),
     },
@@ -34,9 +36,16 @@ export function writeUrdb(version: TariffVersion): WrittenUrdb {
   }
 }
 
+/** The format knows months only: each is written by the season of its 15th day. */
+const monthRows = (version: TariffVersion, grid: ScheduleGrid): ScheduleGrid =>
+  version.seasons?.length
+    ? Array.from({ length: MONTHS }, (_, month) => grid[rowIndexOf(version, `2001-${String(month + 1).padStart(2, '0')}-15`)] ?? [])
+    : grid
+
 type ToMajor = (minor: number) => number
 
-function demandFields({ flatDemand, periodDemand, demandWindowMin, lookback }: TariffVersion, major: ToMajor): UrdbRecord {
+function demandFields(version: TariffVersion, major: ToMajor): UrdbRecord {
+  const { flatDemand, periodDemand, demandWindowMin, lookback } = version
   const tiersOut = (tiers: readonly DemandTier[]) =>
     tiers.map(({ maxKw, priceMinorPerKw }) => ({ ...(maxKw === null ? {} : { max: maxKw }), rate: major(priceMinorPerKw) }))
   return {
@@ -48,8 +57,8 @@ function demandFields({ flatDemand, periodDemand, demandWindowMin, lookback }: T
     ...(periodDemand && {
       demandrateunit: 'kW',
       demandratestructure: periodDemand.tiersByPeriod.map(tiersOut),
-      demandweekdayschedule: periodDemand.weekdayGrid,
-      demandweekendschedule: periodDemand.weekendGrid,
+      demandweekdayschedule: monthRows(version, periodDemand.weekdayGrid),
+      demandweekendschedule: monthRows(version, periodDemand.weekendGrid),
     }),
     demandwindow: demandWindowMin,
     ...(lookback && {
@@ -73,6 +82,7 @@ function notCarried({
   currency,
   specialDays,
   extraDayTypes,
+  seasons = [],
   coincidentDemand,
   weekdayGrid,
   weekendGrid,
@@ -86,6 +96,9 @@ function notCarried({
     ...(extraDayTypes?.length
       ? [`The format has weekdays and weekends only: ${extraDayTypes.map((one) => one.name).join(', ')} are left out.`]
       : []),
+    ...seasons
+      .filter(({ startsOn }) => !startsOn.endsWith('-01'))
+      .map(({ name, startsOn }) => `The format knows whole months: ${name}, from ${startsOn}, is written by the 15th of each.`),
     ...(coincidentDemand?.length ? ['The hours of the system’s peak are left out.'] : []),
     ...(columns > HOURS ? [`Days are written in ${columns} steps; programs that know hours only will refuse or misread them.`] : []),
   ]

@@ -1,6 +1,7 @@
 /** Reads single fields of a rate record whose shape is not known yet; each reader says what it could not read, by field. */
 import { dayNumber, dayOfNumber } from '../time/civil.ts'
 import type { Day } from '../time/types.ts'
+import { MIN_PER_DAY } from '../units.ts'
 import type { ScheduleGrid } from './types.ts'
 
 export type Fields = Readonly<Record<string, unknown>>
@@ -40,15 +41,22 @@ export function dayOf(value: unknown): Day | null {
   return written && Number.isFinite(dayNumber(written)) && dayOfNumber(dayNumber(written)) === written ? written : null
 }
 
-/** 12 months of 24 hours, or of a multiple for finer steps; every value names a period. */
+/** 12 months of 24 hours, or of finer steps; every value names a period. */
 export function gridOf(record: Fields, field: string, periods: number, refuse: Refuse): ScheduleGrid {
   const rows = listOf(record[field]).map((row) => numbersOf(row) ?? [])
   const slots = rows[0]?.length ?? 0
-  const wellFormed = rows.length === MONTHS && slots >= HOURS && slots % HOURS === 0 && rows.every((row) => row.length === slots)
-  if (!wellFormed) refuse(field, `${field} must hold 12 months of 24 hours (or a multiple of 24).`)
+  // A step is a whole part of an hour and whole minutes.
+  const stepsFit = slots >= HOURS && slots % HOURS === 0 && Number.isInteger(MIN_PER_DAY / slots)
+  if (rows.length !== MONTHS || !stepsFit || rows.some((row) => row.length !== slots))
+    refuse(field, `${field} must hold 12 months of 24 hours (or of equal parts of hours, in whole minutes).`)
   else if (rows.some((row) => row.some((period) => !Number.isInteger(period) || period < 0 || period >= periods)))
     refuse(field, `${field} names a period that its structure does not have.`)
   return rows
+}
+
+/** A charge that is there and cannot be read is refused: left out in silence, it would be missing from every bill. */
+export function refuseUnlessNumber(record: Fields, field: string, refuse: Refuse): void {
+  if (isUsed(record[field]) && !isNumber(record[field])) refuse(field, `${field} must be a number, not ${JSON.stringify(record[field])}.`)
 }
 
 /** An amount and its units under the newer names, or a monthly amount under the older one. */
@@ -57,6 +65,7 @@ export function chargeOf(
   names: { readonly amount: string; readonly units: string; readonly monthly: string },
   refuse: Refuse,
 ): { readonly amount: number; readonly per: 'month' | 'day' | 'year' } | null {
+  for (const field of [names.amount, names.monthly]) refuseUnlessNumber(record, field, refuse)
   const newer = isNumber(record[names.amount])
   const amount = newer ? record[names.amount] : record[names.monthly]
   if (!isNumber(amount) || amount === 0) return null

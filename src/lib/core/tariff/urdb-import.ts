@@ -18,6 +18,7 @@ import {
   MONTHS,
   numbersOf,
   type Refuse,
+  refuseUnlessNumber,
   textOf,
 } from './urdb-fields.ts'
 
@@ -121,7 +122,9 @@ function fixedOf(record: Fields, minorPerMajor: number, refuse: Refuse): TariffV
 
 function minimumOf(record: Fields, minorPerMajor: number, refuse: Refuse): TariffVersion['minimum'] {
   const charge = chargeOf(record, { amount: 'mincharge', units: 'minchargeunits', monthly: 'minmonthlycharge' }, refuse)
+  refuseUnlessNumber(record, 'annualmincharge', refuse)
   const annual = isNumber(record.annualmincharge) ? record.annualmincharge : 0
+  if (annual < 0) refuse('annualmincharge', 'A minimum below zero is not billed here.')
   if (charge && annual > 0) refuse('annualmincharge', 'A minimum of the month and one of the year together are not billed here.')
   if (!charge) return annual > 0 ? { amountMinor: decimal(annual * minorPerMajor), per: 'year' } : null
   return { amountMinor: decimal(charge.amount * minorPerMajor), per: charge.per }
