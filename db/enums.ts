@@ -3,8 +3,11 @@
 export const ROLES = ['landlord', 'tenant', 'electrician', 'owner'] as const
 export type Role = (typeof ROLES)[number]
 
-/** `sending` is written before the SMTP dialogue; found again after a crash it becomes `ambiguous` and is shown, not repeated. */
-export const MAIL_STATES = ['queued', 'sending', 'sent', 'failed', 'ambiguous', 'suppressed'] as const
+/**
+ * `sending` is written before the SMTP dialogue; found again after a crash it becomes `ambiguous` and is shown, not repeated.
+ * `expired`: out of date before it could leave. `bounced`: the address refused it, at once or later.
+ */
+export const MAIL_STATES = ['queued', 'sending', 'sent', 'failed', 'ambiguous', 'suppressed', 'expired', 'bounced'] as const
 export type MailState = (typeof MAIL_STATES)[number]
 
 export const FLAG_KINDS = [

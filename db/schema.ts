@@ -22,6 +22,7 @@ import type { FlagTable } from './tables/flag.ts'
 import type { VisitTable } from './tables/visit.ts'
 import type { VisitFlagTable } from './tables/visit-flag.ts'
 import type { MessageTable } from './tables/message.ts'
+import type { SuppressionTable } from './tables/suppression.ts'
 import type { DigestTable } from './tables/digest.ts'
 import type { FeedbackTable } from './tables/feedback.ts'
 import type { AuditEntryTable } from './tables/audit-entry.ts'
@@ -55,6 +56,7 @@ export interface Database {
   visit: VisitTable
   visit_flag: VisitFlagTable
   message: MessageTable
+  suppression: SuppressionTable
   digest: DigestTable
   feedback: FeedbackTable
   audit_entry: AuditEntryTable

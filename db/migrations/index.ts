@@ -5,6 +5,8 @@ import * as buildings from './0002-buildings.ts'
 import * as work from './0003-work.ts'
 import * as postAndJobs from './0004-post-and-jobs.ts'
 import * as accountEvents from './0005-account-events.ts'
+import * as mailComplete from './0009-mail-complete.ts'
+import * as currentFigures from './0010-current-figures.ts'
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0001-accounts': accounts,
@@ -12,4 +14,6 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0003-work': work,
   '0004-post-and-jobs': postAndJobs,
   '0005-account-events': accountEvents,
+  '0009-mail-complete': mailComplete,
+  '0010-current-figures': currentFigures,
 }

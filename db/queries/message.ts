@@ -1,9 +1,9 @@
-/** Mail as it is written and shown: organisation mail in `message`, account mail in `account_mail`; one row per recipient, kind and cause. */
+/** Mail as it is written: organisation mail in `message`, account mail in `account_mail`; one row per recipient, kind and cause. */
 import type { Transaction } from 'kysely'
-import type { MailState, MessageKind } from '../enums.ts'
-import { type MessageId, newId, type PersonId, type PropertyId, type UnitId } from '../ids.ts'
-import { fromJson, toJson } from '../json.ts'
-import type { OrgDb, OrgTrx } from '../org-db.ts'
+import type { MessageKind } from '../enums.ts'
+import { type MessageId, newId, type PersonId, type PropertyId, type TenancyId, type UnitId } from '../ids.ts'
+import { toJson } from '../json.ts'
+import type { OrgTrx } from '../org-db.ts'
 import type { Database } from '../schema.ts'
 
 export interface Attachment {
@@ -12,6 +12,17 @@ export interface Attachment {
   readonly contentType: string
   readonly base64: string
 }
+/**
+ * A part of a letter that only its recipient may read; a mark stands for it in the bodies. A one-use token is kept until the letter
+ * has left; a signed link is kept as its claims, which open nothing without the signing key.
+ */
+export type PrivatePart =
+  | { readonly token: string }
+  | {
+      readonly claims: { readonly purpose: string; readonly expiresAtMs: number; readonly subject: Readonly<Record<string, string>> }
+    }
+  | { readonly removed: true }
+
 export interface Letter {
   readonly toEmail: string
   readonly cause: string
@@ -20,7 +31,10 @@ export interface Letter {
   readonly html: string
   readonly headers?: Readonly<Record<string, string>>
   readonly attachments?: readonly Attachment[]
+  readonly privateParts?: readonly PrivatePart[]
   readonly nowMs: number
+  /** From then on it is of no use and is not sent; without it, it stays true. */
+  readonly expiresAtMs?: number
   /** Domain of the Message-ID. */
   readonly domain: string
 }
@@ -29,6 +43,8 @@ export interface OrganisationLetter extends Letter {
   readonly propertyId: PropertyId | null
   readonly unitId: UnitId | null
   readonly personId: PersonId | null
+  /** Of the tenant it tells about their unit: their choice of tips holds for it. */
+  readonly tenancyId?: TenancyId
 }
 export type Queued = 'queued' | 'already-queued'
 
@@ -43,12 +59,14 @@ function outboxRow(letter: Letter) {
     html: letter.html,
     headers: toJson(letter.headers ?? {}),
     attachments: toJson(letter.attachments ?? []),
+    private_parts: toJson(letter.privateParts ?? []),
     state: 'queued' as const,
     attempts: 0,
     next_attempt_at_ms: letter.nowMs,
     // Fixed when queued, so that every attempt carries the same one.
     message_id: `<${id}@${letter.domain}>`,
     queued_at_ms: letter.nowMs,
+    expires_at_ms: letter.expiresAtMs ?? null,
     sent_at_ms: null,
     error: null,
   }
@@ -61,6 +79,7 @@ export async function addMessage(db: OrgTrx, letter: OrganisationLetter): Promis
     property_id: letter.propertyId,
     unit_id: letter.unitId,
     person_id: letter.personId,
+    tenancy_id: letter.tenancyId ?? null,
   }
   const result = await db
     .insertInto('message', row)
@@ -78,87 +97,21 @@ export async function addAccountMail(trx: Transaction<Database>, letter: Letter 
   return result.numInsertedOrUpdatedRows ? 'queued' : 'already-queued'
 }
 
-export interface MessageSummary {
-  readonly id: MessageId
-  readonly kind: MessageKind
-  readonly toEmail: string
-  readonly subject: string
-  readonly state: MailState
-  readonly attempts: number
-  readonly queuedAtMs: number
-  readonly nextAttemptAtMs: number
-  readonly sentAtMs: number | null
-  readonly error: string | null
-  /** The property it is about, if it is about one. */
-  readonly property: { readonly name: string; readonly zone: string; readonly sendingPausedAtMs: number | null } | null
-}
-export interface MessageAsSent extends MessageSummary {
-  readonly text: string
-  readonly html: string
-  readonly attachments: readonly Attachment[]
-}
-
-const withProperty = (db: OrgDb) =>
-  db
+/** The cause of the newest letter of a kind to an address whose cause begins with `prefix`, and when it was written; one that never left does not count. */
+export async function findLastCause(
+  db: OrgTrx,
+  { toEmail, kind, prefix }: { readonly toEmail: string; readonly kind: MessageKind; readonly prefix: string },
+): Promise<{ readonly cause: string; readonly queuedAtMs: number } | null> {
+  const row = await db
     .selectFrom('message')
-    .leftJoin('property', (join) =>
-      join.onRef('property.organisation_id', '=', 'message.organisation_id').onRef('property.id', '=', 'message.property_id'),
-    )
-    .select([
-      'message.id',
-      'message.kind',
-      'message.to_email',
-      'message.subject',
-      'message.state',
-      'message.attempts',
-      'message.queued_at_ms',
-      'message.next_attempt_at_ms',
-      'message.sent_at_ms',
-      'message.error',
-      'property.name as property_name',
-      'property.zone as property_zone',
-      'property.sending_paused_at_ms as property_paused_at_ms',
-    ])
-
-type SummaryRow = Awaited<ReturnType<ReturnType<typeof withProperty>['execute']>>[number]
-
-const toSummary = (row: SummaryRow): MessageSummary => ({
-  id: row.id,
-  kind: row.kind,
-  toEmail: row.to_email,
-  subject: row.subject,
-  state: row.state,
-  attempts: row.attempts,
-  queuedAtMs: row.queued_at_ms,
-  nextAttemptAtMs: row.next_attempt_at_ms,
-  sentAtMs: row.sent_at_ms,
-  error: row.error,
-  property:
-    row.property_name === null || row.property_zone === null
-      ? null
-      : { name: row.property_name, zone: row.property_zone, sendingPausedAtMs: row.property_paused_at_ms },
-})
-
-/** The organisation's newest mail, without bodies. */
-export async function listMessages(db: OrgDb, limit: number): Promise<readonly MessageSummary[]> {
-  const rows = await withProperty(db).orderBy('message.queued_at_ms', 'desc').orderBy('message.id').limit(limit).execute()
-  return rows.map(toSummary)
-}
-
-export async function countMessagesByState(db: OrgDb): Promise<Readonly<Partial<Record<MailState, number>>>> {
-  const rows = await db
-    .selectFrom('message')
-    .select((eb) => ['message.state', eb.fn.countAll<number>().as('count')])
-    .groupBy('message.state')
-    .execute()
-  return Object.fromEntries(rows.map((row) => [row.state, row.count]))
-}
-
-export async function findMessage(db: OrgDb, id: MessageId): Promise<MessageAsSent | null> {
-  const row = await withProperty(db)
-    .select(['message.text', 'message.html', 'message.attachments'])
-    .where('message.id', '=', id)
+    .where('message.to_email', '=', toEmail.toLowerCase())
+    .where('message.kind', '=', kind)
+    .where('message.cause', '>=', prefix)
+    .where('message.cause', '<', `${prefix}\uffff`)
+    .where('message.state', 'not in', ['expired', 'suppressed', 'failed', 'bounced'])
+    .select(['message.cause', 'message.queued_at_ms'])
+    .orderBy('message.queued_at_ms', 'desc')
+    .limit(1)
     .executeTakeFirst()
-  if (!row) return null
-  return { ...toSummary(row), text: row.text, html: row.html, attachments: fromJson<readonly Attachment[]>(row.attachments) }
+  return row ? { cause: row.cause, queuedAtMs: row.queued_at_ms } : null
 }

@@ -91,3 +91,8 @@ export async function changeProperty(db: OrgTrx, id: PropertyId, fields: Propert
 export async function changePropertyTariff(db: OrgTrx, id: PropertyId, tariffId: TariffId | null): Promise<void> {
   await db.updateTable('property', { tariff_id: tariffId }).where('id', '=', id).execute()
 }
+
+/** `null` lets sending go on. */
+export async function changeSendingPaused(db: OrgTrx, id: PropertyId, pausedAtMs: number | null): Promise<void> {
+  await db.updateTable('property', { sending_paused_at_ms: pausedAtMs }).where('id', '=', id).execute()
+}

@@ -8,6 +8,8 @@ export interface ToldTip {
   readonly subject: string
 }
 
+const DAY_LENGTH = '2026-12-02'.length
+
 /** The cause of a tip's letter: one a tenancy and day. */
 export const tipCause = (tenancyId: TenancyId, day: string): string => `${tenancyId}:${day}`
 
@@ -27,5 +29,7 @@ export async function findLastTip(
     .orderBy('message.cause', 'desc')
     .limit(1)
     .executeTakeFirst()
-  return row ? { day: row.cause.slice(tipCause(tenancyId, '').length), subject: row.subject } : null
+  // A tip that was sent again carries more behind its day.
+  const from = tipCause(tenancyId, '').length
+  return row ? { day: row.cause.slice(from, from + DAY_LENGTH), subject: row.subject } : null
 }

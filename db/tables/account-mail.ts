@@ -13,6 +13,10 @@ export interface AccountMailTable {
   html: string
   headers: string
   attachments: string
+  /** What only the recipient may read, in the order of the marks that stand for it in the bodies. */
+  private_parts: string
+  /** After it the letter is of no use and is not sent any more. */
+  expires_at_ms: number | null
   state: MailState
   attempts: number
   next_attempt_at_ms: number

@@ -24,6 +24,8 @@ export interface EvaluationTable {
   outcome: string
   assumptions: string
   hardware_record_id: HardwareRecordId | null
+  /** Of what it was computed from; another one means that it is out of date. */
+  inputs_hash: string | null
   evaluated_at_ms: number
 }
 

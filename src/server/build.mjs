@@ -16,6 +16,7 @@ await build({
     'db/backup': 'db/backup.ts',
     'db/restore': 'db/restore.ts',
     'jobs/index': 'jobs/index.ts',
+    'jobs/bounces': 'jobs/bounces.ts',
     'lib/config': 'src/lib/config.server.ts',
   },
   outdir: 'dist',

@@ -4,6 +4,7 @@ import type { OrgDb } from '#db/org-db.ts'
 import { inTransaction } from '#db/org-db.ts'
 import { addMessage, type OrganisationLetter } from '#db/queries/message.ts'
 import type { Database } from '#db/schema.ts'
+import { unseal } from '#lib/mail/seal.server.ts'
 import { letter } from '#lib/mail/letter.ts'
 
 export const LETTER_AT_MS = Date.UTC(2026, 1, 2, 17)
@@ -26,6 +27,10 @@ export function tipLetter(change: Partial<OrganisationLetter> = {}): Organisatio
 }
 
 export const queue = (db: OrgDb, change: Partial<OrganisationLetter> = {}) => inTransaction(db, (trx) => addMessage(trx, tipLetter(change)))
+
+/** A stored letter's bodies as its recipient gets them. */
+export const asSent = (row: { readonly text: string; readonly html: string; readonly headers: string; readonly private_parts: string }) =>
+  unseal({ text: row.text, html: row.html, headers: JSON.parse(row.headers) as Record<string, string> }, JSON.parse(row.private_parts))
 
 /** State and error of each letter, oldest first. */
 export const states = async (db: Kysely<Database>) =>

@@ -6,6 +6,8 @@ import { SMTPServer } from 'smtp-server'
 export interface SmtpRecipe {
   /** Reply code to RCPT TO, e.g. 450; `null` accepts. */
   readonly refuseRecipient?: (address: string) => number | null
+  /** What the refusal of a recipient says, with its enhanced status code. */
+  readonly refusalWords?: string
   /** Reply code after the message, e.g. 552; `null` accepts. */
   readonly refuseMessage?: (source: string) => number | null
   /** Drops the connection: before any of the message is read, or after all of it and before the reply. */
@@ -20,7 +22,7 @@ export interface FakeSmtp {
   close(): Promise<void>
 }
 
-const refusal = (code: number): Error => Object.assign(new Error('refused by the recipe'), { responseCode: code })
+const refusal = (code: number, words = 'refused by the recipe'): Error => Object.assign(new Error(words), { responseCode: code })
 
 export async function fakeSmtp(recipe: SmtpRecipe = {}): Promise<FakeSmtp> {
   const accepted: string[] = []
@@ -34,7 +36,7 @@ export async function fakeSmtp(recipe: SmtpRecipe = {}): Promise<FakeSmtp> {
     onRcptTo(address, session, done) {
       if (recipe.dropAt === 'recipient') return drop(session)
       const code = recipe.refuseRecipient?.(address.address) ?? null
-      done(code === null ? null : refusal(code))
+      done(code === null ? null : refusal(code, recipe.refusalWords))
     },
     onData(stream, session, done) {
       const chunks: Buffer[] = []

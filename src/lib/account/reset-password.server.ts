@@ -28,11 +28,12 @@ export async function requestReset(db: Connection, { input, address, nowMs }: Ac
     const person = await findPersonByEmail(trx, email)
     if (!person) return
     const token = newToken()
+    const expiresAtMs = expiryMs(nowMs, RESET_HOURS)
     await addAccountToken(trx, {
       tokenHash: hashToken(token),
       personId: person.id,
       purpose: 'reset',
-      expiresAtMs: expiryMs(nowMs, RESET_HOURS),
+      expiresAtMs,
       createdAtMs: nowMs,
     })
     const { text, html } = letter({
@@ -48,7 +49,9 @@ export async function requestReset(db: Connection, { input, address, nowMs }: Ac
       subject: 'Choose a new password for Dwellhour',
       text,
       html,
+      secrets: [{ token }],
       nowMs,
+      expiresAtMs,
     })
   })
 }

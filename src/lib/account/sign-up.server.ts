@@ -45,11 +45,12 @@ export async function signUp(db: Connection, { input, address, nowMs }: AccountR
     const personId = known?.id ?? (await addPerson(trx, { email, name, passwordHash, emailConfirmedAtMs: null, createdAtMs: nowMs }))
     if (known) await changePerson(trx, known.id, { name, passwordHash })
     await addAccountEvent(trx, personId, 'sign-up', nowMs)
+    const expiresAtMs = expiryMs(nowMs, CONFIRM_HOURS)
     await addAccountToken(trx, {
       tokenHash: hashToken(token),
       personId,
       purpose: 'confirm',
-      expiresAtMs: expiryMs(nowMs, CONFIRM_HOURS),
+      expiresAtMs,
       createdAtMs: nowMs,
     })
     const { text, html } = letter({
@@ -65,7 +66,9 @@ export async function signUp(db: Connection, { input, address, nowMs }: AccountR
       subject: 'Confirm your address for Dwellhour',
       text,
       html,
+      secrets: [{ token }],
       nowMs,
+      expiresAtMs,
     })
     return { proof }
   })

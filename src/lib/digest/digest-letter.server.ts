@@ -1,8 +1,10 @@
-/** The digest as a letter: the month in figures, its chart inline with the same said in a sentence. */
+/** The digest as a letter to one owner: the month in figures, its chart inline with the same said in a sentence. */
 import sharp from 'sharp'
 import type { DigestFigures } from '#db/queries/digest.ts'
 import { processConfig } from '#lib/config.server.ts'
+import { zoneCity } from '#lib/format.ts'
 import { letter } from '#lib/mail/letter.ts'
+import type { Unsubscribe } from '#lib/mail/unsubscribe.server.ts'
 import { type ChartColours, chartSentence, energyChartSvg } from './chart.ts'
 import { digestView, monthName } from './view.ts'
 
@@ -20,35 +22,44 @@ const ZINC: ChartColours = {
 const CHART_PX = 512
 const DENSITY = 144
 
-export async function digestLetter({
-  figures,
-  month,
-  reason,
-  path,
-}: {
+/** The month's chart as it goes into every owner's letter; drawn once. */
+export async function digestChart(figures: DigestFigures): Promise<string> {
+  const svg = Buffer.from(energyChartSvg(figures, ZINC))
+  return (await sharp(svg, { density: DENSITY }).png().toBuffer()).toString('base64')
+}
+
+export interface DigestLetterCase {
   readonly figures: DigestFigures
   readonly month: string
+  readonly zone: string
   readonly reason: string | null
   /** Of the digest's page. */
   readonly path: string
-}) {
+  readonly chartBase64: string
+  readonly unsubscribe: Unsubscribe
+}
+
+export function digestLetter({ figures, month, zone, reason, path, chartBase64, unsubscribe }: DigestLetterCase) {
   const view = digestView(figures, month)
   const title = `${figures.propertyName}, ${monthName(month)}: ${view.headline}`
-  const png = await sharp(Buffer.from(energyChartSvg(figures, ZINC)), { density: DENSITY })
-    .png()
-    .toBuffer()
   const { text, html } = letter({
     title,
     paragraphs: [...(reason ? [`A new edition, because: ${reason}`] : []), view.readiness, view.saving, ...view.paragraphs],
     figures: view.lines,
     image: { contentId: 'energy-by-day', alt: chartSentence(figures), widthPx: CHART_PX },
     actions: [{ label: 'Open the page', url: `${processConfig().baseUrl}${path}` }],
-    footer: ['You get this page once a month because you own this building.', 'Dwellhour screens; it does not certify.'],
+    footer: [
+      `You get this page once a month because you own this building. Its days are local (${zoneCity(zone)}).`,
+      'Dwellhour screens; it does not certify.',
+      unsubscribe.footer,
+    ],
   })
   return {
-    subject: title,
+    subject: `Read ${monthName(month)} of ${figures.propertyName}: ${view.headline}`,
     text,
     html,
-    attachments: [{ contentId: 'energy-by-day', filename: 'energy.png', contentType: 'image/png', base64: png.toString('base64') }],
+    headers: unsubscribe.headers,
+    secrets: [unsubscribe.secret],
+    attachments: [{ contentId: 'energy-by-day', filename: 'energy.png', contentType: 'image/png', base64: chartBase64 }],
   }
 }

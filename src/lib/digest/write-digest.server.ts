@@ -12,13 +12,15 @@ import { countFeedback } from '#db/queries/feedback.ts'
 import { listFlagsTouched } from '#db/queries/flag.ts'
 import { listAccess, listMembers } from '#db/queries/organisation.ts'
 import { findProperty, type Property } from '#db/queries/property.ts'
+import { unsubscribedFrom } from '#db/queries/suppression.ts'
 import { listUnits } from '#db/queries/unit.ts'
 import { listVisitsOfProperty } from '#db/queries/visit.ts'
 import { requireRole } from '#lib/auth/permission.ts'
 import { addMonths, monthBounds } from '#lib/core/time/civil.ts'
 import { notFound } from '#lib/http/app-error.ts'
 import { queueMessage } from '#lib/mail/queue-message.server.ts'
-import { digestLetter } from './digest-letter.server.ts'
+import { unsubscribeLink } from '#lib/mail/unsubscribe.server.ts'
+import { digestChart, digestLetter, type DigestLetterCase } from './digest-letter.server.ts'
 import { monthFigures } from './figures.ts'
 
 export interface WriteDigest {
@@ -42,7 +44,8 @@ export async function writeDigest(db: OrgDb, { propertyId, month, nowMs, reason 
   if (figures.daysCovered === 0) return { written: 0, mailed: 0 }
   const id = newId<DigestId>()
   const slug = await findOrganisationSlug(db, propertyId)
-  const letter = await digestLetter({ figures, month, reason: reason ?? null, path: `/o/${slug}/digests/${id}` })
+  const chartBase64 = await digestChart(figures)
+  const page = { figures, month, zone: property.zone, reason: reason ?? null, path: `/o/${slug}/digests/${id}`, chartBase64 }
   return inTransaction(db, async (trx) => {
     const last = await findLastEdition(trx, propertyId, month)
     if (last && !reason) return { written: 0, mailed: 0 }
@@ -63,7 +66,7 @@ export async function writeDigest(db: OrgDb, { propertyId, month, nowMs, reason 
       subjectId: id,
       after: { month, edition: digest.edition, reason: reason ?? null },
     })
-    return { written: 1, mailed: await mailOwners(trx, { digest, letter, nowMs }) }
+    return { written: 1, mailed: await mailOwners(trx, { digest, page, nowMs }) }
   })
 }
 
@@ -86,17 +89,19 @@ async function figuresOf(db: OrgDb, property: Property, month: string): Promise<
 
 interface MailOwners {
   readonly digest: Digest
-  readonly letter: Awaited<ReturnType<typeof digestLetter>>
+  readonly page: Omit<DigestLetterCase, 'unsubscribe'>
   readonly nowMs: number
 }
 
-async function mailOwners(trx: OrgTrx, { digest, letter, nowMs }: MailOwners): Promise<number> {
+async function mailOwners(trx: OrgTrx, { digest, page, nowMs }: MailOwners): Promise<number> {
   const access = (await listAccess(trx)).filter((one) => one.role === 'owner' && one.propertyId === digest.propertyId)
+  const stopped = await unsubscribedFrom(trx, 'digest')
   const owners = (await listMembers(trx)).filter(
-    (member) => member.role === 'owner' && access.some((one) => one.personId === member.personId),
+    (member) => member.role === 'owner' && !stopped.has(member.email) && access.some((one) => one.personId === member.personId),
   )
   let mailed = 0
   for (const owner of owners) {
+    const unsubscribe = unsubscribeLink(trx.scope.organisationId, { personId: owner.personId, letters: 'digest' }, nowMs)
     const queued = await queueMessage(trx, {
       propertyId: digest.propertyId,
       unitId: null,
@@ -104,7 +109,7 @@ async function mailOwners(trx: OrgTrx, { digest, letter, nowMs }: MailOwners): P
       toEmail: owner.email,
       kind: 'digest',
       cause: `${digest.propertyId}:${digest.month}:${digest.edition}`,
-      ...letter,
+      ...digestLetter({ ...page, unsubscribe }),
       nowMs,
     })
     if (queued === 'queued') mailed++

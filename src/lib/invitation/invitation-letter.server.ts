@@ -26,10 +26,12 @@ export interface InvitationLetter {
   /** Distinguishes this sending from the others of the same invitation. */
   readonly cause: string
   readonly nowMs: number
+  /** When the link stops working. */
+  readonly expiresAtMs: number
 }
 
 export async function queueInvitation(trx: OrgTrx, invitation: InvitationLetter): Promise<void> {
-  const { email, name, role, property, unitId, organisationName, token, cause, nowMs } = invitation
+  const { email, name, role, property, unitId, organisationName, token, cause, nowMs, expiresAtMs } = invitation
   const { text, html } = letter({
     title: `${organisationName} invites you`,
     paragraphs: [`Hello ${name}, ${organisationName} invites you ${WHAT[role]}${property ? ` at ${property.name}` : ''}.`],
@@ -43,9 +45,11 @@ export async function queueInvitation(trx: OrgTrx, invitation: InvitationLetter)
     toEmail: email,
     kind: 'invitation',
     cause,
-    subject: `${organisationName} invites you to Dwellhour`,
+    subject: `Accept ${organisationName}’s invitation to Dwellhour`,
     text,
     html,
+    secrets: [{ token }],
     nowMs,
+    expiresAtMs,
   })
 }

@@ -46,7 +46,7 @@ export async function invitePerson(
       invitedBy: actingPerson(db),
     })
     const unitId = tenancy?.unitId ?? null
-    await queueInvitation(trx, { id, email, name, role, property, unitId, organisationName, token, cause: id, nowMs })
+    await queueInvitation(trx, { id, email, name, role, property, unitId, organisationName, token, cause: id, nowMs, expiresAtMs })
     await addAudit(trx, { atMs: nowMs, action: 'invite', subjectKind: 'invitation', subjectId: id, after: { role, propertyId, tenancyId } })
     return id
   })

@@ -28,10 +28,12 @@ export async function resendInvitation(db: OrgDb, { invitationId, organisationNa
     const property = found.propertyId ? await findProperty(trx, found.propertyId) : null
     const tenancy = found.tenancyId ? await findTenancy(trx, found.tenancyId) : null
     const token = newToken()
-    await changeInvitationToken(trx, id, { tokenHash: hashToken(token), expiresAtMs: expiryMs(nowMs, INVITATION_DAYS * 24) })
+    const expiresAtMs = expiryMs(nowMs, INVITATION_DAYS * 24)
+    await changeInvitationToken(trx, id, { tokenHash: hashToken(token), expiresAtMs })
     const { email, name, role } = found
     const cause = `${id}:${hashToken(token)}`
-    await queueInvitation(trx, { id, email, name, role, property, unitId: tenancy?.unitId ?? null, organisationName, token, cause, nowMs })
+    const unitId = tenancy?.unitId ?? null
+    await queueInvitation(trx, { id, email, name, role, property, unitId, organisationName, token, cause, nowMs, expiresAtMs })
     await addAudit(trx, { atMs: nowMs, action: 'resend', subjectKind: 'invitation', subjectId: id })
   })
 }

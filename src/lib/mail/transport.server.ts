@@ -4,12 +4,15 @@ import { join } from 'node:path'
 import nodemailer, { type SendMailOptions } from 'nodemailer'
 import type { DueLetter } from '#db/queries/outbox.ts'
 import type { Config } from '#lib/config.server.ts'
+import { isDeadAddress } from './bounce.ts'
 import { postedName, postRoomFolder } from './post-room.server.ts'
 
 export type TransportOutcome =
   | { readonly kind: 'sent' }
   | { readonly kind: 'try-later'; readonly reason: string }
   | { readonly kind: 'refused'; readonly reason: string }
+  /** The address itself was refused; `forGood`: because there is no such mailbox, not because of what was sent to it. */
+  | { readonly kind: 'bounced'; readonly reason: string; readonly forGood: boolean }
   /** The dialogue broke after the message was handed over: it may have arrived. */
   | { readonly kind: 'unknown'; readonly reason: string }
 export interface Transport {
@@ -59,6 +62,8 @@ export function smtpTransport(smtpUrl: string, from: string, timeoutMs = SMTP_TI
 
 interface SmtpError extends Error {
   readonly responseCode?: number
+  /** The server's own words, with the enhanced status code of RFC 2034 where it gives one. */
+  readonly response?: string
   readonly code?: string
   readonly command?: string
 }
@@ -66,12 +71,19 @@ interface SmtpError extends Error {
 /** Replies about this very letter; a refusal at any other step is about the connection or the sign-in, so the letter waits. */
 const ABOUT_THE_LETTER: readonly (string | undefined)[] = ['MAIL FROM', 'RCPT TO', 'DATA']
 
+/** RFC 5321 4.2.3: mailbox unavailable, user not local, mailbox name not allowed. */
+const NO_MAILBOX: readonly number[] = [550, 551, 553]
+const enhancedStatus = (response = ''): string | null => /^\d{3}[ -](\d\.\d{1,3}\.\d{1,3})\b/.exec(response)?.[1] ?? null
+
 /** RFC 5321 4.2.1: 4yz asks to try again, 5yz is final. Server words may repeat the address, so only the code is kept. */
 export function outcomeOf(error: SmtpError, handedOver: boolean): TransportOutcome {
   const { responseCode, command } = error
   if (responseCode && responseCode >= 400) {
-    const reason = `The mail server answered ${responseCode}.`
-    return responseCode >= 500 && ABOUT_THE_LETTER.includes(command) ? { kind: 'refused', reason } : { kind: 'try-later', reason }
+    const status = enhancedStatus(error.response)
+    const reason = `The mail server answered ${responseCode}${status ? ` (${status})` : ''}.`
+    if (responseCode < 500 || !ABOUT_THE_LETTER.includes(command)) return { kind: 'try-later', reason }
+    if (command !== 'RCPT TO') return { kind: 'refused', reason }
+    return { kind: 'bounced', reason, forGood: status ? isDeadAddress(status) : NO_MAILBOX.includes(responseCode) }
   }
   const reason = `No answer from the mail server (${error.code ?? error.name}).`
   return handedOver ? { kind: 'unknown', reason } : { kind: 'try-later', reason }

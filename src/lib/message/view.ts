@@ -1,6 +1,8 @@
 /** How a letter's state and kind are said. */
 import type { MailState, MessageKind } from '#db/enums.ts'
 import { formatInstant, zoneCity } from '#lib/format.ts'
+import type { MemberLetter } from '#lib/mail/unsubscribe.server.ts'
+import type { PostQuery, StateChoice } from './schemas.ts'
 
 export const KIND_LABEL: Readonly<Record<MessageKind, string>> = {
   invitation: 'Invitation',
@@ -12,6 +14,25 @@ export const KIND_LABEL: Readonly<Record<MessageKind, string>> = {
   'clock-change': 'Clock change',
   digest: 'Digest',
 }
+
+/** As the subject of a sentence. */
+export const MEMBER_LETTER_WORDS: Readonly<Record<MemberLetter, string>> = {
+  'flag-summary': 'The daily lists of flags',
+  'clock-change': 'The lists of time switches to set before a clock change',
+  digest: 'The monthly pages of your building',
+}
+
+/** Choices of the filter, the most used first. */
+export const STATE_CHOICES: readonly (readonly [StateChoice, string])[] = [
+  ['look', 'To look at'],
+  ['waiting', 'Waiting'],
+  ['sent', 'Sent'],
+  ['bounced', 'Bounced'],
+  ['failed', 'Not delivered'],
+  ['ambiguous', 'Unclear'],
+  ['expired', 'Out of date'],
+  ['suppressed', 'Not sent'],
+]
 
 export interface LetterState {
   readonly state: MailState
@@ -45,6 +66,10 @@ export function stateWords(letter: LetterState): StateWords {
       return { word: 'Sent', more: null, needsLooking: false }
     case 'failed':
       return { word: 'Not delivered', more: error, needsLooking: true }
+    case 'bounced':
+      return { word: 'Bounced', more: `${error ?? ''} The address refused it.`.trim(), needsLooking: true }
+    case 'expired':
+      return { word: 'Out of date', more: 'It could not leave while what it says was true, so it was not sent.', needsLooking: false }
     case 'ambiguous':
       return { word: 'Unclear', more: `${error ?? 'The reply was lost.'} It is not sent again.`, needsLooking: true }
     case 'suppressed':
@@ -55,3 +80,13 @@ export function stateWords(letter: LetterState): StateWords {
 /** Local to the property; a letter without one is told in UTC. */
 export const when = (instantMs: number, zone = 'UTC'): string =>
   `${formatInstant(instantMs, zone, 'd MMM yyyy, HH:mm')} (${zoneCity(zone)})`
+
+/** An address of the Post page: what it is narrowed to, and one letter opened. */
+export function postHref(query: PostQuery, open: { readonly message?: string; readonly as?: 'text'; readonly page?: number } = {}): string {
+  const { state, kind, property, unit } = query
+  const page = open.page ?? query.page
+  const asked = { state, kind, property, unit, page: page === 1 ? null : String(page), message: open.message, as: open.as }
+  const search = new URLSearchParams()
+  for (const [name, value] of Object.entries(asked)) if (value) search.set(name, value)
+  return `?${search}${open.message ? '#letter' : ''}`
+}

@@ -119,6 +119,7 @@ async function queueTip(db: OrgDb, tip: TipFor) {
       propertyId: property.id,
       unitId: tenancy.unitId,
       personId: tenancy.personId,
+      tenancyId: tenancy.id,
       toEmail: tenancy.email,
       kind: 'tip',
       cause: tipCause(tenancy.id, evaluation.day),

@@ -1,10 +1,9 @@
-/** A tip as a letter: subject that says what to do, the day strip inline, hot and cold links, one-click unsubscribe (RFC 8058). */
+/** A tip as a letter: subject that says what to do, the day strip inline, hot and cold links, one-click unsubscribe (RFC 8058); true until its day begins. */
 import type { OrganisationId } from '#db/ids.ts'
-import { processConfig } from '#lib/config.server.ts'
 import { dayBounds } from '#lib/core/time/civil.ts'
 import { formatDay, zoneCity } from '#lib/format.ts'
 import { letter } from '#lib/mail/letter.ts'
-import { signingSecret, signToken } from '#lib/mail/link.server.ts'
+import { signedLink, unsubscribeLink } from '#lib/mail/unsubscribe.server.ts'
 import { dayStripPng } from '#lib/strip/day-strip-png.server.ts'
 import { stripDayOf } from '#lib/unit/strip-day.ts'
 import { cautionsFor, isPressed } from './cautions.ts'
@@ -14,7 +13,6 @@ import { weekLines } from './week-lines.ts'
 
 const STRIP_PX = 480
 const FEEDBACK_DAYS = 7
-const UNSUBSCRIBE_DAYS = 365
 const DAY_MS = 86_400_000
 
 export async function tipLetter(tipFor: TipFor, organisationId: OrganisationId) {
@@ -36,20 +34,23 @@ export async function tipLetter(tipFor: TipFor, organisationId: OrganisationId) 
     ],
     image: { contentId: 'day-strip', alt: strip.sentence, widthPx: STRIP_PX },
     actions: [
-      { label: 'It was hot', url: links.hot },
-      { label: 'It was cold', url: links.cold },
+      { label: 'It was hot', url: links.hot.url },
+      { label: 'It was cold', url: links.cold.url },
     ],
     footer: [
       `${unitCode}, ${property.name}, ${formatDay(evaluation.day, 'EEEE d MMMM yyyy')}; times are local (${zoneCity(property.zone)}).`,
       `Cold water, a smell or a timer that does not stop: call ${call}. Never bypass a thermostat or relief valve.`,
-      `Stop these mails: ${links.unsubscribe}`,
+      links.unsubscribe.footer,
     ],
   })
   return {
     subject: tip.subject,
     text,
     html,
-    headers: { 'List-Unsubscribe': `<${links.unsubscribe}>`, 'List-Unsubscribe-Post': 'List-Unsubscribe=One-Click' },
+    headers: links.unsubscribe.headers,
+    secrets: [links.hot.secret, links.cold.secret, links.unsubscribe.secret],
+    // Its words say "tomorrow": from the first moment of that day they would be false.
+    expiresAtMs: dayBounds(evaluation.day, property.zone).startsAtMs,
     attachments: [{ contentId: 'day-strip', filename: 'day.png', contentType: 'image/png', base64: strip.base64 }],
   }
 }
@@ -57,11 +58,11 @@ export async function tipLetter(tipFor: TipFor, organisationId: OrganisationId) 
 /** Each link is bound to one tenancy, one purpose and, where it speaks of a day, that day; each expires. */
 function linksOf({ property, tenancy, evaluation, nowMs }: TipFor, organisationId: OrganisationId) {
   const { startsAtMs, endsAtMs } = dayBounds(evaluation.day, property.zone)
-  const link = (purpose: string, expiresAtMs: number, more: Record<string, string>) => {
-    const subject = { organisationId, tenancyId: tenancy.id, ...more }
-    return `${processConfig().baseUrl}/t/${signToken({ purpose, expiresAtMs, subject }, signingSecret())}`
-  }
   const said = (verdict: 'hot' | 'cold') =>
-    link('feedback', endsAtMs + FEEDBACK_DAYS * DAY_MS, { day: evaluation.day, verdict, opensAtMs: String(startsAtMs) })
-  return { hot: said('hot'), cold: said('cold'), unsubscribe: link('unsubscribe', nowMs + UNSUBSCRIBE_DAYS * DAY_MS, {}) }
+    signedLink({
+      purpose: 'feedback',
+      expiresAtMs: endsAtMs + FEEDBACK_DAYS * DAY_MS,
+      subject: { organisationId, tenancyId: tenancy.id, day: evaluation.day, verdict, opensAtMs: String(startsAtMs) },
+    })
+  return { hot: said('hot'), cold: said('cold'), unsubscribe: unsubscribeLink(organisationId, { tenancyId: tenancy.id }, nowMs) }
 }

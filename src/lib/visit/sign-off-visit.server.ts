@@ -52,7 +52,7 @@ export async function signOffVisit(
         toEmail: landlord.email,
         kind: 'visit-done',
         cause: visit.id,
-        subject: `Done: ${visit.unitCode} at ${visit.propertyName}`,
+        subject: `Read what was done at ${visit.unitCode}, ${visit.propertyName}: the visit is signed off`,
         text,
         html,
         nowMs,

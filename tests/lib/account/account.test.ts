@@ -11,6 +11,7 @@ import { signOutEverywhere } from '#lib/account/sign-out-everywhere.server.ts'
 import { signUp } from '#lib/account/sign-up.server.ts'
 import { freshDatabase } from '../../support/database.ts'
 import { NOW_MS } from '../../support/factories.ts'
+import { asSent } from '../../support/outbox.ts'
 
 const ADA = { name: 'Ada Brackwater', email: 'Ada@people.example', password: 'a kettle of copper' }
 const HOUR_MS = 3_600_000
@@ -22,7 +23,7 @@ beforeEach(async () => {
 
 const newestLink = async (path: string): Promise<string> => {
   const mail = await db.selectFrom('account_mail').selectAll().orderBy('queued_at_ms', 'desc').orderBy('id').execute()
-  const links = mail.flatMap((one) => [...one.text.matchAll(new RegExp(`/${path}/([\\w-]+)`, 'g'))].map((match) => match[1] ?? ''))
+  const links = mail.flatMap((one) => [...asSent(one).text.matchAll(new RegExp(`/${path}/([\\w-]+)`, 'g'))].map((match) => match[1] ?? ''))
   return links.at(0) ?? ''
 }
 const enter = (password: string, more: Partial<{ address: string; email: string; nowMs: number }> = {}) =>

@@ -15,6 +15,7 @@ import { removeMember } from '#lib/organisation/remove-member.server.ts'
 import { makeBuilding } from '../../support/building.ts'
 import { freshDatabase } from '../../support/database.ts'
 import { makeLandlord, makePerson, NOW_MS, scopeFor } from '../../support/factories.ts'
+import { asSent } from '../../support/outbox.ts'
 
 const DAY_MS = 86_400_000
 const NEWCOMER = { name: 'Marek', password: 'three phases at night' }
@@ -30,8 +31,8 @@ beforeEach(async () => {
 const invite = async (over: Record<string, unknown> = {}) => {
   const input = { email: 'marek@people.example', name: 'Marek', role: 'landlord', propertyId: null, tenancyId: null, ...over }
   const id = await invitePerson(ours, { input, organisationName: 'Ours', nowMs: NOW_MS })
-  const mail = await db.selectFrom('message').select('text').where('cause', '=', id).executeTakeFirstOrThrow()
-  return { id, token: /\/invitation\/([\w-]+)/.exec(mail.text)?.[1] ?? '' }
+  const mail = await db.selectFrom('message').selectAll().where('cause', '=', id).executeTakeFirstOrThrow()
+  return { id, token: /\/invitation\/([\w-]+)/.exec(asSent(mail).text)?.[1] ?? '' }
 }
 const accept = (token: string, nowMs = NOW_MS) => acceptInvitation(db, { token, signedIn: null, input: NEWCOMER, nowMs })
 
@@ -124,8 +125,8 @@ describe('resendInvitation', () => {
   const resend = (invitationId: unknown, by: OrgDb = ours, nowMs = NOW_MS) =>
     resendInvitation(by, { invitationId, organisationName: 'Ours', nowMs })
   const newestToken = async () => {
-    const mail = await db.selectFrom('message').select('text').orderBy('queued_at_ms', 'desc').executeTakeFirstOrThrow()
-    return /\/invitation\/([\w-]+)/.exec(mail.text)?.[1] ?? ''
+    const mail = await db.selectFrom('message').selectAll().orderBy('queued_at_ms', 'desc').executeTakeFirstOrThrow()
+    return /\/invitation\/([\w-]+)/.exec(asSent(mail).text)?.[1] ?? ''
   }
   it('mails a new link for another fourteen days and ends the one before', async () => {
     const { id, token } = await invite()

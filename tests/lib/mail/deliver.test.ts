@@ -27,7 +27,7 @@ describe('deliverMail', () => {
       headers: { 'List-Unsubscribe': '<https://dwellhour.example/u/1>' },
       attachments: [{ contentId: 'strip@dwellhour', filename: 'strip.png', contentType: 'image/png', base64: PIXEL }],
     })
-    expect(await round()).toEqual({ sent: 1, retried: 0, failed: 0, ambiguous: 0 })
+    expect(await round()).toEqual({ sent: 1, retried: 0, failed: 0, bounced: 0, ambiguous: 0, suppressed: 0, expired: 0 })
     const [mail] = await smtp.parsed()
     const [row] = await states(db)
     expect(row).toMatchObject({ state: 'sent', error: null })
@@ -76,17 +76,17 @@ describe('deliverMail', () => {
     await end()
   })
 
-  it('takes a 5xx about the recipient or the message as final', async () => {
+  it('takes a 5xx about the message as failed, about the recipient as bounced, both for good', async () => {
     const { db, org, round, end } = await bench({
       refuseRecipient: (address) => (address.startsWith('gone') ? 550 : null),
       refuseMessage: (source) => (source.includes('big@') ? 552 : null),
     })
     await queue(org, { toEmail: 'gone@quill.example' })
     await queue(org, { toEmail: 'big@quill.example' })
-    expect(await round()).toMatchObject({ failed: 2, sent: 0 })
+    expect(await round()).toMatchObject({ failed: 1, bounced: 1, sent: 0 })
     expect((await states(db)).map((row) => [row.state, row.error])).toEqual([
       ['failed', 'The mail server answered 552.'],
-      ['failed', 'The mail server answered 550.'],
+      ['bounced', 'The mail server answered 550.'],
     ])
     await end()
   })

@@ -1,11 +1,16 @@
 /** What a landlord reads in the post, and nobody else. */
 import { describe, expect, it } from 'vitest'
 import { newId, type MessageId } from '#db/ids.ts'
+import { inTransaction } from '#db/org-db.ts'
+import { queueMessage } from '#lib/mail/queue-message.server.ts'
 import { loadMessages } from '#lib/message/load-messages.server.ts'
 import { stateWords } from '#lib/message/view.ts'
 import { freshDatabase } from '../../support/database.ts'
-import { makeLandlord, makePerson, scopeFor } from '../../support/factories.ts'
-import { queue } from '../../support/outbox.ts'
+import { makeLandlord, makePerson, NOW_MS, scopeFor } from '../../support/factories.ts'
+import { queue, tipLetter } from '../../support/outbox.ts'
+import { COLD, makeWorld, unitOf } from '../../support/world.ts'
+
+const asked = (messageId: string | null = null, query: Readonly<Record<string, string>> = {}) => ({ messageId, query, nowMs: NOW_MS })
 
 describe('loadMessages', () => {
   it('lists the organisation’s letters with their state and opens one with its images in place', async () => {
@@ -15,21 +20,61 @@ describe('loadMessages', () => {
       html: '<img src="cid:strip">',
       attachments: [{ contentId: 'strip', filename: 'strip.png', contentType: 'image/png', base64: 'AAAA' }],
     })
-    const { messages, counts, total } = await loadMessages(org, { messageId: null })
+    const { messages, counts, found } = await loadMessages(org, asked())
     expect(messages).toMatchObject([{ toEmail: 'tenant@quill.example', state: 'queued', kind: 'tip' }])
-    expect({ counts, total }).toEqual({ counts: { queued: 1 }, total: 1 })
-    const { opened } = await loadMessages(org, { messageId: messages[0]?.id ?? '' })
+    expect({ counts, found }).toEqual({ counts: { queued: 1 }, found: 1 })
+    const { opened } = await loadMessages(org, asked(messages[0]?.id ?? ''))
     expect(opened?.html).toBe('<img src="data:image/png;base64,AAAA">')
+  })
+
+  it('narrows by state, group of states, kind, property and unit, and counts what it found', async () => {
+    const { landlord, building, db } = await makeWorld()
+    const place = { propertyId: building.propertyId, unitId: unitOf({ building }, COLD).unitId }
+    await queue(landlord, { cause: 'one', ...place })
+    await queue(landlord, { cause: 'two', kind: 'digest', propertyId: building.propertyId })
+    await queue(landlord, { cause: 'three', kind: 'invitation' })
+    await db.updateTable('message').set({ state: 'bounced' }).where('cause', '=', 'three').execute()
+    const found = async (query: Readonly<Record<string, string>>) => {
+      const page = await loadMessages(landlord, asked(null, query))
+      return page.messages.map(({ kind }) => kind).sort()
+    }
+    expect(await found({ state: 'look' })).toEqual(['invitation'])
+    expect(await found({ state: 'waiting' })).toEqual(['digest', 'tip'])
+    expect(await found({ kind: 'digest' })).toEqual(['digest'])
+    expect(await found({ unit: COLD.toLowerCase() })).toEqual(['tip'])
+    expect(await found({ unit: 'nowhere' })).toEqual([])
+    const property = (await loadMessages(landlord, asked())).properties[0]?.slug ?? ''
+    expect(await found({ property })).toEqual(['digest', 'tip'])
+    expect(await found({ state: 'nonsense', kind: '', page: 'x' })).toHaveLength(3)
+  })
+
+  it('never shows what only the recipient may read', async () => {
+    const db = await freshDatabase()
+    const org = await makeLandlord(db)
+    const token = 'k3JvTn0mR5bq-8sWcYxZ'
+    await inTransaction(org, (trx) =>
+      queueMessage(trx, {
+        ...tipLetter(),
+        text: `Accept: http://localhost/invitation/${token}`,
+        html: `<a href="http://localhost/invitation/${token}">Accept</a>`,
+        headers: { 'List-Unsubscribe': `<http://localhost/t/${token}>` },
+        secrets: [{ token }],
+      }),
+    )
+    const [message] = (await loadMessages(org, asked())).messages
+    const { opened } = await loadMessages(org, asked(message?.id ?? ''))
+    expect(JSON.stringify(opened)).not.toContain(token)
+    expect(opened).toMatchObject({ text: 'Accept: http://localhost/invitation/…', hasPrivateLinks: true })
   })
 
   it('answers not found for another organisation’s letter and for what is no id', async () => {
     const db = await freshDatabase()
     const [org, other] = [await makeLandlord(db), await makeLandlord(db)]
     await queue(other)
-    const theirs = (await loadMessages(other, { messageId: null })).messages[0]?.id ?? ''
-    expect((await loadMessages(org, { messageId: null })).messages).toEqual([])
+    const theirs = (await loadMessages(other, asked())).messages[0]?.id ?? ''
+    expect((await loadMessages(org, asked())).messages).toEqual([])
     for (const messageId of [theirs, newId<MessageId>(), 'NO ID'])
-      await expect(loadMessages(org, { messageId })).rejects.toMatchObject({ code: 'not-found' })
+      await expect(loadMessages(org, asked(messageId))).rejects.toMatchObject({ code: 'not-found' })
   })
 
   it('is for landlords only', async () => {
@@ -37,7 +82,7 @@ describe('loadMessages', () => {
     const org = await makeLandlord(db)
     const personId = await makePerson(db)
     const tenant = await scopeFor(db, { organisationId: org.scope.organisationId, personId, roles: ['tenant', 'owner', 'electrician'] })
-    await expect(loadMessages(tenant, { messageId: null })).rejects.toMatchObject({ code: 'forbidden' })
+    await expect(loadMessages(tenant, asked())).rejects.toMatchObject({ code: 'forbidden' })
   })
 })
 
