@@ -9,12 +9,14 @@ import { log } from '#lib/log.server.ts'
 import { transportFor } from '#lib/mail/transport.server.ts'
 import { backup } from './backup.ts'
 import { clean } from './clean.ts'
+import { clockChange } from './clock-change.ts'
 import { digest } from './digest.ts'
 import { evaluate } from './evaluate.ts'
+import { flagSummary } from './flag-summary.ts'
 import { mail } from './mail.ts'
 import { tips } from './tips.ts'
 
-const JOBS = [evaluate, tips, digest, mail, clean, backup]
+const JOBS = [evaluate, tips, flagSummary, clockChange, digest, mail, clean, backup]
 const STOP_PATIENCE_MS = 8_000
 
 async function main(): Promise<void> {

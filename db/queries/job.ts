@@ -195,3 +195,24 @@ export async function lastJobEnd(db: Kysely<Database>): Promise<number | null> {
     .executeTakeFirst()
   return row?.finished_at_ms ?? null
 }
+
+/** A run that failed for an organisation as a whole, before it came to a property; its scope is the organisation. */
+export async function addFailedRun(
+  db: Kysely<Database>,
+  run: { readonly job: string; readonly organisationId: OrganisationId; readonly atMs: number; readonly error: string },
+): Promise<void> {
+  await db
+    .insertInto('job_run')
+    .values({
+      id: newId<string>(),
+      job: run.job,
+      scope: run.organisationId,
+      period: new Date(run.atMs).toISOString().slice(0, 10),
+      organisation_id: run.organisationId,
+      started_at_ms: run.atMs,
+      finished_at_ms: run.atMs,
+      counts: null,
+      error: run.error,
+    })
+    .execute()
+}

@@ -7,7 +7,7 @@ import { inTransaction, type OrgDb } from '#db/org-db.ts'
 import { listOpenFlags, listStandingDismissals } from '#db/queries/flag.ts'
 import { findProperty } from '#db/queries/property.ts'
 import { notFound } from '#lib/http/app-error.ts'
-import { log } from '#lib/log.server.ts'
+import { log, loggedError } from '#lib/log.server.ts'
 import { cachedAssess } from './assessment-cache.ts'
 import { checkService } from './check-service.server.ts'
 import { evaluateUnits, type UnitResult } from './evaluate-units.server.ts'
@@ -77,9 +77,5 @@ function counted(counts: Counts, result: UnitResult): Counts {
   return { ...counts, evaluated: counts.evaluated + 1, cold: counts.cold + (cold ? 1 : 0) }
 }
 
-/** The unit's id and the error's kind; a message could quote a record. */
 export const logFailure = ({ inputs, error }: Extract<UnitResult, { status: 'failed' }>): void =>
-  log.error(
-    { unitId: inputs.unit.id, err: error instanceof Error ? { name: error.name, stack: error.stack } : typeof error },
-    'unit could not be evaluated',
-  )
+  log.error({ unitId: inputs.unit.id, err: loggedError(error) }, 'unit could not be evaluated')

@@ -1,5 +1,5 @@
 /** The edge of `/api`: any thrown thing becomes one RFC 9457 problem document; unknown errors show an id and nothing else. */
-import { log } from '#lib/log.server.ts'
+import { log, loggedError } from '#lib/log.server.ts'
 import { AppError, type AppErrorCode } from './app-error.ts'
 
 export const STATUS_OF: Readonly<Record<AppErrorCode, number>> = {
@@ -56,10 +56,7 @@ export function toResponse(error: unknown, instance: string): Response {
 /** Logs an error nobody expected and returns the id under which it stands in the log. */
 export function logUnknown(error: unknown): string {
   const errorId = crypto.randomUUID()
-  log.error(
-    { errorId, err: error instanceof Error ? { name: error.name, message: error.message, stack: error.stack } : String(error) },
-    'unexpected error',
-  )
+  log.error({ errorId, err: loggedError(error) }, 'unexpected error')
   return errorId
 }
 

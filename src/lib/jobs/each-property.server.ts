@@ -1,11 +1,11 @@
 /** Runs a job for each property of each organisation, every due period once. One organisation's failure does not stop the rest. */
 import type { OrgDb } from '#db/org-db.ts'
-import { type JobCounts, listScheduledProperties, type ScheduledProperty } from '#db/queries/job.ts'
+import { addFailedRun, type JobCounts, listScheduledProperties, type ScheduledProperty } from '#db/queries/job.ts'
 import { organisationsForJob } from '#lib/auth/scope.server.ts'
-import { log } from '#lib/log.server.ts'
+import { log, loggedError } from '#lib/log.server.ts'
 import type { Worker } from './job.ts'
 import type { Periods } from './periods.ts'
-import { runOncePerPeriod } from './run-once.server.ts'
+import { failureOf, runOncePerPeriod } from './run-once.server.ts'
 
 export interface PropertyJob {
   readonly name: string
@@ -38,7 +38,9 @@ export async function forEachProperty(worker: Worker, job: PropertyJob): Promise
     } catch (error) {
       totals.failed += 1
       const { organisationId } = org.scope
-      log.error({ job: job.name, organisationId, err: { reason: String(error) } }, 'job could not go through an organisation')
+      const { errorId, sentence } = failureOf(error)
+      log.error({ errorId, job: job.name, organisationId, err: loggedError(error) }, 'job could not go through an organisation')
+      await addFailedRun(worker.db, { job: job.name, organisationId, atMs: worker.now(), error: sentence })
     }
   }
   return totals

@@ -1,5 +1,5 @@
 /** Which periods of a job are due at an instant in a property's zone. Exact over clock changes: a missing wall-clock time moves, a repeated one counts once. */
-import { addDays, addMonths, civilOf, instantOf, monthOf } from '#lib/core/time/civil.ts'
+import { addDays, addMonths, civilOf, clockChangesIn, instantOf, monthOf } from '#lib/core/time/civil.ts'
 import type { Mode } from './job.ts'
 
 export interface Place {
@@ -40,4 +40,17 @@ export const pastMonths =
       if (month >= first && (mode !== 'due' || nowMs >= dueAtMs)) months.push(month)
     }
     return mode === 'due' ? months : months.slice(-1)
+  }
+
+/** Every zone that still changes its clocks does so within a year. */
+const CHANGE_WITHIN_MS = 366 * 86_400_000
+
+/** The next clock change, by the local day of its night, from `daysBefore` days before that day at `minuteOfDay`; none where clocks are not changed. */
+export const beforeClockChange =
+  (daysBefore: number, minuteOfDay: number): Periods =>
+  ({ zone }, nowMs, mode) => {
+    const [change] = clockChangesIn({ startsAtMs: nowMs, endsAtMs: nowMs + CHANGE_WITHIN_MS }, zone)
+    if (!change) return []
+    const day = civilOf(change.atMs - 1, zone).day
+    return mode === 'due' && nowMs < instantOf(addDays(day, -daysBefore), minuteOfDay, zone) ? [] : [day]
   }

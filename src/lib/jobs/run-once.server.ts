@@ -2,6 +2,7 @@
  * Runs a period of a job exactly once, however many workers try: whoever takes the lease runs it, and a finished period is
  * never run again. A failed period is tried again after a pause that grows; a killed worker's period is taken over.
  */
+import { randomUUID } from 'node:crypto'
 import type { Kysely } from 'kysely'
 import type { OrganisationId } from '#db/ids.ts'
 import {
@@ -15,7 +16,8 @@ import {
   takeLease,
 } from '#db/queries/job.ts'
 import type { Database } from '#db/schema.ts'
-import { log } from '#lib/log.server.ts'
+import { AppError } from '#lib/http/app-error.ts'
+import { log, loggedError } from '#lib/log.server.ts'
 import { holderIsGone } from './holder.server.ts'
 
 export interface PeriodToRun extends JobPeriod {
@@ -32,7 +34,6 @@ const FIRST_PAUSE_MS = 15 * 60_000
 const LONGEST_PAUSE_MS = 6 * 3_600_000
 /** Holder of a failed period until its pause is over. */
 const NOBODY = ''
-const ERROR_LENGTH = 400
 
 export async function runOncePerPeriod(given: PeriodToRun, work: () => Promise<JobCounts>): Promise<PeriodOutcome> {
   const { db, job, scope, period, holder, organisationId, nowMs } = given
@@ -51,17 +52,22 @@ export async function runOncePerPeriod(given: PeriodToRun, work: () => Promise<J
     return 'done'
   } catch (error) {
     const pauseMs = Math.min(LONGEST_PAUSE_MS, FIRST_PAUSE_MS * 2 ** (taken.attempts - 1))
-    const reason = error instanceof Error ? `${error.name}: ${error.message}` : String(error)
+    const { errorId, sentence } = failureOf(error)
     await db.transaction().execute(async (trx) => {
       await changeLease(trx, of, { holder: NOBODY, leaseUntilMs: finishedAtMs() + pauseMs })
-      await finishJobRun(trx, taken.runId, { finishedAtMs: finishedAtMs(), counts: null, error: reason.slice(0, ERROR_LENGTH) })
+      await finishJobRun(trx, taken.runId, { finishedAtMs: finishedAtMs(), counts: null, error: sentence })
     })
-    log.error(
-      { job, scope, period, organisationId, err: { reason, stack: error instanceof Error ? error.stack : undefined } },
-      'job failed',
-    )
+    log.error({ errorId, job, scope, period, organisationId, err: loggedError(error) }, 'job failed')
     return 'failed'
   }
+}
+
+/** What people read of a failure: words meant for them, or a sentence and the id under which the rest stands in the log. */
+export function failureOf(error: unknown): { readonly errorId: string; readonly sentence: string } {
+  const errorId = randomUUID().slice(0, 8)
+  const sentence =
+    error instanceof AppError ? error.message : `It failed for a reason that nobody expected. Its id in the server’s log is ${errorId}.`
+  return { errorId, sentence }
 }
 
 type Taken = { readonly runId: string; readonly attempts: number } | 'already-done' | 'held-elsewhere'

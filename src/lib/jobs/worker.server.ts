@@ -1,7 +1,7 @@
 /** The worker: runs the jobs one after the other at start, to make up what was missed, then each at its own times; never two rounds of one job at once. */
 import { schedule } from 'node-cron'
 import type { JobCounts } from '#db/queries/job.ts'
-import { log } from '#lib/log.server.ts'
+import { log, loggedError } from '#lib/log.server.ts'
 import type { Job, Worker } from './job.ts'
 
 export interface RunningWorker {
@@ -40,10 +40,7 @@ async function guarded(job: Job, worker: Worker): Promise<void> {
   try {
     await job.run(worker)
   } catch (error) {
-    log.error(
-      { job: job.name, err: { reason: String(error), stack: error instanceof Error ? error.stack : undefined } },
-      'job round failed',
-    )
+    log.error({ job: job.name, err: loggedError(error) }, 'job round failed')
   }
 }
 
