@@ -56,6 +56,8 @@ export interface Evaluation {
   readonly outcome: EvaluationOutcome
   readonly assumptions: readonly Assumption[]
   readonly hardwareRecordId: HardwareRecordId | null
+  /** Of what it was computed from; another one than today's inputs have means that it is out of date. */
+  readonly inputsHash: string | null
   readonly evaluatedAtMs: number
 }
 
@@ -85,6 +87,7 @@ const toEvaluation = (row: Row): Evaluation => ({
   outcome: fromJson<EvaluationOutcome>(row.outcome),
   assumptions: fromJson<readonly Assumption[]>(row.assumptions),
   hardwareRecordId: row.hardware_record_id,
+  inputsHash: row.inputs_hash,
   evaluatedAtMs: row.evaluated_at_ms,
 })
 
@@ -108,6 +111,7 @@ const toColumns = (value: Evaluation): Omit<Insertable<EvaluationTable>, 'organi
   outcome: toJson(value.outcome),
   assumptions: toJson(value.assumptions),
   hardware_record_id: value.hardwareRecordId,
+  inputs_hash: value.inputsHash,
   evaluated_at_ms: value.evaluatedAtMs,
 })
 
@@ -155,4 +159,10 @@ export async function putEvaluation(db: OrgTrx, value: NewEvaluation): Promise<v
     .insertInto('evaluation', { id: value.id, ...columns })
     .onConflict((conflict) => conflict.columns(['organisation_id', 'unit_id', 'day']).doUpdateSet(columns))
     .execute()
+}
+
+/** Removes what can no longer be called current: days of `[fromDay, toDay)` of units that could not be computed. */
+export async function removeEvaluations(db: OrgTrx, unitIds: readonly UnitId[], fromDay: string, toDay: string): Promise<void> {
+  if (unitIds.length === 0) return
+  await db.deleteFrom('evaluation').where('unit_id', 'in', unitIds).where('day', '>=', fromDay).where('day', '<', toDay).execute()
 }

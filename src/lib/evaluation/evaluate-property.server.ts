@@ -35,18 +35,26 @@ export async function evaluateProperty(
 ): Promise<EvaluationCounts> {
   const property = await findProperty(db, propertyId)
   if (!property) throw notFound('property')
-  const inputs = await propertyInputs(db, { property, nowMs, days })
+  return evaluateInputs(db, await propertyInputs(db, { property, nowMs, days }), nowMs)
+}
+
+/** Some or all units of a property: each through the model, written in batches, the building's load after them. */
+export async function evaluateInputs(db: OrgDb, inputs: PropertyInputs, nowMs: number): Promise<EvaluationCounts> {
   let counts = { units: inputs.units.length, evaluated: 0, failed: 0, cold: 0 }
   let changes: FlagChanges = { opened: 0, refreshed: 0, closed: 0 }
   let batch: UnitResult[] = []
-  for await (const result of evaluateUnits(inputs, cachedAssess())) {
-    counts = counted(counts, result)
-    batch.push(result)
-    if (batch.length < UNITS_A_TRANSACTION) continue
-    changes = addChanges(changes, await writeBatch(db, { inputs, results: batch, nowMs }))
+  const write = async () => {
+    for (const written of await writeWhole(db, { inputs, results: batch, nowMs })) {
+      for (const result of written.results) counts = counted(counts, result)
+      changes = addChanges(changes, written.changes)
+    }
     batch = []
   }
-  changes = addChanges(changes, await writeBatch(db, { inputs, results: batch, nowMs }))
+  for await (const result of evaluateUnits(inputs, cachedAssess())) {
+    batch.push(result)
+    if (batch.length === UNITS_A_TRANSACTION) await write()
+  }
+  await write()
   changes = addChanges(changes, await inTransaction(db, (trx) => checkService(trx, inputs, nowMs)))
   return { ...counts, flagsOpened: changes.opened, flagsRefreshed: changes.refreshed, flagsClosed: changes.closed }
 }
@@ -55,6 +63,29 @@ interface Batch {
   readonly inputs: PropertyInputs
   readonly results: readonly UnitResult[]
   readonly nowMs: number
+}
+
+interface Written {
+  readonly results: readonly UnitResult[]
+  readonly changes: FlagChanges
+}
+
+/** A batch in one transaction; where that fails, unit by unit, so that the one whose figures cannot be kept stops no other. */
+async function writeWhole(db: OrgDb, batch: Batch): Promise<readonly Written[]> {
+  try {
+    return [{ results: batch.results, changes: await writeBatch(db, batch) }]
+  } catch (error) {
+    const [only, ...others] = batch.results
+    if (!only) throw error
+    if (others.length > 0) {
+      const written: Written[] = []
+      for (const result of batch.results) written.push(...(await writeWhole(db, { ...batch, results: [result] })))
+      return written
+    }
+    // That it failed can be kept, or the database itself is at fault.
+    const results: readonly UnitResult[] = [{ status: 'failed', inputs: only.inputs, error }]
+    return [{ results, changes: await writeBatch(db, { ...batch, results }) }]
+  }
 }
 
 /** Flags are read inside the transaction: one that was dismissed while the model ran stays dismissed. */

@@ -30,8 +30,25 @@ export function evaluateOne({ site, contexts }: Pick<PropertyInputs, 'site' | 'c
   try {
     const duration = hardware && durationOf(hardware)
     const days = evaluateDays({ site, contexts, hardware, duration, wants }, assess)
+    requireNumbers(days)
     return { status: 'evaluated', inputs, days, findings: unitFindings({ site, contexts, hardware, duration, wants, days }) }
   } catch (error) {
     return { status: 'failed', inputs, error }
+  }
+}
+
+/** A figure that is no number would be stored as "nothing to say" and read as well; such a unit is not known instead. */
+function requireNumbers(days: readonly DayResult[]): void {
+  for (const { readiness, peakKwh, costMinor, baselineEnergyKwh } of days) {
+    const needs = readiness?.needs ?? []
+    const figures = [peakKwh, costMinor, baselineEnergyKwh, readiness?.energyInKwh, readiness?.energyDeliveredKwh, readiness?.energyLostKwh]
+    const ofNeeds = needs.flatMap((need) => [
+      need.startByMin,
+      need.requiredRunMin,
+      need.chosenRunMin,
+      need.shortfallMin,
+      need.minutesServed,
+    ])
+    if ([...figures, ...ofNeeds].some(Number.isNaN)) throw new RangeError('a figure of the evaluation is no number')
   }
 }

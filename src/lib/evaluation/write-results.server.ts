@@ -1,18 +1,19 @@
-/** Writes what was computed for some units: evaluations in the place of older ones, expected runs replaced, flags reconciled. */
+/** Writes what was computed for some units: evaluations in the place of older ones, expected runs replaced, flags reconciled. A unit that could not be computed keeps none of the days ahead. */
 import { type EvaluationId, newId, type PropertyId, type RunId, type UnitId } from '#db/ids.ts'
 import type { OrgTrx } from '#db/org-db.ts'
-import { putEvaluation } from '#db/queries/evaluation.ts'
+import { putEvaluation, removeEvaluations } from '#db/queries/evaluation.ts'
 import type { Flag } from '#db/queries/flag.ts'
 import { addRun, removeExpectedRuns } from '#db/queries/run.ts'
 import { MS_PER_MIN } from '#lib/core/units.ts'
 import type { UnitResult } from './evaluate-units.server.ts'
+import { inputsHash } from './inputs-hash.server.ts'
 import { type Finding, NOT_EVALUATED } from './evidence.ts'
 import type { PropertyInputs } from './load-inputs.server.ts'
 import { type FlagChanges, reconcileFlags } from './reconcile-flags.server.ts'
 import type { DayResult } from './types.ts'
 
 export interface Batch {
-  readonly inputs: Pick<PropertyInputs, 'property' | 'fromDay' | 'toDay'>
+  readonly inputs: Pick<PropertyInputs, 'property' | 'site' | 'fromDay' | 'toDay'>
   readonly results: readonly UnitResult[]
   readonly openFlags: readonly Flag[]
   readonly dismissals: readonly Flag[]
@@ -22,15 +23,14 @@ export interface Batch {
 export async function writeResults(trx: OrgTrx, { inputs, results, openFlags, dismissals, nowMs }: Batch): Promise<FlagChanges> {
   const { property, fromDay, toDay } = inputs
   const evaluated = results.filter((result) => result.status === 'evaluated')
-  await removeExpectedRuns(
-    trx,
-    evaluated.map((result) => result.inputs.unit.id),
-    fromDay,
-    toDay,
-  )
+  const unitIds = (of: readonly UnitResult[]) => of.map((result) => result.inputs.unit.id)
+  await removeExpectedRuns(trx, unitIds(results), fromDay, toDay)
+  const failed = results.filter((result) => result.status === 'failed')
+  await removeEvaluations(trx, unitIds(failed), fromDay, toDay)
   for (const { inputs: unit, days } of evaluated) {
+    const hash = inputsHash(inputs, unit)
     for (const day of days) {
-      await putEvaluation(trx, toEvaluation({ propertyId: property.id, unit, day, nowMs }))
+      await putEvaluation(trx, toEvaluation({ propertyId: property.id, unit, day, hash, nowMs }))
       for (const run of day.runs) await addRun(trx, toRun({ propertyId: property.id, unitId: unit.unit.id, day, run }))
     }
   }
@@ -52,10 +52,11 @@ interface UnitDayCase {
   readonly propertyId: PropertyId
   readonly unit: UnitResult['inputs']
   readonly day: DayResult
+  readonly hash: string
   readonly nowMs: number
 }
 
-function toEvaluation({ propertyId, unit, day, nowMs }: UnitDayCase) {
+function toEvaluation({ propertyId, unit, day, hash, nowMs }: UnitDayCase) {
   const { context, readiness } = day
   // What a table shows of a day is its worst need: the one most short, or the first.
   const needs = readiness?.needs ?? []
@@ -93,6 +94,7 @@ function toEvaluation({ propertyId, unit, day, nowMs }: UnitDayCase) {
     },
     assumptions: day.assumptions,
     hardwareRecordId: unit.hardware?.recordId ?? null,
+    inputsHash: hash,
     evaluatedAtMs: nowMs,
   }
 }

@@ -12,6 +12,7 @@ import { actingPerson, hasRole, requireRole } from '#lib/auth/permission.ts'
 import { evaluateUnit, type UnitEvaluation } from '#lib/evaluation/evaluate-unit.server.ts'
 import { AppError, notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
+import { tellTenant } from '#lib/schedule/tell-tenant.server.ts'
 import { recordHardwareSchema } from './record-schema.ts'
 
 export interface RecordHardware {
@@ -62,6 +63,14 @@ export async function writeRevision(trx: OrgTrx, { unitId, input, visitId, nowMs
     before: before?.installation,
     after: installation,
   })
+  if (before)
+    await tellTenant(trx, {
+      unitId,
+      recordId: written.recordId,
+      before: before.installation.controller,
+      after: installation.controller,
+      nowMs,
+    })
   return written
 }
 

@@ -1,6 +1,6 @@
 /** Due periods, on the days where clocks change: IANA time zone database 2025b, Europe/London 2026-03-29 and 2026-10-25, America/New_York 2026-03-08. */
 import { describe, expect, it } from 'vitest'
-import { latestDay, pastMonths, todayFrom } from '#lib/jobs/periods.ts'
+import { beforeClockChange, latestDay, pastMonths, todayFrom } from '#lib/jobs/periods.ts'
 
 const LONDON = { zone: 'Europe/London', createdAtMs: Date.UTC(2026, 0, 15) }
 const NEW_YORK = { zone: 'America/New_York', createdAtMs: Date.UTC(2026, 0, 15) }
@@ -62,5 +62,23 @@ describe('pastMonths', () => {
 
   it('names the month that ended last when asked to run now', () => {
     expect(digest(LONDON, at('2026-03-01T00:10:00Z'), 'now')).toEqual(['2026-02'])
+  })
+})
+
+describe('beforeClockChange', () => {
+  const tenDays = beforeClockChange(10, 9 * 60)
+
+  it('is due from the hour ten local days before the day of the change until the clocks have changed', () => {
+    expect(tenDays(LONDON, at('2026-10-15T07:59:59Z'), 'due')).toEqual([])
+    expect(tenDays(LONDON, at('2026-10-15T08:00:00Z'), 'due')).toEqual(['2026-10-25'])
+    expect(tenDays(LONDON, at('2026-10-25T00:59:59Z'), 'due')).toEqual(['2026-10-25'])
+    expect(tenDays(LONDON, at('2026-10-25T01:00:01Z'), 'due')).toEqual([])
+    expect(tenDays(NEW_YORK, at('2026-02-26T13:59:59Z'), 'due')).toEqual([])
+    expect(tenDays(NEW_YORK, at('2026-02-26T14:00:00Z'), 'due')).toEqual(['2026-03-08'])
+  })
+
+  it('names the next change when asked to run now, and none where clocks are not changed', () => {
+    expect(tenDays(LONDON, at('2026-06-01T12:00:00Z'), 'now')).toEqual(['2026-10-25'])
+    expect(tenDays({ ...LONDON, zone: 'Asia/Tokyo' }, at('2026-06-01T12:00:00Z'), 'now')).toEqual([])
   })
 })
