@@ -7,6 +7,7 @@ import { newId, type OrganisationId, type PropertyId } from '../ids.ts'
 import { fromJson, toJson } from '../json.ts'
 import type { OrgDb } from '../org-db.ts'
 import type { Database } from '../schema.ts'
+import type { JobRunTable } from '../tables/job-run.ts'
 
 /** One period of one job in one scope (a property's id, or the whole server). */
 export interface JobPeriod {
@@ -151,7 +152,7 @@ export async function listScheduledProperties(db: OrgDb): Promise<readonly Sched
 
 export interface JobRun {
   readonly job: string
-  /** Id of the property it ran for. */
+  /** Id of the property it ran for, of the organisation, or `server`. */
   readonly scope: string
   readonly period: string
   readonly startedAtMs: number
@@ -165,28 +166,45 @@ export async function listJobRuns(db: Kysely<Database>, organisationId: Organisa
   const rows = await db
     .selectFrom('job_run')
     .where('job_run.organisation_id', '=', organisationId)
-    .select([
-      'job_run.job',
-      'job_run.scope',
-      'job_run.period',
-      'job_run.started_at_ms',
-      'job_run.finished_at_ms',
-      'job_run.counts',
-      'job_run.error',
-    ])
+    .select(RUN_COLUMNS)
     .orderBy('job_run.started_at_ms', 'desc')
     .limit(limit)
     .execute()
-  return rows.map((row) => ({
-    job: row.job,
-    scope: row.scope,
-    period: row.period,
-    startedAtMs: row.started_at_ms,
-    finishedAtMs: row.finished_at_ms,
-    counts: row.counts === null ? null : fromJson<JobCounts>(row.counts),
-    error: row.error,
-  }))
+  return rows.map(toRun)
 }
+
+/** The last run of each job in each of its scopes: of one organisation, or with `null` those of the whole server. */
+export async function listLastRuns(db: Kysely<Database>, organisationId: OrganisationId | null): Promise<readonly JobRun[]> {
+  // Beside a lone max(), SQLite takes the other columns from the row that has it (https://sqlite.org/lang_select.html, 2.5).
+  const rows = await db
+    .selectFrom('job_run')
+    .where('job_run.organisation_id', 'is', organisationId)
+    .select(['job_run.job', 'job_run.scope', 'job_run.period', 'job_run.finished_at_ms', 'job_run.counts', 'job_run.error'])
+    .select((eb) => eb.fn.max('job_run.started_at_ms').as('started_at_ms'))
+    .groupBy(['job_run.job', 'job_run.scope'])
+    .execute()
+  return rows.map(toRun)
+}
+
+const RUN_COLUMNS = [
+  'job_run.job',
+  'job_run.scope',
+  'job_run.period',
+  'job_run.started_at_ms',
+  'job_run.finished_at_ms',
+  'job_run.counts',
+  'job_run.error',
+] as const
+
+const toRun = (row: Pick<JobRunTable, 'job' | 'scope' | 'period' | 'started_at_ms' | 'finished_at_ms' | 'counts' | 'error'>): JobRun => ({
+  job: row.job,
+  scope: row.scope,
+  period: row.period,
+  startedAtMs: row.started_at_ms,
+  finishedAtMs: row.finished_at_ms,
+  counts: row.counts === null ? null : fromJson<JobCounts>(row.counts),
+  error: row.error,
+})
 
 export async function lastJobEnd(db: Kysely<Database>): Promise<number | null> {
   const row = await db

@@ -144,3 +144,21 @@ export async function findMessage(db: OrgDb, id: MessageId): Promise<StoredMessa
     tenancyId: row.tenancy_id,
   }
 }
+
+/** How the organisation's letters went since `sinceMs`, by state, and when the last one left. */
+export async function summariseDelivery(
+  db: OrgDb,
+  sinceMs: number,
+): Promise<{ readonly lastSentAtMs: number | null; readonly counts: Readonly<Partial<Record<MailState, number>>> }> {
+  const last = await db
+    .selectFrom('message')
+    .select((eb) => eb.fn.max('message.sent_at_ms').as('at_ms'))
+    .executeTakeFirst()
+  const rows = await db
+    .selectFrom('message')
+    .where('message.queued_at_ms', '>=', sinceMs)
+    .select((eb) => ['message.state', eb.fn.countAll<number>().as('count')])
+    .groupBy('message.state')
+    .execute()
+  return { lastSentAtMs: last?.at_ms ?? null, counts: Object.fromEntries(rows.map((row) => [row.state, row.count])) }
+}
