@@ -19,6 +19,7 @@ export const FLAG_KINDS = [
   'growth-range',
   'scald-risk',
   'not-evaluated',
+  'model-disagrees',
 ] as const
 export type FlagKind = (typeof FLAG_KINDS)[number]
 

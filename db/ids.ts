@@ -28,6 +28,7 @@ export type FlagId = Brand<string, 'FlagId'>
 export type VisitId = Brand<string, 'VisitId'>
 export type MessageId = Brand<string, 'MessageId'>
 export type DigestId = Brand<string, 'DigestId'>
+export type FeedId = Brand<string, 'FeedId'>
 
 export const parseOrganisationId = idParser<OrganisationId>()
 export const parsePersonId = idParser<PersonId>()
@@ -39,6 +40,7 @@ export const parseFlagId = idParser<FlagId>()
 export const parseVisitId = idParser<VisitId>()
 export const parseMessageId = idParser<MessageId>()
 export const parseDigestId = idParser<DigestId>()
+export const parseFeedId = idParser<FeedId>()
 
 /** A fresh random id of the type asked for, e.g. `newId<UnitId>()`. */
 export const newId = <Id extends string>(): Id => randomUUID() as string as Id

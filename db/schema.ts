@@ -25,6 +25,7 @@ import type { MessageTable } from './tables/message.ts'
 import type { SuppressionTable } from './tables/suppression.ts'
 import type { DigestTable } from './tables/digest.ts'
 import type { FeedbackTable } from './tables/feedback.ts'
+import type { CalendarFeedTable } from './tables/calendar-feed.ts'
 import type { AuditEntryTable } from './tables/audit-entry.ts'
 import type { JobLeaseTable } from './tables/job-lease.ts'
 import type { JobRunTable } from './tables/job-run.ts'
@@ -59,6 +60,7 @@ export interface Database {
   suppression: SuppressionTable
   digest: DigestTable
   feedback: FeedbackTable
+  calendar_feed: CalendarFeedTable
   audit_entry: AuditEntryTable
   job_lease: JobLeaseTable
   job_run: JobRunTable

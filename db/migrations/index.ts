@@ -7,6 +7,7 @@ import * as postAndJobs from './0004-post-and-jobs.ts'
 import * as accountEvents from './0005-account-events.ts'
 import * as mailComplete from './0009-mail-complete.ts'
 import * as currentFigures from './0010-current-figures.ts'
+import * as tenantFeeds from './0011-tenant-feeds.ts'
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0001-accounts': accounts,
@@ -16,4 +17,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0005-account-events': accountEvents,
   '0009-mail-complete': mailComplete,
   '0010-current-figures': currentFigures,
+  '0011-tenant-feeds': tenantFeeds,
 }

@@ -26,12 +26,12 @@ export async function* evaluateUnits({ site, contexts, units }: PropertyInputs, 
 }
 
 export function evaluateOne({ site, contexts }: Pick<PropertyInputs, 'site' | 'contexts'>, inputs: UnitInputs, assess: Assess): UnitResult {
-  const { hardware, wants } = inputs
+  const { hardware, wants, answers } = inputs
   try {
     const duration = hardware && durationOf(hardware)
     const days = evaluateDays({ site, contexts, hardware, duration, wants }, assess)
     requireNumbers(days)
-    return { status: 'evaluated', inputs, days, findings: unitFindings({ site, contexts, hardware, duration, wants, days }) }
+    return { status: 'evaluated', inputs, days, findings: unitFindings({ site, contexts, hardware, duration, wants, days, answers }) }
   } catch (error) {
     return { status: 'failed', inputs, error }
   }

@@ -1,10 +1,12 @@
 /** What somebody must act on in a unit: findings from its days and its hardware, each with its numbers in the order they are read. Pure. */
+import type { AnsweredDay } from '#db/queries/feedback.ts'
 import type { EvidenceLine } from '#db/queries/flag.ts'
 import type { DurationOutcome } from '#lib/core/controller/types.ts'
 import type { NeedOutcome } from '#lib/core/tank/types.ts'
 import { formatDay } from '#lib/format.ts'
 import { clockWords } from '#lib/strip/clock.ts'
 import { minutes } from './assumptions.ts'
+import { disagreementFinding } from './disagreement.ts'
 import { assumedLines, type Finding, found } from './evidence.ts'
 import { fixesFor } from './fixes.ts'
 import { hardwareFindings } from './hazards.ts'
@@ -19,13 +21,16 @@ export interface FindingCase {
   /** What the tenancy of a day wants, in step with `days`. */
   readonly wants: readonly Wants[]
   readonly days: readonly DayResult[]
+  readonly answers: readonly AnsweredDay[]
 }
 
 export function unitFindings(unit: FindingCase): readonly Finding[] {
-  const { site, hardware, duration, days } = unit
+  const { site, hardware, duration, days, answers } = unit
   const cold = coldFinding(unit)
+  const disagreement = hardware && disagreementFinding(hardware, answers)
   return [
     ...(cold ? [cold] : []),
+    ...(disagreement ? [disagreement] : []),
     ...(hardware && duration ? hardwareFindings({ site, hardware, duration, days }) : []),
     ...(hardware ? hygieneFindings({ site, hardware, days }) : []),
   ]

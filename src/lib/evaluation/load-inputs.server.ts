@@ -1,15 +1,17 @@
-/** Reads what an evaluation needs: a whole property in six statements whatever its size, or one unit alone. */
+/** Reads what an evaluation needs: a whole property in seven statements whatever its size, or one unit alone. */
 import type { TenancyId, UnitId } from '#db/ids.ts'
 import type { OrgDb } from '#db/org-db.ts'
+import { type AnsweredDay, listAnsweredDays } from '#db/queries/feedback.ts'
 import { currentHardware, type HardwareRecord, listCurrentHardware } from '#db/queries/hardware.ts'
 import { currentPreferences, findPreference, type Preference } from '#db/queries/preference.ts'
 import type { Property } from '#db/queries/property.ts'
 import { findTariff } from '#db/queries/tariff.ts'
-import { listTenancies, listTenanciesBetween, type Tenancy } from '#db/queries/tenancy.ts'
+import { listTenancies, listTenanciesBetween, tenancyCovers, type Tenancy } from '#db/queries/tenancy.ts'
 import { listUnits, type Unit } from '#db/queries/unit.ts'
 import { addDays, civilOf } from '#lib/core/time/civil.ts'
 import type { Day } from '#lib/core/time/types.ts'
 import { dayContext } from './day-context.ts'
+import { DISAGREEMENT } from './disagreement.ts'
 import type { DayContext, Site, UnitHardware, Wants } from './types.ts'
 
 /** Today and the seven local days after it. */
@@ -20,6 +22,8 @@ export interface UnitInputs {
   readonly hardware: UnitHardware | null
   /** In step with the contexts. */
   readonly wants: readonly Wants[]
+  /** What whoever lives there today has said of days gone by, newest first. */
+  readonly answers: readonly AnsweredDay[]
 }
 export interface PropertyInputs {
   readonly property: Property
@@ -67,6 +71,7 @@ export async function propertyInputs(db: OrgDb, asked: Horizon): Promise<Propert
   const hardware = await listCurrentHardware(db, id)
   const tenancies = await listTenanciesBetween(db, id, { fromDay: frame.fromDay, toDay: frame.toDay })
   const preferences = await currentPreferences(db, id)
+  const answers = byTenancy(await listAnsweredDays(db, { propertyId: id }, addDays(frame.fromDay, -DISAGREEMENT.lookBackDays)))
   const byUnit = new Map<UnitId, Tenancy[]>()
   for (const tenancy of tenancies) byUnit.set(tenancy.unitId, [...(byUnit.get(tenancy.unitId) ?? []), tenancy])
   return {
@@ -75,6 +80,7 @@ export async function propertyInputs(db: OrgDb, asked: Horizon): Promise<Propert
       unit,
       hardware: toHardware(hardware.get(unit.id) ?? null),
       wants: frame.contexts.map((context) => wantsOn(context.day, byUnit.get(unit.id) ?? [], preferences)),
+      answers: answersOf(livingOn(frame.fromDay, byUnit.get(unit.id) ?? []), answers),
     })),
   }
 }
@@ -88,14 +94,33 @@ export async function unitInputs(db: OrgDb, asked: Horizon, unit: Unit): Promise
     const preference = await findPreference(db, tenancy.id)
     if (preference) preferences.set(tenancy.id, preference)
   }
-  return { ...frame, units: [{ unit, hardware, wants: frame.contexts.map((context) => wantsOn(context.day, tenancies, preferences)) }] }
+  const wants = frame.contexts.map((context) => wantsOn(context.day, tenancies, preferences))
+  const said = byTenancy(await listAnsweredDays(db, { unitId: unit.id }, addDays(frame.fromDay, -DISAGREEMENT.lookBackDays)))
+  return { ...frame, units: [{ unit, hardware, wants, answers: answersOf(livingOn(frame.fromDay, tenancies), said) }] }
 }
 
 const toHardware = (record: HardwareRecord | null): UnitHardware | null =>
   record && { recordId: record.id, installation: record.installation, measured: record.measured, recordedAtMs: record.recordedAtMs }
 
+const livingOn = (day: Day, tenancies: readonly Tenancy[]): Tenancy | null =>
+  tenancies.find((tenancy) => tenancyCovers(tenancy, day)) ?? null
+
+type AnswersByTenancy = ReadonlyMap<TenancyId, readonly AnsweredDay[]>
+
+function byTenancy(answers: readonly AnsweredDay[]): AnswersByTenancy {
+  const found = new Map<TenancyId, AnsweredDay[]>()
+  for (const answer of answers) {
+    const known = found.get(answer.tenancyId)
+    if (known) known.push(answer)
+    else found.set(answer.tenancyId, [answer])
+  }
+  return found
+}
+
+const answersOf = (tenancy: Tenancy | null, answers: AnswersByTenancy): readonly AnsweredDay[] => (tenancy && answers.get(tenancy.id)) ?? []
+
 function wantsOn(day: Day, tenancies: readonly Tenancy[], preferences: ReadonlyMap<TenancyId, Preference>): Wants {
-  const tenancy = tenancies.find((one) => one.fromDay <= day && (one.toDay === null || day < one.toDay))
+  const tenancy = livingOn(day, tenancies)
   if (!tenancy) return { kind: 'nobody' }
   const preference = preferences.get(tenancy.id)
   return preference ? { kind: 'week', week: preference.week, willing: preference.willing } : { kind: 'not-said' }

@@ -13,6 +13,7 @@ export const KIND_WORDS: Readonly<Record<FlagKind, string>> = {
   'growth-range': 'Growth range',
   'scald-risk': 'Scald risk',
   'not-evaluated': 'Not computed',
+  'model-disagrees': 'Model disagrees',
 }
 
 export const SEVERITY_WORDS: Readonly<Record<Severity, string>> = { dangerous: 'Dangerous', cold: 'Runs cold', attention: 'Attention' }
