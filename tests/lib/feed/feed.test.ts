@@ -29,7 +29,10 @@ const textOf = async (part: string, nowMs = NOW_MS): Promise<string> => {
   return feed.text
 }
 const read = (text: string) => new ICAL.Component(ICAL.parse(text) as unknown[])
-const eventsIn = (text: string) => read(text).getAllSubcomponents('vevent').map((event) => new ICAL.Event(event))
+const eventsIn = (text: string) =>
+  read(text)
+    .getAllSubcomponents('vevent')
+    .map((event) => new ICAL.Event(event))
 const uids = (text: string) => eventsIn(text).map((event) => event.uid)
 
 describe('a calendar address', () => {
