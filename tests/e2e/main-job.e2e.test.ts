@@ -143,6 +143,8 @@ describe('the main job', () => {
     // As of a day ago, so that the day it speaks of has begun: before that there is nothing to answer.
     const dayAgoMs = Date.now() - 86_400_000
     for (const atMs of [dayAgoMs, dayAgoMs + 1_000]) await product.runJob('tips', '--again', '--at', new Date(atMs).toISOString())
+    // Sent as of then too: a tip of a day that has begun is no longer delivered.
+    await product.runJob('mail', '--at', new Date(dayAgoMs + 2_000).toISOString())
     const mail = await mailTo('bea@tenants.example')
     expect(mail.subject).toMatch(/Press the timer by \d\d:\d\d tomorrow/)
     expect(mail.text).toMatch(/\d\d:\d\d/)
@@ -182,7 +184,7 @@ describe('the main job', () => {
     await page.goto(`${HOUSE}/units/B2`)
     await page.getByRole('heading', { name: 'B2: warm on time tomorrow.' }).waitFor()
     expect(await page.getByText('Runs too short').count()).toBe(0)
-    expect((await mailTo('petra@people.example')).subject).toContain('Done: B2')
+    expect((await mailTo('petra@people.example')).subject).toContain('what was done at B2')
   })
 
   it('mails the owner the month’s digest, once', async () => {
@@ -194,7 +196,9 @@ describe('the main job', () => {
     await product.runJob('digest', '--at', after.toISOString())
     await product.runJob('digest', '--at', after.toISOString(), '--again')
     const digests = async () =>
-      (await product.smtp.parsed()).filter((one) => one.to?.[0]?.address === 'lene@people.example' && one.subject?.includes('Mill House,'))
+      (await product.smtp.parsed()).filter(
+        (one) => one.to?.[0]?.address === 'lene@people.example' && one.subject?.includes('of Mill House:'),
+      )
     await product.runJob('mail', '--at', after.toISOString())
     await product.runJob('mail', '--at', after.toISOString())
     expect(await digests()).toHaveLength(1)
