@@ -35,8 +35,6 @@ export interface Blocks {
   readonly lossPerS: Float64Array
   /** 1 / nodes. */
   readonly share: Float64Array
-  /** Rate of each node if nothing mixed it, K/s. */
-  readonly nodeRateKPerS: Float64Array
 }
 
 /** Norm of the law times a step; 1.5 needs about 12 terms for 1e-8 K. */
@@ -62,7 +60,6 @@ export function emptyColumn(n: number): Column {
       meanK: new Float64Array(n),
       rateKPerS: new Float64Array(n),
       lossPerS: new Float64Array(n),
-      nodeRateKPerS: new Float64Array(n + 1),
     },
   }
 }
@@ -91,7 +88,7 @@ const SAME_K_PER_S = 1e-15
 /** Groups the column into blocks for the coming step, heat going into one node (−1: none). */
 export function findBlocks(column: Column, heatNode: number, heatKPerS: number): void {
   const { n, thetaK, lossPerS, conductionPerS: g, shareOf, blocks } = column
-  const { first, nodes, share, meanK, rateKPerS, nodeRateKPerS } = blocks
+  const { first, nodes, share, meanK, rateKPerS } = blocks
   const blockLossPerS = blocks.lossPerS
   let top = -1
   // The block being grown, in plain variables; a whole pool costs no more stores than a single node.
@@ -108,7 +105,6 @@ export function findBlocks(column: Column, heatNode: number, heatKPerS: number):
     const toBelow = g * (own - below)
     const ownLoss = lossPerS[node]!
     const ownRate = fromAbove - toBelow - ownLoss * own + (node === heatNode ? heatKPerS : 0)
-    nodeRateKPerS[node] = ownRate
     if (node < n && node > 0 && mean - own < SAME_K && rate < ownRate - SAME_K_PER_S) {
       // Equally warm, and the water below would become the warmer: it joins.
       count++

@@ -1,5 +1,5 @@
 /** Lets time pass with no water drawn: power windows, thermostats and elements, from one event to the next. */
-import { advance, type Motion } from './advance.ts'
+import { advance, type Motion, RISING } from './advance.ts'
 import type { PlacedElement, TankModel } from './model.ts'
 
 const S_PER_MIN = 60
@@ -10,6 +10,7 @@ const REACHED_K = 1e-6
 export interface Heating {
   readonly tank: TankModel
   readonly motion: Motion
+  minute: number
   /** Moments at which the power goes on, off, on… */
   readonly edges: readonly number[]
   nextEdge: number
@@ -22,43 +23,39 @@ export interface Heating {
   nextSampleMin: number
 }
 
-/** Returns the minute reached, which is `untilMin`. */
-export function heatUntil(run: Heating, fromMin: number, untilMin: number): number {
+export function heatUntil(run: Heating, untilMin: number): void {
   const { tank, motion, edges } = run
-  let minute = fromMin
-  while (untilMin - minute > SAME_MIN) {
-    while (run.nextEdge < edges.length && edges[run.nextEdge]! <= minute + SAME_MIN) run.nextEdge++
+  while (untilMin - run.minute > SAME_MIN) {
+    while (run.nextEdge < edges.length && edges[run.nextEdge]! <= run.minute + SAME_MIN) run.nextEdge++
     const stopMin = Math.min(untilMin, edges[run.nextEdge] ?? Infinity, run.nextSampleMin)
     const element = elementOn(run, run.nextEdge % 2 === 1)
     motion.heatNode = element?.node ?? -1
     motion.heatKPerS = element ? element.powerW / tank.nodeHeatJPerK : 0
-    const movedMin = advance(motion, (stopMin - minute) * S_PER_MIN) / S_PER_MIN
-    if (element) book(run, { fromMin: minute, movedMin, powerW: element.powerW })
-    minute = stopMin - minute - movedMin < SAME_MIN ? stopMin : minute + movedMin
-    if (minute >= run.nextSampleMin) {
-      run.sample?.(minute)
+    advance(motion, (stopMin - run.minute) * S_PER_MIN)
+    const reachedMin = run.minute + motion.movedS / S_PER_MIN
+    if (element) book(run, element.powerW)
+    run.minute = stopMin - reachedMin < SAME_MIN ? stopMin : reachedMin
+    if (run.minute >= run.nextSampleMin) {
+      run.sample?.(run.minute)
       run.nextSampleMin += run.sampleEveryMin
     }
   }
-  return minute
 }
 
 /** What heats now; sets what the column must watch for. Upper first, never both; each thermostat closes a dead band below the set point. */
 function elementOn(run: Heating, powered: boolean): PlacedElement | null {
   const { upper, lower } = run.tank
   const { watch } = run.motion
-  watch.risingNode = -1
-  watch.fallingNode[0] = -1
-  watch.fallingNode[1] = -1
+  for (let place = 0; place < watch.node.length; place++) watch.node[place] = -1
   run.upperCalls = upper !== null && calls(run, upper.node, run.upperCalls)
   run.lowerCalls = lower !== null && calls(run, lower.node, run.lowerCalls)
   if (!powered) return null
-  if (upper && !run.upperCalls) watchFor(run, 0, upper.node)
-  if (lower && !run.upperCalls && !run.lowerCalls) watchFor(run, 1, lower.node)
+  if (upper && !run.upperCalls) watchFall(run, RISING + 1, upper.node)
+  if (lower && !run.upperCalls && !run.lowerCalls) watchFall(run, RISING + 2, lower.node)
   const element = run.upperCalls ? upper : run.lowerCalls ? lower : null
   if (element) {
-    watch.risingNode = element.node
-    watch.risingToK = run.tank.setPointC - run.tank.ambientC
+    watch.node[RISING] = element.node
+    watch.toK[RISING] = run.tank.setPointC - run.tank.ambientC
   }
   return element
 }
@@ -69,20 +66,17 @@ function calls({ tank, motion }: Heating, node: number, before: boolean): boolea
 }
 
 /** Ends a step where a satisfied thermostat would close again. */
-function watchFor({ tank, motion }: Heating, place: 0 | 1, node: number): void {
-  motion.watch.fallingNode[place] = node
-  motion.watch.fallingToK[place] = tank.setPointC - tank.deadBandK - tank.ambientC
+function watchFall({ tank, motion }: Heating, place: number, node: number): void {
+  motion.watch.node[place] = node
+  motion.watch.toK[place] = tank.setPointC - tank.deadBandK - tank.ambientC
 }
 
-interface Heated {
-  readonly fromMin: number
-  readonly movedMin: number
-  readonly powerW: number
-}
-
-function book(run: Heating, { fromMin, movedMin, powerW }: Heated): void {
-  run.energyInJ += powerW * movedMin * S_PER_MIN
+/** Books the step that was just moved. */
+function book(run: Heating, powerW: number): void {
+  const { movedS } = run.motion
+  run.energyInJ += powerW * movedS
+  const endMin = run.minute + movedS / S_PER_MIN
   const last = run.heating[run.heating.length - 1]
-  if (last && last.powerW === powerW && Math.abs(last.endMin - fromMin) < SAME_MIN) last.endMin = fromMin + movedMin
-  else run.heating.push({ startMin: fromMin, endMin: fromMin + movedMin, powerW })
+  if (last && last.powerW === powerW && Math.abs(last.endMin - run.minute) < SAME_MIN) last.endMin = endMin
+  else run.heating.push({ startMin: run.minute, endMin, powerW })
 }

@@ -16,7 +16,7 @@ export interface Series {
   /** Temperature of each block at τ = 1. */
   readonly endK: Float64Array
   /** Scratch: the polynomial whose root is sought. */
-  readonly difference: Float64Array
+  readonly polynomial: Float64Array
   /** Heat lost in the whole step, as K of one node. */
   lostK: number
   /** Coefficient of τ^k of the heat lost, as K of one node per step. */
@@ -28,7 +28,7 @@ export const seriesFor = (n: number): Series => ({
   lostK: 0,
   terms: new Float64Array((MOST_TERMS + 1) * n),
   endK: new Float64Array(n),
-  difference: new Float64Array(MOST_TERMS + 1),
+  polynomial: new Float64Array(MOST_TERMS + 1),
   lostTerms: new Float64Array(MOST_TERMS + 1),
 })
 
@@ -100,7 +100,7 @@ const MOST_TRIES = 60
 /** Well under what counts as the same water. */
 const SAME_AS_ZERO_K = 1e-8
 
-/** A question to the series: block b, less another block, less a limit, times a sign; negative at τ = 0 and positive at τ = 1. */
+/** A question to the series: block b, less another block, less a limit, times a sign: not positive at τ = 0. */
 export interface Crossing {
   readonly block: number
   /** −1: none. */
@@ -109,25 +109,52 @@ export interface Crossing {
   readonly sign: 1 | -1
 }
 
-/** The τ at which a crossing happens: Newton's method from the chord, kept inside the bracket. */
-export function crossingAt({ order, terms, difference }: Series, n: number, { block, minusBlock, minusK, sign }: Crossing): number {
-  let at1 = 0
-  for (let k = 0, from = 0; k <= order; k++, from += n) {
-    const value = sign * (terms[from + block]! - (minusBlock < 0 ? 0 : terms[from + minusBlock]!) - (k === 0 ? minusK : 0))
-    difference[k] = value
-    at1 += value
-  }
-  const at0 = difference[0]!
+/** The τ at which a crossing happens that is positive at τ = 1. */
+export function crossingAt(series: Series, n: number, crossing: Crossing): number {
+  difference(series, n, crossing)
+  return rootOf(series, 1)
+}
+
+/** Slope of a block's temperature at τ = 1, K per step. */
+export function endSlope({ order, terms }: Series, n: number, block: number): number {
+  let slope = 0
+  for (let k = order; k > 0; k--) slope += k * terms[k * n + block]!
+  return slope
+}
+
+/** The τ of a crossing that is undone before τ = 1, the slope being positive at 0 and negative at 1; 2 when it turns before it crosses. */
+export function passedAt(series: Series, n: number, crossing: Crossing): number {
+  const { order, polynomial } = series
+  difference(series, n, crossing)
+  for (let k = 0; k < order; k++) polynomial[k] = -(k + 1) * polynomial[k + 1]!
+  polynomial[order] = 0
+  const turn = rootOf(series, 1)
+  difference(series, n, crossing)
+  let value = 0
+  for (let k = order; k >= 0; k--) value = value * turn + polynomial[k]!
+  return value > 0 ? rootOf(series, turn) : 2
+}
+
+function difference({ order, terms, polynomial }: Series, n: number, { block, minusBlock, minusK, sign }: Crossing): void {
+  for (let k = 0, from = 0; k <= order; k++, from += n)
+    polynomial[k] = sign * (terms[from + block]! - (minusBlock < 0 ? 0 : terms[from + minusBlock]!) - (k === 0 ? minusK : 0))
+}
+
+/** The root in (0, high) of the polynomial, negative at 0 and positive at `high`: Newton's method from the chord, kept inside the bracket. */
+export function rootOf({ order, polynomial }: Series, end: number): number {
+  const at0 = polynomial[0]!
   if (at0 >= 0) return 0
   let low = 0
-  let high = 1
-  let tau = at0 / (at0 - at1)
+  let high = end
+  let at1 = 0
+  for (let k = order; k >= 0; k--) at1 = at1 * end + polynomial[k]!
+  let tau = (end * at0) / (at0 - at1)
   for (let tries = 0; tries < MOST_TRIES; tries++) {
-    let value = difference[order]!
+    let value = polynomial[order]!
     let slope = 0
     for (let k = order - 1; k >= 0; k--) {
       slope = slope * tau + value
-      value = value * tau + difference[k]!
+      value = value * tau + polynomial[k]!
     }
     if (Math.abs(value) < SAME_AS_ZERO_K) return tau
     if (value < 0) low = tau

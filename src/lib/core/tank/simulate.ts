@@ -64,6 +64,7 @@ export function simulate(tank: TankModel, start: TankState, programme: Programme
   const run: Heating = {
     tank,
     motion,
+    minute: startMin,
     edges: edgesOf(programme),
     nextEdge: 0,
     upperCalls: start.upperCalls,
@@ -77,22 +78,21 @@ export function simulate(tank: TankModel, start: TankState, programme: Programme
   run.sample?.(startMin)
   const servedMin: number[] = draws.map(() => 0)
   let deliveredK = 0
-  let minute = startMin
   for (let index = 0; index < draws.length; index++) {
     const draw = draws[index]!
-    if (draw.endMin <= minute || draw.startMin >= endMin) continue
-    minute = heatUntil(run, minute, draw.startMin)
+    if (draw.endMin <= run.minute || draw.startMin >= endMin) continue
+    heatUntil(run, draw.startMin)
     const untilMin = Math.min(draw.endMin, endMin)
-    while (untilMin - minute > SAME_MIN) {
+    while (untilMin - run.minute > SAME_MIN) {
       const outletC = motion.column.thetaK[0]! + tank.ambientC
       const flow = hotFlowLPerMin(draw, outletC, tank.inletC)
-      const slugMin = Math.min(SLUG_MIN, untilMin - minute, tank.nodeVolumeL / flow)
+      const slugMin = Math.min(SLUG_MIN, untilMin - run.minute, tank.nodeVolumeL / flow)
       deliveredK += drawOff(motion, (flow * slugMin) / tank.nodeVolumeL, tank.inletC)
-      if (outletC >= (draw.useTemperatureC ?? 0) - SERVED_MARGIN_K) servedMin[index] = servedMin[index]! + slugMin
-      minute = heatUntil(run, minute, minute + slugMin)
+      if (Math.max(outletC, tank.inletC) >= (draw.useTemperatureC ?? 0) - SERVED_MARGIN_K) servedMin[index] = servedMin[index]! + slugMin
+      heatUntil(run, run.minute + slugMin)
     }
   }
-  heatUntil(run, minute, endMin)
+  heatUntil(run, endMin)
   const end = stateOf(run)
   giveBack(motion)
   return {
@@ -105,9 +105,12 @@ export function simulate(tank: TankModel, start: TankState, programme: Programme
   }
 }
 
-/** Hot share of a mixed flow (OCHRE, LBNL): (use − cold) / (hot − cold); all of it once the tank is no hotter than the use. */
+/**
+ * Hot share of a mixed flow (OCHRE, LBNL): (use − cold) / (hot − cold); all of it once the tank is no hotter than the use, and
+ * none where the mains are warm enough by themselves.
+ */
 export const hotFraction = ({ useC, hotC, coldC }: { readonly useC: number; readonly hotC: number; readonly coldC: number }): number =>
-  hotC <= useC ? 1 : (useC - coldC) / (hotC - coldC)
+  coldC >= useC ? 0 : hotC <= useC ? 1 : (useC - coldC) / (hotC - coldC)
 
 const hotFlowLPerMin = ({ flowLPerMin, useTemperatureC }: MixedDraw, outletC: number, inletC: number): number =>
   useTemperatureC === null ? flowLPerMin : flowLPerMin * hotFraction({ useC: useTemperatureC, hotC: outletC, coldC: inletC })

@@ -35,13 +35,15 @@ export function traceOf(cycles: readonly Sampled[], day: number): Readiness['tra
   const { tank } = (cycles[day] as Sampled).cycle
   const { inletC, setPointC } = tank
   const filled = fill(found)
+  // Mains as warm as the set point leave nothing to charge.
+  const chargeOf = (state: TankState) => (setPointC > inletC ? (mean(state) - inletC) / (setPointC - inletC) : 1)
   const mean = (state: TankState) => state.nodesC.reduce((sum, temperatureC) => sum + temperatureC, 0) / state.nodesC.length
   const round = (value: number) => Math.round(value * 10) / 10
   return {
     sampleMin: SAMPLE_MIN,
     outletC: filled.map((state) => round(state.nodesC[0] ?? 0)),
     coldestC: filled.map((state) => round(state.nodesC.at(-1) ?? 0)),
-    chargeFraction: filled.map((state) => Math.round(Math.min(1, Math.max(0, (mean(state) - inletC) / (setPointC - inletC))) * 100) / 100),
+    chargeFraction: filled.map((state) => Math.round(Math.min(1, Math.max(0, chargeOf(state))) * 100) / 100),
   }
 }
 
