@@ -47,8 +47,9 @@ export function latestStart({ cycle, index, state, durationMin, earlier }: Befor
     known.set(startMin, minutes)
     return minutes
   }
-  const chosen = steady(choose({ need, firstStart, durationMin, served }), { firstStart, served })
-  return { ...chosen, earliestStartMin: () => earliest(chosen, { firstStart, served }) }
+  const outlastsMin = Math.ceil(needEndMin(need) - durationMin)
+  const chosen = steady(choose({ need, firstStart, durationMin, served }), { firstStart, outlastsMin, served })
+  return { ...chosen, earliestStartMin: () => earliest(chosen, { firstStart, outlastsMin, served }) }
 }
 
 interface Search {
@@ -106,23 +107,26 @@ const WINDOW_STEP_MIN = 15
 
 interface Earlier {
   readonly firstStart: number
+  /** From this start on the run outlasts the need: one that starts earlier has only heated for longer. */
+  readonly outlastsMin: number
   readonly served: (startMin: number) => number
 }
 
 /** Start-by is monotone: where starts a little before the latest serve less, the one before those is told, if it serves as much. */
-function steady(chosen: Chosen, { firstStart, served }: Earlier): Chosen {
+function steady(chosen: Chosen, { firstStart, outlastsMin, served }: Earlier): Chosen {
   const least = chosen.servedMin - SAME_SERVED_MIN
   const from = Math.max(firstStart, chosen.startMin - UNSTEADY_MIN)
   let unsteadyMin: number | null = null
-  for (let startMin = chosen.startMin - 1; startMin >= from; startMin--) if (served(startMin) < least) unsteadyMin = startMin
+  for (let startMin = Math.min(chosen.startMin, outlastsMin) - 1; startMin >= from; startMin--)
+    if (served(startMin) < least) unsteadyMin = startMin
   const startMin = unsteadyMin === null ? chosen.startMin : unsteadyMin - 1
   return startMin >= firstStart && served(startMin) >= least ? { ...chosen, startMin, servedMin: served(startMin) } : chosen
 }
 
 /** How early the run may start and still serve as much: a finite run that ends too soon lets the tank cool. */
-function earliest({ startMin, servedMin }: Chosen, { firstStart, served }: Earlier): number {
+function earliest({ startMin, servedMin }: Chosen, { firstStart, outlastsMin, served }: Earlier): number {
   const bound = Math.max(firstStart, startMin - WINDOW_LENGTH_MIN)
-  let good = startMin
+  let good = Math.max(bound, Math.min(startMin, outlastsMin))
   while (good > bound) {
     const next = Math.max(bound, good - (startMin - good < UNSTEADY_MIN ? 1 : WINDOW_STEP_MIN))
     if (served(next) < servedMin - SAME_SERVED_MIN) break
