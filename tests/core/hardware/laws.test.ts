@@ -50,6 +50,7 @@ describe('checkHardware', () => {
       ['breakerA', 'breaker-minimum'],
       ['breakerA', 'breaker-maximum'],
       ['conductor', 'conductor'],
+      ['breakerA', 'conductor'],
       ['ambientC', 'conductor'],
       ['groupedConductors', 'conductor'],
       ['lengthM', 'voltage-drop'],
@@ -157,6 +158,8 @@ describe('checkHardware', () => {
       verdictOf(installed({ circuit: { conductor: { size: '10', system: 'awg', material: 'aluminium', ratingC: 60 } } }), 'conductor'),
     ).toBe('not-known')
     expect(verdictOf(installed({ circuit: { ambientC: 60 } }), 'conductor')).toBe('not-known')
+    const aluminium = { size: '10', system: 'awg', material: 'aluminium', ratingC: 60 } as const
+    expect(verdictOf(installed({ circuit: { conductor: aluminium } }), 'voltage-drop')).toBe('not-known')
   })
 })
 

@@ -54,7 +54,7 @@ export function conductor({ installation, profile, loadA, continuousA }: Case & 
   const largestA = largestDeviceA({ profile, capA: row.capA, correctedA })
   const tooSmall = tableA < continuousA - 1e-9 || correctedA < loadA - 1e-9
   const unprotected = breakerA !== null && breakerA > largestA + 1e-9
-  const unknown = ambient === null || grouping === null
+  const unknown = ambient === null || grouping === null || breakerA === null
   const figure = `${ampere(correctedA)} for ${wire.size} ${wire.system === 'mm2' ? 'mm²' : 'AWG'}, device at most ${ampere(largestA)}`
   return check(limitOf({ profile, row, ambient, grouping }), {
     ...base,
@@ -65,7 +65,7 @@ export function conductor({ installation, profile, loadA, continuousA }: Case & 
       : unprotected
         ? `A ${ampere(breakerA ?? 0)} device does not protect this conductor.`
         : unknown
-          ? 'Large enough in air of 30 °C and on its own; record the air around the cable and the conductors beside it.'
+          ? 'Large enough in air of 30 °C and on its own; record its breaker, the air around the cable and the conductors beside it.'
           : 'It carries the load in its air and beside its neighbours, and the device protects it.',
   })
 }
@@ -105,7 +105,8 @@ function limitOf({
 
 export function voltageDrop({ installation, profile, loadA }: Case): Check {
   const { conductor: wire, lengthM, supplyVoltageV } = installation.circuit
-  const row = rowOf(profile, wire)
+  // The tables' resistances are copper's.
+  const row = wire?.material === 'copper' ? rowOf(profile, wire) : undefined
   const base = { id: 'voltage-drop', title: 'Voltage drop', limit: `${profile.voltageDrop.fraction * 100} % of ${supplyVoltageV} V` }
   if (!row || lengthM === null)
     return check(profile.voltageDrop, { ...base, verdict: 'not-known', figure: 'not known', reason: 'Enter the cable’s size and length.' })
