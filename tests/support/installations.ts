@@ -1,4 +1,4 @@
-/** An installation of the hardware tests: a dial timer on a 240 V, 30 A, 10 AWG circuit, everything recorded. */
+/** An installation of the hardware tests: a dial timer on a 240 V, 30 A, 10 AWG circuit, everything recorded but the mains' range and a nameplate maximum. */
 import type { Circuit, ControlSupply, Installation } from '#lib/core/hardware/types.ts'
 
 const CIRCUIT: Circuit = {
@@ -17,6 +17,10 @@ const CIRCUIT: Circuit = {
   closedSystem: true,
   extraLowVoltageSeparated: true,
   control: null,
+  markedMaxBreakerA: null,
+  terminalRatingC: 60,
+  inThermalInsulation: false,
+  mainsRangeV: null,
 }
 
 /** A relay of published data: 12 V, 86 Ω, driven by a 2N4401 from a 9 V transformer. */

@@ -9,7 +9,7 @@ interface Props {
 }
 
 const UNKNOWN: ControlSupply = {
-  transformerSecondaryV: 12,
+  transformerSecondaryV: null,
   transformerVa: null,
   transformerRegulationFraction: null,
   reservoirF: null,
@@ -35,6 +35,7 @@ const SUPPRESSION = [
 ] as const
 
 const NUMBERS = [
+  ['transformerSecondaryV', 'Transformer secondary', 'V', 1],
   ['transformerVa', 'Transformer', 'VA', 1],
   ['transformerRegulationFraction', 'Transformer regulation', '%', 0.01],
   ['primaryFuseA', 'Primary fuse', 'mA', 1e-3],
@@ -62,13 +63,6 @@ export function ControlFields({ control, problemOf, onChange }: Props) {
       />
       {control && (
         <>
-          <NumberField
-            label="Transformer secondary"
-            unit="V"
-            value={control.transformerSecondaryV}
-            problem={problemOf('installation.circuit.control.transformerSecondaryV')}
-            onChange={(value) => set({ transformerSecondaryV: value ?? 0 })}
-          />
           {NUMBERS.map(([name, label, unit, scale]) => (
             <NumberField
               key={name}

@@ -4,12 +4,12 @@ import { useEffect, useMemo, useState } from 'react'
 import { describeController } from '#lib/core/controller/describe.ts'
 import { runDuration } from '#lib/core/controller/run-duration.ts'
 import { checkHardware } from '#lib/core/hardware/check-hardware.ts'
-import type { Check, Installation, ProfileId } from '#lib/core/hardware/types.ts'
+import type { Installation, ProfileId } from '#lib/core/hardware/types.ts'
 import { ApiProblem, apiSend } from '#lib/http/client.ts'
 import type { RecordHardwareInput } from '#lib/hardware/record-schema.ts'
 import type { NeededRun } from '#lib/hardware/run-need.ts'
-import { VERDICT_WORDS } from '#lib/hardware/view.ts'
 import { WithQueries } from '../ui/WithQueries.tsx'
+import { CheckList } from './CheckList.tsx'
 import { CircuitFields } from './CircuitFields.tsx'
 import { ControllerFields } from './ControllerFields.tsx'
 import { NumberField, TextField } from './inputs.tsx'
@@ -93,7 +93,7 @@ function HardwareForm({ installation: first, expectedRevision, profile, submitUr
       <aside className="flex flex-col gap-4" aria-label="What this comes to">
         <RealRun installation={installation} />
         <TimerAdvice controller={installation.controller} needed={needed} />
-        <Checks checks={checks} />
+        <CheckList checks={checks} profile={profile} />
       </aside>
     </div>
   )
@@ -114,34 +114,6 @@ function RealRun({ installation }: { readonly installation: Installation }) {
         </p>
       )}
       <p className="text-soft">{duration.reasons.join(' ')}</p>
-    </section>
-  )
-}
-
-const ORDER = { fail: 0, attention: 1, 'not-known': 2, pass: 3 } as const
-
-function Checks({ checks }: { readonly checks: readonly Check[] }) {
-  const sorted = [...checks].sort((one, other) => ORDER[one.verdict] - ORDER[other.verdict])
-  return (
-    <section className="ledger" aria-live="polite">
-      <h2>Checks</h2>
-      {sorted.map((check) => (
-        <div key={check.id} className={check.verdict === 'fail' ? 'border-l-4 border-crimson py-2 pl-3' : 'py-2'}>
-          <p>
-            <span className="font-bold">{check.title}</span>:{' '}
-            <span className={check.verdict === 'fail' ? 'font-bold text-crimson' : check.verdict === 'pass' ? 'text-verdigris' : ''}>
-              {VERDICT_WORDS[check.verdict]}
-            </span>
-          </p>
-          <p className="text-small">
-            {check.figure}; limit {check.limit}. {check.reason}
-          </p>
-          <p className="text-small text-soft">
-            {check.clause}
-            {check.confirmAgainstCode && ' Confirm against your code.'} {check.verdict !== 'pass' && check.caution}
-          </p>
-        </div>
-      ))}
     </section>
   )
 }

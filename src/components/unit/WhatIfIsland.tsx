@@ -108,11 +108,11 @@ function Cautions({ then, moreHeat }: { readonly then: ReturnType<typeof answerO
     <div className="flex flex-col gap-2 border-l-4 border-ink bg-sheet px-4 py-3">
       {scald.atRisk && (
         <p>
-          <strong>Scalding.</strong> Water of {scald.setPointC} °C without a mixing valve burns skin in {scald.secondsToBurn ?? '—'} s, a
-          child’s sooner. Fit a mixing valve. <span className="text-soft">{scald.source}</span>
+          <strong>Scalding.</strong> Water of {scald.atTapC} °C at the tap burns skin in {scald.secondsToBurn ?? '—'} s, a child’s sooner.
+          Fit a mixing valve, or set it lower. <span className="text-soft">{scald.source}</span>
         </p>
       )}
-      {hygiene.sincePasteurisedH === null && (
+      {!(hygiene.status === 'assessed' && hygiene.keepsGuidance) && (
         <p>
           <strong>Legionella.</strong> {hygiene.reason} Stored water between about 20 and 45 °C can grow it: ask whoever is responsible for
           the building’s water before heating is shortened or the set point lowered.

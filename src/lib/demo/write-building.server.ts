@@ -8,6 +8,7 @@ import { addTariff, addTariffVersion } from '#db/queries/tariff.ts'
 import { addTenancy } from '#db/queries/tenancy.ts'
 import { addUnit } from '#db/queries/unit.ts'
 import { readUrdb } from '#lib/core/tariff/urdb-import.ts'
+import { usualPolicy } from '#lib/property/hygiene-choice.ts'
 import type { DemoBuilding, DemoUnit } from './buildings.ts'
 
 export interface DemoTenant {
@@ -31,7 +32,7 @@ export interface MadeBuilding {
 }
 
 export async function writeBuilding(trx: OrgTrx, { building, tenantOf, recordedAtMs, livingSince }: BuildingWrite): Promise<MadeBuilding> {
-  const propertyId = await addProperty(trx, { ...building, hygienePolicy: 'store-60' }, recordedAtMs)
+  const propertyId = await addProperty(trx, { ...building, hygienePolicy: usualPolicy(building.country) }, recordedAtMs)
   await changePropertyTariff(trx, propertyId, await writeTariff(trx, building, recordedAtMs))
   const units = new Map<string, MadeUnit>()
   for (const [index, unit] of building.units.entries()) {

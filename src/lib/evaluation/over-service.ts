@@ -1,8 +1,12 @@
 /** The building as a whole: hours in which all runs at their longest would pass what the service may carry. Pure. */
 import { PROFILES } from '#lib/core/hardware/check-hardware.ts'
+import { clauseOf } from '#lib/core/hardware/verdict.ts'
+import { dwellingDemandFactor, heaterDemandFactor } from '#lib/core/hardware/service-demand.ts'
 import { civilOf } from '#lib/core/time/civil.ts'
 import type { MsInterval, Zone } from '#lib/core/time/types.ts'
 import { formatDay, formatMinuteOfDay } from '#lib/format.ts'
+import type { EvidenceLine } from '#db/queries/flag.ts'
+import type { Limit, RuleProfile } from '#lib/core/hardware/profiles/profile.ts'
 import { type Finding, found } from './evidence.ts'
 import { type LoadRun, loadSteps, overLimit, type Service, serviceLimitW, serviceRatingW } from './service-load.ts'
 
@@ -26,7 +30,8 @@ export function overServiceFinding({ service, zone, runs, range }: ServiceCase):
     const { day, minuteOfDay } = civilOf(instantMs, zone)
     return { day, words: `${formatDay(day, 'EEE d MMM')} ${formatMinuteOfDay(Math.floor(minuteOfDay))}` }
   }
-  const { factor, clause, confirm } = PROFILES[service.ruleProfile].continuous
+  const { continuous } = PROFILES[service.ruleProfile]
+  const { factor } = continuous
   return {
     kind: 'over-service',
     severity: 'dangerous',
@@ -47,8 +52,11 @@ export function overServiceFinding({ service, zone, runs, range }: ServiceCase):
           kind: 'limit',
           label: 'May be carried for hours',
           value: factor === 1 ? kw(limitW) : `${kw(limitW)}: the rating over ${factor}`,
-          from: confirm ? `${clause}; confirm against your code` : `${clause}, applied to the service`,
+          from: continuous.confirm
+            ? `${clauseOf(continuous)}; confirm against your code`
+            : `${clauseOf(continuous)}, applied to the service`,
         },
+        ...diversity(PROFILES[service.ruleProfile], worst.runs),
         found('Highest', `${kw(worst.loadW)} with ${worst.runs} runs at once, from ${said(worst.startsAtMs).words}`),
         ...over
           .slice(0, SHOWN)
@@ -72,4 +80,19 @@ export function overServiceFinding({ service, zone, runs, range }: ServiceCase):
       ],
     },
   }
+}
+
+/** What a permit's calculation may have counted on: said because synchronised runs undo it, never taken off the load. */
+function diversity(profile: RuleProfile, heaters: number): readonly EvidenceLine[] {
+  const line = (label: string, factor: number, limit: Limit): EvidenceLine => ({
+    kind: 'limit',
+    label,
+    value: `${Math.round(factor * 100)} % for ${heaters}; nothing is taken off here, since runs at the same time undo it`,
+    from: limit.confirm ? `${clauseOf(limit)}; confirm against your code` : clauseOf(limit),
+  })
+  const dwellings = dwellingDemandFactor(profile, heaters)
+  return [
+    line('A service calculation may count of heaters', heaterDemandFactor(profile, heaters), profile.heaterDemand),
+    ...(profile.dwellingDemand && dwellings !== null ? [line('… and of whole dwellings', dwellings, profile.dwellingDemand)] : []),
+  ]
 }

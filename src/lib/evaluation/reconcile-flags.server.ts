@@ -60,10 +60,13 @@ export async function reconcileFlags(
 
 const WORSE: readonly Flag['severity'][] = ['attention', 'cold', 'dangerous']
 
-/** A dismissal covers what it was given for: no mark that it did not have, and nothing more severe. */
+/**
+ * A dismissal covers what it was given for: no mark that it did not have, and nothing more severe. One from before flags had marks
+ * says of nothing marked what it was given for, so the finding is raised again.
+ */
 const covers = (dismissed: Flag, { severity, evidence }: Finding): boolean =>
   WORSE.indexOf(severity) <= WORSE.indexOf(dismissed.severity) &&
-  (evidence.marks ?? []).every((mark) => dismissed.evidence.marks?.includes(mark) ?? true)
+  (evidence.marks ?? []).every((mark) => dismissed.evidence.marks?.includes(mark) ?? false)
 
 export const addChanges = (one: FlagChanges, other: FlagChanges): FlagChanges => ({
   opened: one.opened + other.opened,

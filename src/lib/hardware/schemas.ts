@@ -137,7 +137,7 @@ export const circuitSchema = z.strictObject({
   extraLowVoltageSeparated: known(z.boolean()),
   control: known(
     z.strictObject({
-      transformerSecondaryV: between('Transformer secondary', { min: 3, max: 48 }, 'V'),
+      transformerSecondaryV: known(between('Transformer secondary', { min: 3, max: 48 }, 'V')),
       transformerVa: known(between('Transformer', { min: 0.5, max: 500 }, 'VA')),
       transformerRegulationFraction: known(fraction('Transformer regulation')),
       reservoirF: known(between('Reservoir capacitor', { min: 1e-6, max: 1 }, 'F')),
@@ -157,6 +157,18 @@ export const circuitSchema = z.strictObject({
       loopOhmPerKm: known(between('Control wire', { min: 0.1, max: 500 }, 'Ω/km')),
     }),
   ),
+  // Absent in revisions that are older than the field.
+  markedMaxBreakerA: known(between('Largest device on the nameplate', { min: 1, max: 400 }, 'A')).exactOptional(),
+  terminalRatingC: known(z.union([z.literal(60), z.literal(75)])).exactOptional(),
+  inThermalInsulation: known(z.boolean()).exactOptional(),
+  mainsRangeV: known(
+    z
+      .strictObject({ lowestV: between('Lowest mains', SUPPLY_V, 'V'), highestV: between('Highest mains', SUPPLY_V, 'V') })
+      .refine((range) => range.highestV >= range.lowestV, {
+        error: 'The highest reading is below the lowest. Exchange them.',
+        path: ['highestV'],
+      }),
+  ).exactOptional(),
 }) satisfies z.ZodType<Circuit>
 
 export const installationSchema = z.strictObject({

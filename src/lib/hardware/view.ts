@@ -140,7 +140,20 @@ function circuitLines(circuit: Circuit): readonly Line[] {
     line('Closed system', yes(circuit.closedSystem)),
     line('Expansion vessel', yes(circuit.expansionVessel)),
     line('Low voltage apart from mains', yes(circuit.extraLowVoltageSeparated)),
+    ...laterLines(circuit),
     ...controlLines(circuit.control),
+  ]
+}
+
+/** Fields younger than the first revisions: a line only where somebody recorded them. */
+function laterLines({ markedMaxBreakerA, terminalRatingC, inThermalInsulation, mainsRangeV }: Circuit): readonly Line[] {
+  return [
+    ...(markedMaxBreakerA ? [line('Largest device on the nameplate', `${markedMaxBreakerA} A`)] : []),
+    ...(terminalRatingC ? [line('Terminals rated for', `${terminalRatingC} °C`)] : []),
+    ...(inThermalInsulation === undefined || inThermalInsulation === null
+      ? []
+      : [line('Cable in thermal insulation', yes(inThermalInsulation))]),
+    ...(mainsRangeV ? [line('Mains as read', `${mainsRangeV.lowestV} to ${mainsRangeV.highestV} V`)] : []),
   ]
 }
 
@@ -148,7 +161,7 @@ function controlLines(control: Circuit['control']): readonly Line[] {
   if (!control) return []
   const { driver } = control
   return [
-    line('Transformer', `${control.transformerSecondaryV} V, ${known(control.transformerVa, ' VA')}`),
+    line('Transformer', `${known(control.transformerSecondaryV, ' V')}, ${known(control.transformerVa, ' VA')}`),
     line(
       'Transformer regulation',
       control.transformerRegulationFraction === null ? 'not known' : percent(control.transformerRegulationFraction),

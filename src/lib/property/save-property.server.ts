@@ -6,6 +6,7 @@ import { addProperty, changeProperty, findProperty, findPropertyBySlug, type Pro
 import { requireRole } from '#lib/auth/permission.ts'
 import { invalid, notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
+import { USUAL_IN_COUNTRY, usualPolicy } from './hygiene-choice.ts'
 import { COUNTRIES, propertySchema } from './schemas.ts'
 
 export interface SaveProperty {
@@ -22,7 +23,8 @@ export async function saveProperty(
   requireRole(db, ['landlord'], 'change properties')
   const { meanAirC, swingAirK, hemisphere, ...entered } = parseInput(propertySchema, input)
   const currency = COUNTRIES.find((country) => country.code === entered.country)?.currency ?? 'USD'
-  const fields: PropertyFields = { ...entered, currency, climate: { kind: 'climate', meanAirC, swingAirK, hemisphere } }
+  const hygienePolicy = entered.hygienePolicy === USUAL_IN_COUNTRY ? usualPolicy(entered.country) : entered.hygienePolicy
+  const fields: PropertyFields = { ...entered, hygienePolicy, currency, climate: { kind: 'climate', meanAirC, swingAirK, hemisphere } }
   return inTransaction(db, async (trx) => {
     const before = propertyId ? await findProperty(trx, propertyId) : null
     if (propertyId && !before) throw notFound('property')

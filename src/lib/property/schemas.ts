@@ -2,6 +2,7 @@
 import { z } from 'zod'
 import type { InletClimate } from '#lib/core/tank/types.ts'
 import { slugField } from '#lib/organisation/schemas.ts'
+import { HYGIENE_POLICY_IDS, USUAL_IN_COUNTRY } from './hygiene-choice.ts'
 
 export const COUNTRIES = [
   { code: 'US', name: 'United States', currency: 'USD', profile: 'us-nec-2023', voltageV: 208 },
@@ -46,7 +47,7 @@ export const propertySchema = z.object({
     { error: 'Choose a country.' },
   ),
   ruleProfile: z.enum(['us-nec-2023', 'gb-bs7671', 'iec-60364'], { error: 'Choose a rule profile.' }),
-  hygienePolicy: z.enum(['store-60-daily-hour', 'store-60', 'scald-49'], { error: 'Choose a hygiene policy.' }),
+  hygienePolicy: z.enum([...HYGIENE_POLICY_IDS, USUAL_IN_COUNTRY], { error: 'Choose whose guidance on stored water to follow.' }),
   supplyVoltageV: number('Supply voltage', 100, 480, 'V'),
   phases: z.coerce.number().refine((phases): phases is 1 | 3 => phases === 1 || phases === 3, 'Phases are 1 or 3.'),
   serviceRatingA: number('Service rating', 10, 6_000, 'A'),

@@ -1,7 +1,7 @@
 /** The hazards a tenant is told of: what it is, what it can do, what to do, who. The card and the mail say the same. */
 import type { Flag } from '#db/queries/flag.ts'
 import type { Installation } from '#lib/core/hardware/types.ts'
-import { GROWTH_RANGE_C } from '#lib/core/hygiene/assess-hygiene.ts'
+import { GROWTH_RANGE_C } from '#lib/core/hygiene/policies.ts'
 import { assessScald } from '#lib/core/hygiene/scald.ts'
 
 export interface TenantCaution {
@@ -46,8 +46,8 @@ export function cautionsFor({ installation, flags }: CautionCase): readonly Tena
 
 function scaldWords({ load }: Installation): string | null {
   const { setPointC, mixingValveC } = load.tank
-  const { atRisk, secondsToBurn } = assessScald(setPointC, mixingValveC)
+  const { atRisk, atTapC, secondsToBurn } = assessScald(setPointC, mixingValveC)
   if (!atRisk) return null
   const burns = secondsToBurn === null ? 'can scald' : `burns skin in ${secondsToBurn} s`
-  return `Water from this tank is ${Math.round(setPointC)} °C at the tap and ${burns}. Mix before children use it.`
+  return `Water from this tank is ${Math.round(atTapC)} °C at the tap and ${burns}. Mix before children use it.`
 }

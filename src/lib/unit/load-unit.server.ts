@@ -38,7 +38,7 @@ export async function loadUnit(
     today,
     model,
     answer: model && answerOf(model),
-    pasteurising: model && pasteurisingRun({ ...model.days[0]!.unit, policy: model.policy }),
+    pasteurising: model && pasteurisingRun(model.days[0]!.unit),
     days: days.map((evaluation) => ({ ...evaluation, strip: stripDayOf(evaluation) })),
     flags: await listOpenFlags(db, { unitId: unit.id }),
     tenancies: await listTenancies(db, unit.id),

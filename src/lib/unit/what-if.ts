@@ -65,7 +65,9 @@ export function compare(model: UnitModel, now: ModelAnswer, then: ModelAnswer, i
     }),
     row('Energy', (answer) => `${formatEnergy(answer.energyKwh)} a week`),
     row('Cost', (answer) => (answer.costMinor === null ? 'no tariff in force' : `${formatMoney(answer.costMinor, model.currency)} a week`)),
-    row('Coldest water between 20 and 45 °C', (answer) => `${Math.round(answer.hygiene.growthRangeFraction * 100)} % of the week`),
+    row('Coldest water between 20 and 45 °C', ({ hygiene }) =>
+      hygiene.status === 'assessed' ? `${Math.round(hygiene.growthRangeFraction * 100)} % of the week` : 'not known',
+    ),
     row('Stored water', (answer) => answer.hygiene.reason),
   ]
 }

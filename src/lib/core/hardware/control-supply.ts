@@ -2,8 +2,10 @@
 
 /** Silicon bridge: two diodes conduct. */
 const DIODE_DROP_V = 0.7
-/** Hammond, Design Guide for Rectifier Use: capacitor-input bridge, I_DC = 0.62 I_AC. Another maker's rule is 1.8 I_DC (a toroid maker), 12 % more. */
+/** Hammond, Design Guide for Rectifier Use: capacitor-input bridge, I_DC = 0.62 I_AC. */
 const DC_PER_AC = 0.62
+/** A toroid maker's rule, 12 % more: I_AC = 1.8 I_DC. */
+export const AC_PER_DC = 1.8
 /** NE555 output high at 100 mA and more: 12.75 V of 15 V at the least (TI SLFS022); 1.7 V is its typical drop. */
 const BIPOLAR_OUTPUT_DROP_V = 1.7
 /** 2N4401: 0.75 to 0.95 V at 150 mA (Central Semiconductor). */
@@ -32,16 +34,16 @@ export const secondaryA = (directA: number): number => directA / DC_PER_AC
 export const coilV = ({ supplyV, coilOhm, loopOhm }: { readonly supplyV: number; readonly coilOhm: number; readonly loopOhm: number }) =>
   (supplyV * coilOhm) / (coilOhm + loopOhm)
 
-/** Collector over base current that the timer's output and base resistor force; about 10 saturates, the gain minimum does not. */
-export const forcedGain = ({
-  supplyV,
-  coilOhm,
-  baseResistorOhm,
-}: {
+interface Drive {
   readonly supplyV: number
-  readonly coilOhm: number
   readonly baseResistorOhm: number
-}) => supplyV / coilOhm / ((supplyV - BIPOLAR_OUTPUT_DROP_V - BASE_V) / baseResistorOhm)
+}
+
+/** Base current that the timer's output gives through the base resistor. */
+export const baseA = ({ supplyV, baseResistorOhm }: Drive): number => (supplyV - BIPOLAR_OUTPUT_DROP_V - BASE_V) / baseResistorOhm
+
+/** Collector over base current that the timer's output and base resistor force; about 10 saturates, the gain minimum does not. */
+export const forcedGain = ({ coilOhm, ...drive }: Drive & { readonly coilOhm: number }): number => drive.supplyV / coilOhm / baseA(drive)
 
 /** What must-operate voltage grows to in a warm coil, as a factor of the cold one at 25 °C. */
 export const warmCoilFactor = (coilC: number): number => 1 + COPPER_PER_K * (coilC - 25)

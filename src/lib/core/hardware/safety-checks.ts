@@ -1,12 +1,12 @@
 /** The checks that are answered by looking: isolator, relief valve, mixing valve, expansion, separation of low voltage. */
+import { SCALD_LIMIT_C } from '../hygiene/scald.ts'
 import { actualVolumeL } from '../tank/model.ts'
 import { expansionL } from '../tank/water.ts'
-import type { RuleProfile } from './profiles/profile.ts'
+import type { Limit, RuleProfile } from './profiles/profile.ts'
+import { positive } from './recorded.ts'
 import type { Check, Installation } from './types.ts'
-import { check } from './verdict.ts'
+import { check, notKnown, published } from './verdict.ts'
 
-/** CPSC and DOE advise 120 °F at the tap; above it a mixing valve is called for. */
-const SCALD_SET_POINT_C = 49
 /** What a tank is filled with, for saying how much it grows. */
 const COLD_C = 15
 const VALVE_CAUTION = 'Never bypass a thermostat, high-limit or relief valve.'
@@ -16,86 +16,87 @@ interface Seen {
   readonly title: string
   readonly seen: boolean | null
   readonly limit: string
-  readonly clause: string
-  readonly confirm: boolean
   readonly missing: string
   readonly caution?: string
 }
 
 /** Yes passes, no fails, not looked is not known. */
-const look = ({ id, title, seen, limit, clause, confirm, missing, caution }: Seen): Check =>
-  check(
-    { clause, confirm },
-    {
-      id,
-      title,
-      verdict: seen === null ? 'not-known' : seen ? 'pass' : 'fail',
-      figure: seen === null ? 'not known' : seen ? 'present' : 'missing',
-      limit,
-      reason: seen === null ? 'Nobody has recorded it: look and enter it.' : seen ? 'Recorded as present.' : missing,
-      ...(caution ? { caution } : {}),
-    },
-  )
+function look(rule: Limit, { seen, missing, ...base }: Seen): Check {
+  if (seen === null) return notKnown(rule, base, 'Nobody has recorded it: look and enter it.')
+  return check(rule, {
+    ...base,
+    verdict: seen ? 'pass' : 'fail',
+    figure: seen ? 'present' : 'missing',
+    reason: seen ? 'Recorded as present.' : missing,
+  })
+}
 
-export function safetyChecks({ load, circuit }: Installation, profile: RuleProfile): readonly Check[] {
-  const { setPointC, mixingValveC } = load.tank
-  return [
-    look({
-      id: 'isolator',
-      title: 'Isolator in sight',
-      seen: circuit.isolatorInSight,
-      limit: 'in sight or lockable',
-      ...profile.isolator,
-      missing: 'Nobody can make it safe to work on: fit an isolator in sight.',
-    }),
-    look({
-      id: 'relief-valve',
-      title: 'Temperature and pressure relief valve',
-      seen: circuit.reliefValve,
-      limit: 'fitted',
-      clause: 'NEC 422.47 marking; IEC 60335-2-21 clause 22',
-      confirm: false,
-      missing: 'A tank without a relief valve can burst. Switch it off until one is fitted.',
-      caution: VALVE_CAUTION,
-    }),
-    look({
-      id: 'separation',
-      title: 'Extra-low voltage apart from mains',
-      seen: circuit.extraLowVoltageSeparated,
-      limit: 'own cable and compartment, or the permitted barrier',
-      clause: 'NEC 725.136; IEC 60364-4-41 clause 414 (read in secondary copies)',
-      confirm: false,
-      missing: 'Mains can reach the button a tenant touches. Isolate and separate the wiring.',
-    }),
-    check(
-      { clause: 'CPSC: third-degree burn in 5 min at 49 °C, 6 s at 60 °C', confirm: false },
-      {
-        id: 'mixing-valve',
-        title: 'Mixing valve',
-        verdict: setPointC <= SCALD_SET_POINT_C || mixingValveC !== null ? 'pass' : 'attention',
-        figure:
-          mixingValveC === null ? `set point ${setPointC} °C, no mixing valve` : `set point ${setPointC} °C, mixed to ${mixingValveC} °C`,
-        limit: `a valve above ${SCALD_SET_POINT_C} °C`,
-        reason:
-          setPointC <= SCALD_SET_POINT_C || mixingValveC !== null
-            ? 'Water at the tap is limited.'
-            : 'Water this hot scalds within seconds: fit a mixing valve.',
-        caution: 'Do not lower the set point below 60 °C to avoid scald without asking who is responsible for Legionella.',
-      },
-    ),
-    ...(circuit.closedSystem
-      ? [
-          look({
-            id: 'expansion',
-            title: 'Expansion vessel',
-            seen: circuit.expansionVessel,
-            limit: 'fitted in a closed system',
-            clause: 'Density of water (Kell 1975, checked against IAPWS-95); common practice, no source',
-            confirm: false,
-            missing: `Each heating from ${COLD_C} °C pushes ${expansionL(actualVolumeL(load.tank), { fromC: COLD_C, toC: setPointC }).toFixed(1)} L out: fit an expansion vessel.`,
-            caution: VALVE_CAUTION,
-          }),
-        ]
-      : []),
-  ]
+export const safetyChecks = (installation: Installation, profile: RuleProfile): readonly Check[] => [
+  look(profile.isolator, {
+    id: 'isolator',
+    title: 'Isolator in sight',
+    seen: installation.circuit.isolatorInSight,
+    limit: 'in sight or lockable',
+    missing: 'Nobody can make it safe to work on: fit an isolator in sight.',
+    caution: 'A timer or time switch is no isolator: it can switch on by itself. Isolate, lock off and prove dead.',
+  }),
+  look(profile.reliefValve, {
+    id: 'relief-valve',
+    title: 'Temperature and pressure relief valve',
+    seen: installation.circuit.reliefValve,
+    limit: 'fitted',
+    missing: 'A tank without a relief valve can burst. Switch it off until one is fitted.',
+    caution: VALVE_CAUTION,
+  }),
+  look(profile.separation, {
+    id: 'separation',
+    title: 'Extra-low voltage apart from mains',
+    seen: installation.circuit.extraLowVoltageSeparated,
+    limit: 'own cable and compartment, or the permitted barrier',
+    missing: 'Mains can reach the button a tenant touches. Isolate and separate the wiring.',
+  }),
+  mixingValve(installation),
+  expansion(installation),
+]
+
+/** A valve that lets more than the limit through protects nobody: what reaches the tap decides. */
+function mixingValve({ load }: Installation): Check {
+  const setPointC = positive(load.tank.setPointC)
+  const mixedC = positive(load.tank.mixingValveC)
+  const limit = published('Third-degree burn in 5 min at 49 °C, 6 s at 60 °C', 'CPSC 5098')
+  const base = {
+    id: 'mixing-valve',
+    title: 'Mixing valve',
+    limit: `at most ${SCALD_LIMIT_C} °C at the tap`,
+    caution: 'Do not lower the set point below 60 °C to avoid scald without asking who is responsible for Legionella.',
+  }
+  if (setPointC === null) return notKnown(limit, base, 'Read the set point on the thermostat and enter it.')
+  const safe = Math.min(setPointC, mixedC ?? setPointC) <= SCALD_LIMIT_C
+  return check(limit, {
+    ...base,
+    verdict: safe ? 'pass' : 'attention',
+    figure: mixedC === null ? `set point ${setPointC} °C, no mixing valve` : `set point ${setPointC} °C, mixed to ${mixedC} °C`,
+    reason: safe ? 'Water at the tap is limited.' : 'Water this hot scalds: fit a mixing valve, or set the one that is fitted lower.',
+  })
+}
+
+function expansion({ load, circuit }: Installation): Check {
+  const limit = published('Density of water (Kell 1975, checked against IAPWS-95)', 'vessel: common practice, no source')
+  const base = { id: 'expansion', title: 'Expansion vessel', limit: 'fitted in a closed system', caution: VALVE_CAUTION }
+  if (circuit.closedSystem === null)
+    return notKnown(limit, base, 'Nobody has recorded whether a check valve or pressure reducer closes the system: look and enter it.')
+  if (!circuit.closedSystem)
+    return check(limit, {
+      ...base,
+      verdict: 'pass',
+      figure: 'open system',
+      reason: 'The water can grow back into the main: no vessel is needed.',
+    })
+  const setPointC = positive(load.tank.setPointC)
+  const grown = setPointC === null ? 'water' : `${expansionL(actualVolumeL(load.tank), { fromC: COLD_C, toC: setPointC }).toFixed(1)} L`
+  return look(limit, {
+    ...base,
+    seen: circuit.expansionVessel,
+    missing: `Each heating from ${COLD_C} °C pushes ${grown} out: fit an expansion vessel. A dripping relief valve is not the timer’s fault.`,
+  })
 }

@@ -27,9 +27,18 @@ export interface Circuit {
   readonly extraLowVoltageSeparated: boolean | null
   /** Low-voltage control parts of a home-built timer; `null` when there are none. */
   readonly control: ControlSupply | null
+  // What follows is younger than the first revisions: absent there, which is "not known".
+  /** Largest device that the heater's nameplate allows. */
+  readonly markedMaxBreakerA?: number | null
+  /** What the terminals are marked for; not known counts as 60 °C where the profile asks. */
+  readonly terminalRatingC?: 60 | 75 | null
+  /** More than half a metre of the cable lies completely inside thermal insulation. */
+  readonly inThermalInsulation?: boolean | null
+  /** Lowest and highest mains voltage that somebody read. */
+  readonly mainsRangeV?: { readonly lowestV: number; readonly highestV: number } | null
 }
 export interface ControlSupply {
-  readonly transformerSecondaryV: number
+  readonly transformerSecondaryV: number | null
   readonly transformerVa: number | null
   readonly transformerRegulationFraction: number | null
   readonly reservoirF: number | null

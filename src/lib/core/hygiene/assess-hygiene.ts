@@ -1,50 +1,66 @@
 /**
- * Growth range and pasteurisation from the coldest node of a simulated week (or a day that repeats). It shows which guidance is
- * followed and calls nothing compliant: biofilm, sediment and water below the lowest element are outside the model.
+ * Growth range and pasteurisation from the coldest node of a simulated week. It shows which guidance is followed and calls nothing
+ * compliant: biofilm, sediment and water below the lowest element are outside the model.
  */
 import { MIN_PER_HOUR } from '../units.ts'
-import { GROWTH_RANGE_C, GROWTH_RANGE_SOURCE, HYGIENE_POLICIES, TEMPERATURE_MARGIN_K } from './policies.ts'
-import type { HygieneFinding, HygienePolicyId } from './types.ts'
+import { GROWTH_RANGE_C, GROWTH_RANGE_SOURCE, HYGIENE_POLICIES, holdWords, PASTEURISED, TEMPERATURE_MARGIN_K } from './policies.ts'
+import type { HygieneFinding, HygieneSamples } from './types.ts'
 
-export { GROWTH_RANGE_C, HYGIENE_POLICIES } from './policies.ts'
-
-/** Regular samples of the coldest node, the last one now; taken as a cycle that repeats. */
-export interface HygieneSamples {
-  readonly coldestC: readonly number[]
-  readonly sampleMin: number
-  readonly setPointC: number
-  readonly policy: HygienePolicyId
-}
-
-export function assessHygiene({ coldestC, sampleMin, setPointC, policy }: HygieneSamples): HygieneFinding {
+export function assessHygiene({ days, sampleMin, setPointC, policy }: HygieneSamples): HygieneFinding {
   const rule = HYGIENE_POLICIES[policy]
-  const neededC = rule.temperatureC - TEMPERATURE_MARGIN_K
+  const sources = [GROWTH_RANGE_SOURCE, rule.source]
+  const coldestC = days.flat()
+  if (days.length === 0 || days.some((day) => day.length === 0) || !(sampleMin > 0) || !coldestC.every(Number.isFinite))
+    return { status: 'not-known', reason: 'No temperatures have been computed for every day of this week.', sources }
   const growing = coldestC.filter((temperatureC) => temperatureC >= GROWTH_RANGE_C.from && temperatureC <= GROWTH_RANGE_C.to).length
-  const hot = coldestC.map((temperatureC) => temperatureC >= neededC)
-  const samplesAgo = samplesSinceHold(hot, Math.max(1, Math.ceil(rule.holdMin / sampleMin)))
+  const pasteurised = heldAt(coldestC, sampleMin, PASTEURISED)
+  const lastPasteurised = pasteurised.lastIndexOf(true)
+  const daysHeld = daysWith(heldAt(coldestC, sampleMin, rule), days)
+  const keepsGuidance = daysHeld === days.length
   return {
-    sincePasteurisedH: samplesAgo === null ? null : (samplesAgo * sampleMin) / MIN_PER_HOUR,
-    growthRangeFraction: coldestC.length === 0 ? 0 : growing / coldestC.length,
+    status: 'assessed',
+    sincePasteurisedH: lastPasteurised < 0 ? null : ((coldestC.length - 1 - lastPasteurised) * sampleMin) / MIN_PER_HOUR,
+    growthRangeFraction: growing / coldestC.length,
     growthRangeHours: (growing * sampleMin) / MIN_PER_HOUR,
-    reason:
-      samplesAgo !== null
-        ? `The coldest part of the tank reaches ${rule.temperatureC} °C${rule.holdMin > 0 ? ` for ${rule.holdMin} min` : ''}.`
-        : setPointC < neededC
-          ? `The thermostat is set to ${setPointC} °C, below the ${rule.temperatureC} °C of the guidance followed.`
-          : `The coldest part of the tank does not reach ${rule.temperatureC} °C${rule.holdMin > 0 ? ` for ${rule.holdMin} min` : ''} with these runs.`,
-    sources: [GROWTH_RANGE_SOURCE, rule.source],
+    daysHeld,
+    dayCount: days.length,
+    keepsGuidance,
+    reason: keepsGuidance
+      ? `The coldest part of the tank reaches ${holdWords(rule)} every day.`
+      : setPointC < rule.temperatureC - TEMPERATURE_MARGIN_K
+        ? `The thermostat is set to ${setPointC} °C, below the ${rule.temperatureC} °C of the guidance followed.`
+        : `The coldest part of the tank reaches ${holdWords(rule)} on ${daysHeld} of ${days.length} days with these runs.`,
+    sources,
   }
 }
 
-/** Samples since the end of the latest stretch that lasted `hold`, the samples taken as a circle; `null` when there is none. */
-function samplesSinceHold(hot: readonly boolean[], hold: number): number | null {
-  const count = hot.length
-  if (count === 0 || hold > count) return null
-  if (hot.every(Boolean)) return 0
-  for (let ago = 0; ago < count; ago++) {
-    let stretch = 0
-    while (stretch < hold && hot[(((count - 1 - ago - stretch) % count) + count) % count]) stretch++
-    if (stretch === hold) return ago
-  }
-  return null
+interface Hold {
+  readonly temperatureC: number
+  readonly holdMin: number
+}
+
+/**
+ * For each sample whether a stretch of `holdMin` that ends there has been hot throughout, the samples taken as a circle. A stretch
+ * of an hour takes one sample more than an hour has steps: the first and the last are an hour apart.
+ */
+function heldAt(coldestC: readonly number[], sampleMin: number, { temperatureC, holdMin }: Hold): readonly boolean[] {
+  const needed = Math.ceil(holdMin / sampleMin) + 1
+  const isHot = coldestC.map((one) => one >= temperatureC - TEMPERATURE_MARGIN_K)
+  if (isHot.every(Boolean)) return isHot
+  // Two rounds: the first counts in what the end of the cycle leaves to its beginning.
+  let stretch = 0
+  for (const hot of isHot) stretch = hot ? stretch + 1 : 0
+  return isHot.map((hot) => {
+    stretch = hot ? stretch + 1 : 0
+    return stretch >= needed
+  })
+}
+
+function daysWith(held: readonly boolean[], days: readonly (readonly number[])[]): number {
+  let from = 0
+  return days.filter((day) => {
+    const own = held.slice(from, from + day.length)
+    from += day.length
+    return own.includes(true)
+  }).length
 }

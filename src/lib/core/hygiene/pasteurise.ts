@@ -1,13 +1,12 @@
 /**
- * The run that would pasteurise: how long the power must be on, from a tank full of mains water, until the water has been at the
- * policy's temperature for its hold. Water below the lowest element is told apart, since no run heats it.
+ * The run that would pasteurise: how long the power must be on, from a tank full of mains water, until the water has been at 60 °C
+ * for an hour, whatever guidance is followed. Water below the lowest element is told apart, since no run heats it.
  */
 import { LONGEST_RUN_MIN, NODES } from '../tank/defaults.ts'
 import { tankModel } from '../tank/model.ts'
 import { simulate, uniformState } from '../tank/simulate.ts'
 import type { TankSpec } from '../tank/types.ts'
-import { HYGIENE_POLICIES, TEMPERATURE_MARGIN_K } from './policies.ts'
-import type { HygienePolicyId } from './types.ts'
+import { holdWords, PASTEURISED, TEMPERATURE_MARGIN_K } from './policies.ts'
 
 export interface PasteurisingRun {
   /** For the coldest water of the whole tank; `null` when no run does it. */
@@ -23,16 +22,15 @@ export interface PasteuriseCase {
   readonly tank: TankSpec
   readonly supplyVoltageV: number
   readonly inletC: number
-  readonly policy: HygienePolicyId
 }
 
-export function pasteurisingRun({ tank, supplyVoltageV, inletC, policy }: PasteuriseCase): PasteurisingRun {
-  const rule = HYGIENE_POLICIES[policy]
+const NEEDED_C = PASTEURISED.temperatureC - TEMPERATURE_MARGIN_K
+
+export function pasteurisingRun({ tank, supplyVoltageV, inletC }: PasteuriseCase): PasteurisingRun {
   const model = tankModel(tank, { supplyVoltageV, inletC })
-  const neededC = rule.temperatureC - TEMPERATURE_MARGIN_K
   const lowestHeated = model.lower?.node ?? model.upper?.node ?? -1
-  const whole = holdClock(neededC, rule.holdMin)
-  const heated = holdClock(neededC, rule.holdMin)
+  const whole = holdClock(NEEDED_C, PASTEURISED.holdMin)
+  const heated = holdClock(NEEDED_C, PASTEURISED.holdMin)
   let coldestC = inletC
   simulate(model, uniformState(inletC, NODES), {
     startMin: 0,
@@ -47,21 +45,13 @@ export function pasteurisingRun({ tank, supplyVoltageV, inletC, policy }: Pasteu
     },
   })
   const found = { wholeTankMin: whole.reachedMin(), heatedPartMin: heated.reachedMin(), coldestC }
-  return { ...found, reason: reasonOf({ tank, neededC, rule, found }) }
+  return { ...found, reason: reasonOf(tank, found) }
 }
 
-interface Reason {
-  readonly tank: TankSpec
-  readonly neededC: number
-  readonly rule: (typeof HYGIENE_POLICIES)[HygienePolicyId]
-  readonly found: Omit<PasteurisingRun, 'reason'>
-}
-
-function reasonOf({ tank, neededC, rule, found }: Reason): string {
-  const hold = rule.holdMin > 0 ? ` for ${rule.holdMin} min` : ''
-  const goal = `${rule.temperatureC} °C${hold}`
+function reasonOf(tank: TankSpec, found: Omit<PasteurisingRun, 'reason'>): string {
+  const goal = holdWords(PASTEURISED)
   if (!tank.upperElement && !tank.lowerElement) return 'The tank has no element on record.'
-  if (tank.setPointC < neededC) return `The thermostat is set to ${tank.setPointC} °C: no run reaches ${rule.temperatureC} °C.`
+  if (tank.setPointC < NEEDED_C) return `The thermostat is set to ${tank.setPointC} °C: no run reaches ${PASTEURISED.temperatureC} °C.`
   if (found.wholeTankMin !== null) return `A run of ${found.wholeTankMin} min from cold brings the whole tank to ${goal}.`
   const below = `The water below the lowest element stays near ${Math.round(found.coldestC)} °C.`
   if (found.heatedPartMin !== null) return `A run of ${found.heatedPartMin} min from cold brings the heated part to ${goal}. ${below}`

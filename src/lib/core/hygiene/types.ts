@@ -2,18 +2,37 @@
 
 export type HygienePolicyId = 'store-60-daily-hour' | 'store-60' | 'scald-49'
 
-export interface HygieneFinding {
-  /** Hours since the coldest node was last at the policy's temperature for its hold; `null` = not within the simulated week. */
-  readonly sincePasteurisedH: number | null
-  /** Share of the week the coldest node spent in the growth range. */
-  readonly growthRangeFraction: number
-  readonly growthRangeHours: number
-  readonly reason: string
-  readonly sources: readonly string[]
+/** Regular samples of the coldest node, a list a local day; taken as a cycle that repeats, its last sample as now. */
+export interface HygieneSamples {
+  readonly days: readonly (readonly number[])[]
+  readonly sampleMin: number
+  readonly setPointC: number
+  readonly policy: HygienePolicyId
 }
+
+export type HygieneFinding =
+  | { readonly status: 'not-known'; readonly reason: string; readonly sources: readonly string[] }
+  | {
+      readonly status: 'assessed'
+      /** Hours since the coldest node had been at 60 °C for an hour, whatever guidance is followed; `null` = not within the samples. */
+      readonly sincePasteurisedH: number | null
+      /** Share of the time the coldest node spent from 20 to 45 °C. */
+      readonly growthRangeFraction: number
+      readonly growthRangeHours: number
+      /** Days on which the coldest node was at the temperature of the guidance followed for its hold. */
+      readonly daysHeld: number
+      readonly dayCount: number
+      /** Every day does what the guidance followed says. No statement that the water is safe. */
+      readonly keepsGuidance: boolean
+      readonly reason: string
+      readonly sources: readonly string[]
+    }
+
 export interface ScaldFinding {
   readonly setPointC: number
-  /** Shortest published time to serious burn; `null` below the table. */
+  /** What reaches the tap: the mixing valve's temperature where there is one. */
+  readonly atTapC: number
+  /** Shortest published time to a burn; `null` below the table. */
   readonly secondsToBurn: number | null
   readonly source: string
   readonly atRisk: boolean
