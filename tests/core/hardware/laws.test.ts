@@ -49,14 +49,17 @@ const everyId = [...Object.keys(CIRCUIT_NEEDS), ...Object.keys(CONTROL_NEEDS)]
 const oneOf = <T>(...values: readonly T[]) => fc.constantFrom(...values)
 
 describe('checkHardware', () => {
-  it.each(PROFILE_IDS)('makes every check of %s, each with a figure, a limit, a clause with its edition, a reason and a caution', (profile) => {
-    const checks = checkHardware(ofControl(), profile)
-    expect(checks.map((one) => one.id).toSorted()).toEqual(everyId.toSorted())
-    for (const one of checks) {
-      for (const text of [one.title, one.figure, one.limit, one.reason, one.caution]) expect(text).not.toBe('')
-      expect(one.clause).toMatch(/\(.+\)/)
-    }
-  })
+  it.each(PROFILE_IDS)(
+    'makes every check of %s, each with a figure, a limit, a clause with its edition, a reason and a caution',
+    (profile) => {
+      const checks = checkHardware(ofControl(), profile)
+      expect(checks.map((one) => one.id).toSorted()).toEqual(everyId.toSorted())
+      for (const one of checks) {
+        for (const text of [one.title, one.figure, one.limit, one.reason, one.caution]) expect(text).not.toBe('')
+        expect(one.clause).toMatch(/\(.+\)/)
+      }
+    },
+  )
   it.each(PROFILE_IDS)('says in %s that the adopted code and licensed practice decide', (profile) => {
     expect(PROFILES[profile].defers).toMatch(/edition|code in force/)
     expect(PROFILES[profile].defers).toMatch(/electrician/)
@@ -79,7 +82,11 @@ describe('checkHardware', () => {
   it('passes nothing that leans on the load where no element, or none with its figures, is on record', () => {
     const ids = ['element-voltage', 'contact-rating', 'breaker-minimum', 'breaker-maximum', 'conductor', 'voltage-drop']
     const nothing = { upperElement: null, lowerElement: null }
-    for (const tank of [nothing, { lowerElement: { ratedPowerW: 0, ratedVoltageV: 240 } }, { lowerElement: { ratedPowerW: 4_500, ratedVoltageV: 0 } }])
+    for (const tank of [
+      nothing,
+      { lowerElement: { ratedPowerW: 0, ratedVoltageV: 240 } },
+      { lowerElement: { ratedPowerW: 4_500, ratedVoltageV: 0 } },
+    ])
       for (const id of ids) expect(verdictOf(ofTank(tank), id), id).toBe('not-known')
     expect(verdictOf(ofTank({ setPointC: 0 }), 'mixing-valve')).toBe('not-known')
   })
@@ -98,7 +105,9 @@ describe('checkHardware', () => {
     fc.assert(
       fc.property(some, oneOf(...fields), oneOf(...PROFILE_IDS), (circuit, field, profile) => {
         const before = checkHardware(installed({ circuit }), profile)
-        const after = new Map(checkHardware(installed({ circuit: { ...circuit, [field]: null } }), profile).map((one) => [one.id, one.verdict]))
+        const after = new Map(
+          checkHardware(installed({ circuit: { ...circuit, [field]: null } }), profile).map((one) => [one.id, one.verdict]),
+        )
         for (const one of before) if (after.get(one.id) === 'pass') expect(one.verdict, `${one.id} without ${field}`).toBe('pass')
       }),
     )
@@ -179,7 +188,9 @@ describe('checkHardware', () => {
         oneOf(...PROFILE_IDS),
         (powerW, moreW, profile) => {
           for (const id of ids)
-            expect(badnessOf(installed({ powerW: powerW + moreW }), id, profile)).toBeGreaterThanOrEqual(badnessOf(installed({ powerW }), id, profile))
+            expect(badnessOf(installed({ powerW: powerW + moreW }), id, profile)).toBeGreaterThanOrEqual(
+              badnessOf(installed({ powerW }), id, profile),
+            )
         },
       ),
     )
@@ -189,7 +200,10 @@ describe('checkHardware', () => {
 describe('the circuit', () => {
   const wired = (ratingC: 60 | 75 | 90, terminalRatingC: 60 | 75 | null, breakerA = 40) =>
     verdictOf(
-      installed({ powerW: 6_720, circuit: { breakerA, terminalRatingC, conductor: { size: '10', system: 'awg', material: 'copper', ratingC } } }),
+      installed({
+        powerW: 6_720,
+        circuit: { breakerA, terminalRatingC, conductor: { size: '10', system: 'awg', material: 'copper', ratingC } },
+      }),
       'conductor',
     )
   it('keeps the 60 °C column at 60 °C terminals, whatever the insulation (NEC 110.14(C)): 28 A continuous is 35 A', () => {
@@ -228,11 +242,13 @@ describe('the circuit', () => {
     expect([marked(25), marked(30)]).toEqual(['pass', 'fail'])
   })
   it('asks for one pole at 120 V and two at 240 V (404.15(B)), and for two in the United Kingdom', () => {
-    const one = (supplyVoltageV: number, profile: ProfileId) => verdictOf(installed({ circuit: { supplyVoltageV, polesSwitched: 1 } }), 'poles', profile)
+    const one = (supplyVoltageV: number, profile: ProfileId) =>
+      verdictOf(installed({ circuit: { supplyVoltageV, polesSwitched: 1 } }), 'poles', profile)
     expect([one(120, 'us-nec-2023'), one(240, 'us-nec-2023'), one(230, 'gb-bs7671')]).toEqual(['pass', 'fail', 'fail'])
   })
   it('fails a 208 V element on 240 V (133 %), passes a 240 V one on 240 V, and asks to confirm 230 V on 240 V', () => {
-    const on240 = (ratedVoltageV: number) => checkHardware(installed({ ratedVoltageV }), 'us-nec-2023').find((one) => one.id === 'element-voltage')
+    const on240 = (ratedVoltageV: number) =>
+      checkHardware(installed({ ratedVoltageV }), 'us-nec-2023').find((one) => one.id === 'element-voltage')
     expect(on240(208)).toMatchObject({ verdict: 'fail', figure: expect.stringContaining('133 %') })
     expect([on240(240)?.verdict, on240(230)?.verdict, on240(230)?.confirmAgainstCode]).toEqual(['pass', 'attention', true])
   })
@@ -307,7 +323,8 @@ describe('the control side', () => {
     expect(verdictOf(ofControl({ suppression: 'diode' }), 'suppression')).toBe('pass')
   })
   it('wants a primary fuse of 1.5 to 2 times, next value up: 32 to 50 mA for 5 VA at 240 V; passes none of them', () => {
-    const reason = (primaryFuseA: number) => checkHardware(ofControl({ primaryFuseA }), 'us-nec-2023').find((one) => one.id === 'primary-fuse')
+    const reason = (primaryFuseA: number) =>
+      checkHardware(ofControl({ primaryFuseA }), 'us-nec-2023').find((one) => one.id === 'primary-fuse')
     expect([0.032, 0.05].map((fuse) => [reason(fuse)?.verdict, reason(fuse)?.reason])).toEqual(
       Array(2).fill(['attention', 'Of the usual size for this transformer.']),
     )

@@ -2,15 +2,7 @@
 import { describe, expect, it } from 'vitest'
 import { checkHardware, PROFILES } from '#lib/core/hardware/check-hardware.ts'
 import { twoWireDropV } from '#lib/core/hardware/conductor-checks.ts'
-import {
-  AC_PER_DC,
-  coilV,
-  forcedGain,
-  rectifiedPeakV,
-  rippleV,
-  secondaryA,
-  warmCoilFactor,
-} from '#lib/core/hardware/control-supply.ts'
+import { AC_PER_DC, coilV, forcedGain, rectifiedPeakV, rippleV, secondaryA, warmCoilFactor } from '#lib/core/hardware/control-supply.ts'
 import { recorded } from '#lib/core/hardware/recorded.ts'
 import { dwellingDemandFactor, heaterDemandFactor } from '#lib/core/hardware/service-demand.ts'
 import type { Installation, ProfileId } from '#lib/core/hardware/types.ts'
