@@ -61,4 +61,10 @@ describe('reconcileFlags', () => {
     await dismiss()
     expect((await reconcile(fails(['isolator'], 'dangerous'))).opened).toBe(1)
   })
+  it('opens a marked finding in spite of a dismissal from before flags had marks, which cannot say what it was given for', async () => {
+    const { marks: _, ...unmarked } = fails(['isolator']).evidence
+    await reconcile({ ...fails(['isolator']), evidence: unmarked })
+    await dismiss()
+    expect((await reconcile(fails(['isolator']))).opened).toBe(1)
+  })
 })
