@@ -76,7 +76,6 @@ export function CircuitFields({ circuit, problemOf, onChange }: Props) {
           problem={problem('supplyVoltageV')}
           onChange={(value) => set({ supplyVoltageV: value ?? 0 })}
         />
-        <MainsRange {...later} />
         <NumberField
           label="Breaker"
           unit="A"
@@ -84,6 +83,7 @@ export function CircuitFields({ circuit, problemOf, onChange }: Props) {
           problem={problem('breakerA')}
           onChange={(breakerA) => set({ breakerA })}
         />
+        <MainsRange {...later} />
         <NameplateDevice {...later} />
       </Group>
       <Group title="Cable to the heater">

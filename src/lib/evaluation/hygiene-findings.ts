@@ -27,7 +27,12 @@ function growth({ site, hardware, days }: HygieneCase): Finding | null {
   const week = days.slice(0, DAYS_A_WEEK).flatMap((day) => (day.readiness ? [day.readiness.trace] : []))
   const sampleMin = week[0]?.sampleMin
   if (sampleMin === undefined || days.every((day) => day.status === 'no-need' || day.status === 'unknown')) return null
-  const finding = assessHygiene({ days: week.map((trace) => trace.coldestC), sampleMin, setPointC, policy: site.hygienePolicy })
+  const finding = assessHygiene({
+    days: week.map(({ coldestC, outletC }) => ({ coldestC, hottestC: outletC })),
+    sampleMin,
+    setPointC,
+    policy: site.hygienePolicy,
+  })
   if (finding.status === 'not-known' || finding.keepsGuidance || finding.growthRangeFraction < GROWTH_FRACTION) return null
   const policy = HYGIENE_POLICIES[site.hygienePolicy]
   const hours = Math.round(finding.growthRangeHours)
@@ -45,6 +50,7 @@ function growth({ site, hardware, days }: HygieneCase): Finding | null {
         { kind: 'assumed', label: 'Guidance followed', value: `${policy.name} (${policy.whose})`, from: policy.source },
         { kind: 'assumed', label: 'Set point', value: bothC(setPointC), from: 'entered' },
         found('Coldest water in the growth range', `${hours} h of ${ofHours}`),
+        found('Some of the water in it', `${Math.round(finding.someWaterHours)} h of ${ofHours}`),
         found(
           'At 60 °C for an hour',
           finding.sincePasteurisedH === null ? 'not in the week ahead' : `last ${Math.round(finding.sincePasteurisedH)} h before its end`,

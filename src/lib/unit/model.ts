@@ -65,7 +65,7 @@ export function answerOf({ days, tables, climate, policy }: UnitModel): ModelAns
     days: answered,
     outlook: seasonOutlook({ days: units, climate, fromDay: days[0]!.day }),
     hygiene: assessHygiene({
-      days: readiness.map(({ trace }) => trace.coldestC),
+      days: readiness.map(({ trace }) => ({ coldestC: trace.coldestC, hottestC: trace.outletC })),
       sampleMin: first!.trace.sampleMin,
       setPointC,
       policy,

@@ -70,8 +70,10 @@ const dayOf = (temperatureC: number) => Array<number>(96).fill(temperatureC)
 /** A day at one temperature with a hot stretch of so many samples from a sample on. */
 const hotFor = (samples: number, from = 20, restC = 30, hotC = 60) =>
   dayOf(restC).map((temperatureC, index) => (index >= from && index < from + samples ? hotC : temperatureC))
+/** A mixed tank: its coldest water is its hottest. */
+const mixed = (day: readonly number[]) => ({ coldestC: day, hottestC: day })
 const assess = (days: readonly (readonly number[])[], policy: HygienePolicyId = 'store-60-daily-hour', setPointC = 60) => {
-  const finding = assessHygiene({ days, sampleMin: SAMPLE_MIN, setPointC, policy })
+  const finding = assessHygiene({ days: days.map(mixed), sampleMin: SAMPLE_MIN, setPointC, policy })
   if (finding.status !== 'assessed') throw new Error(finding.reason)
   return finding
 }
@@ -114,9 +116,18 @@ describe('assessHygiene', () => {
   ])('counts %d °C for %d h of the growth range', (temperatureC, hours) => {
     expect(assess([dayOf(temperatureC)]).growthRangeHours).toBe(hours)
   })
+  it('counts the layers between a cold bottom and a hot top, which pass through the range though neither is in it', () => {
+    const layered = (coldC: number, hotC: number) =>
+      assessHygiene({ days: [{ coldestC: dayOf(coldC), hottestC: dayOf(hotC) }], sampleMin: SAMPLE_MIN, setPointC: 60, policy: 'store-60' })
+    expect(layered(12, 60)).toMatchObject({ growthRangeHours: 0, someWaterHours: 24 })
+    expect(layered(12, 19)).toMatchObject({ growthRangeHours: 0, someWaterHours: 0 })
+    expect(layered(46, 60)).toMatchObject({ growthRangeHours: 0, someWaterHours: 0 })
+  })
   it('is not known without temperatures, and never keeps any guidance then', () => {
     for (const days of [[], [[]], [dayOf(60), []], [dayOf(NaN)]])
-      expect(assessHygiene({ days, sampleMin: SAMPLE_MIN, setPointC: 60, policy: 'store-60' }).status).toBe('not-known')
+      expect(assessHygiene({ days: days.map(mixed), sampleMin: SAMPLE_MIN, setPointC: 60, policy: 'store-60' }).status).toBe('not-known')
+    const halfKnown = [{ coldestC: dayOf(60), hottestC: [] }]
+    expect(assessHygiene({ days: halfKnown, sampleMin: SAMPLE_MIN, setPointC: 60, policy: 'store-60' }).status).toBe('not-known')
   })
   it('says when the thermostat itself is below the guidance, and never says compliant or safe', () => {
     expect(assess([dayOf(45)], 'store-60', 50).reason).toContain('The thermostat is set to 50 °C')

@@ -4,15 +4,19 @@
  */
 import { MIN_PER_HOUR } from '../units.ts'
 import { GROWTH_RANGE_C, GROWTH_RANGE_SOURCE, HYGIENE_POLICIES, holdWords, PASTEURISED, TEMPERATURE_MARGIN_K } from './policies.ts'
-import type { HygieneFinding, HygieneSamples } from './types.ts'
+import type { HygieneDay, HygieneFinding, HygieneSamples } from './types.ts'
 
 export function assessHygiene({ days, sampleMin, setPointC, policy }: HygieneSamples): HygieneFinding {
   const rule = HYGIENE_POLICIES[policy]
   const sources = [GROWTH_RANGE_SOURCE, rule.source]
-  const coldestC = days.flat()
-  if (days.length === 0 || days.some((day) => day.length === 0) || !(sampleMin > 0) || !coldestC.every(Number.isFinite))
+  const coldestC = days.flatMap((day) => day.coldestC)
+  const hottestC = days.flatMap((day) => day.hottestC)
+  const sound = days.length > 0 && days.every((day) => day.coldestC.length > 0 && day.coldestC.length === day.hottestC.length)
+  if (!sound || !(sampleMin > 0) || ![...coldestC, ...hottestC].every(Number.isFinite))
     return { status: 'not-known', reason: 'No temperatures have been computed for every day of this week.', sources }
   const growing = coldestC.filter((temperatureC) => temperatureC >= GROWTH_RANGE_C.from && temperatureC <= GROWTH_RANGE_C.to).length
+  // A tank's layers pass through every temperature between its coldest and its hottest water.
+  const someGrowing = coldestC.filter((lowC, index) => lowC <= GROWTH_RANGE_C.to && (hottestC[index] ?? lowC) >= GROWTH_RANGE_C.from).length
   const pasteurised = heldAt(coldestC, sampleMin, PASTEURISED)
   const lastPasteurised = pasteurised.lastIndexOf(true)
   const daysHeld = daysWith(heldAt(coldestC, sampleMin, rule), days)
@@ -22,6 +26,7 @@ export function assessHygiene({ days, sampleMin, setPointC, policy }: HygieneSam
     sincePasteurisedH: lastPasteurised < 0 ? null : ((coldestC.length - 1 - lastPasteurised) * sampleMin) / MIN_PER_HOUR,
     growthRangeFraction: growing / coldestC.length,
     growthRangeHours: (growing * sampleMin) / MIN_PER_HOUR,
+    someWaterHours: (someGrowing * sampleMin) / MIN_PER_HOUR,
     daysHeld,
     dayCount: days.length,
     keepsGuidance,
@@ -56,11 +61,11 @@ function heldAt(coldestC: readonly number[], sampleMin: number, { temperatureC, 
   })
 }
 
-function daysWith(held: readonly boolean[], days: readonly (readonly number[])[]): number {
+function daysWith(held: readonly boolean[], days: readonly HygieneDay[]): number {
   let from = 0
-  return days.filter((day) => {
-    const own = held.slice(from, from + day.length)
-    from += day.length
+  return days.filter(({ coldestC }) => {
+    const own = held.slice(from, from + coldestC.length)
+    from += coldestC.length
     return own.includes(true)
   }).length
 }

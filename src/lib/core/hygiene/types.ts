@@ -2,9 +2,14 @@
 
 export type HygienePolicyId = 'store-60-daily-hour' | 'store-60' | 'scald-49'
 
-/** Regular samples of the coldest node, a list a local day; taken as a cycle that repeats, its last sample as now. */
+/** Regular samples of the coldest and the hottest node of a local day, in step. */
+export interface HygieneDay {
+  readonly coldestC: readonly number[]
+  readonly hottestC: readonly number[]
+}
+/** Days one after another, taken as a cycle that repeats, the last sample as now. */
 export interface HygieneSamples {
-  readonly days: readonly (readonly number[])[]
+  readonly days: readonly HygieneDay[]
   readonly sampleMin: number
   readonly setPointC: number
   readonly policy: HygienePolicyId
@@ -19,6 +24,8 @@ export type HygieneFinding =
       /** Share of the time the coldest node spent from 20 to 45 °C. */
       readonly growthRangeFraction: number
       readonly growthRangeHours: number
+      /** Hours in which some of the tank's water was in it: between a cold bottom and a hot top some always is. */
+      readonly someWaterHours: number
       /** Days on which the coldest node was at the temperature of the guidance followed for its hold. */
       readonly daysHeld: number
       readonly dayCount: number
