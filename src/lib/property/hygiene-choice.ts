@@ -22,9 +22,8 @@ export const hygieneChoices = (): readonly Choice[] =>
 
 /** For a property that is new: its country is not chosen yet, so it may be left to that. */
 export const hygieneChoicesWithUsual = (): readonly Choice[] => [
-  {
-    value: USUAL_IN_COUNTRY,
-    label: `What is usual in the country: United Kingdom, ${HYGIENE_POLICIES['store-60-daily-hour'].name.toLowerCase()}; elsewhere, ${HYGIENE_POLICIES['store-60'].name.toLowerCase()}`,
-  },
+  { value: USUAL_IN_COUNTRY, label: 'What is usual in the country' },
   ...hygieneChoices(),
 ]
+
+export const USUAL_WORDS = `Usual is in the United Kingdom: ${HYGIENE_POLICIES['store-60-daily-hour'].name.toLowerCase()} (HSE); elsewhere: ${HYGIENE_POLICIES['store-60'].name.toLowerCase()}. `

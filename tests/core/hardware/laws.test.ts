@@ -214,6 +214,8 @@ describe('the circuit', () => {
     const aluminium = { size: '10', system: 'awg', material: 'aluminium', ratingC: 75 } as const
     expect(verdictOf(installed({ circuit: { breakerA: 30, conductor: aluminium } }), 'conductor')).toBe('fail')
     expect(verdictOf(installed({ circuit: { breakerA: 25, conductor: aluminium } }), 'conductor')).toBe('not-known')
+    // The tables' resistances are copper's.
+    expect(verdictOf(installed({ circuit: { conductor: aluminium } }), 'voltage-drop')).toBe('not-known')
   })
   it('says not known where a table does not hold the air around the cable', () => {
     expect(verdictOf(installed({ circuit: { ambientC: 60 } }), 'conductor')).toBe('not-known')

@@ -85,4 +85,15 @@ describe('overServiceFinding', () => {
   it('finds nothing at exactly the limit', () => {
     expect(overServiceFinding({ ...asked, runs: eight(7) })).toBeNull()
   })
+  it('says what a service calculation may have counted, and takes nothing off for it (NEC 220.53: 75 %; 220.84, 8 to 10 units: 43 %)', () => {
+    const american = { ...british, ruleProfile: 'us-nec-2023' } as const
+    const of = (service: typeof british | typeof american) => overServiceFinding({ ...asked, service, runs: eight(8) })
+    const counted = (service: typeof british | typeof american) =>
+      of(service)
+        ?.evidence.lines.filter((line) => /calculation may count|whole dwellings/.test(line.label))
+        .map((line) => `${line.value.slice(0, 4)} ${/confirm/.test(line.from)}`)
+    expect(counted(american)).toEqual(['75 % false', '43 % true'])
+    expect(counted(british)).toEqual(['100  false'])
+    expect(of(american)?.summary).toContain('26.0 kW')
+  })
 })

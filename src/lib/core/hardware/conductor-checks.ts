@@ -19,7 +19,7 @@ export const twoWireDropV = ({
 const rowOf = (profile: RuleProfile, wire: CableSize | null): ConductorRow | undefined =>
   wire && profile.conductors.system === wire.system ? profile.conductors.rows.find((row) => row.size === wire.size) : undefined
 
-export interface Capacity {
+interface Capacity {
   /** By the column of the terminals, before corrections. */
   readonly tableA: number
   readonly correctedA: number

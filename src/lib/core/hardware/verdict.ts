@@ -17,7 +17,7 @@ export const check = (limit: Limit, found: Found): Check => ({
   confirmAgainstCode: limit.confirm,
 })
 
-export type Base = Pick<Check, 'id' | 'title' | 'limit'> & { readonly caution?: string }
+type Base = Pick<Check, 'id' | 'title' | 'limit'> & { readonly caution?: string }
 
 export const notKnown = (limit: Limit, base: Base, reason: string): Check =>
   check(limit, { ...base, verdict: 'not-known', figure: 'not known', reason })
