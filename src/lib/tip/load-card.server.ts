@@ -23,8 +23,9 @@ export type OpenCard = Extract<Card, { kind: 'open' }>
 export async function loadCard(db: OrgDb, { tenancyId, nowMs }: TenancyChoice): Promise<Card> {
   const { open, over } = await ownTenancies(db, nowMs)
   if (!tenancyId && open.length === 0) {
-    if (!over?.tenancy.toDay) throw notFound('tenancy of yours')
-    return { kind: 'over', unitCode: over.unit.code, propertyName: over.property.name, toDay: over.tenancy.toDay }
+    const [last] = over
+    if (!last?.tenancy.toDay) throw notFound('tenancy of yours')
+    return { kind: 'over', unitCode: last.unit.code, propertyName: last.property.name, toDay: last.tenancy.toDay }
   }
   const home = await openTenancy(db, { tenancyId, nowMs })
   return { kind: 'open', ...(await openCard(db, { home, open, nowMs })) }

@@ -16,8 +16,8 @@ export interface Home {
   readonly today: string
 }
 
-/** Those that run or are to begin, in order of their first day, and the last that is over. */
-export async function ownTenancies(db: OrgDb, nowMs: number): Promise<{ readonly open: readonly Home[]; readonly over: Home | null }> {
+/** Those that run or are to begin, in order of their first day, and those that are over, the last first. */
+export async function ownTenancies(db: OrgDb, nowMs: number): Promise<{ readonly open: readonly Home[]; readonly over: readonly Home[] }> {
   requireRole(db, ['tenant'], 'see a tenant’s card')
   const personId = actingPerson(db)
   const homes: Home[] = []
@@ -26,7 +26,7 @@ export async function ownTenancies(db: OrgDb, nowMs: number): Promise<{ readonly
     const property = unit && (await findProperty(db, unit.propertyId))
     if (unit && property) homes.push({ tenancy, unit, property, today: civilOf(nowMs, property.zone).day })
   }
-  return { open: homes.filter((home) => !isOver(home)).reverse(), over: homes.find(isOver) ?? null }
+  return { open: homes.filter((home) => !isOver(home)).reverse(), over: homes.filter(isOver) }
 }
 
 const isOver = ({ tenancy, today }: Home): boolean => tenancy.toDay !== null && tenancy.toDay <= today
