@@ -20,6 +20,8 @@ export default defineConfig({
         "default-src 'self'",
         "img-src 'self' data:",
         "object-src 'none'",
+        // The card's service worker.
+        "worker-src 'self'",
         "base-uri 'none'",
         "form-action 'self'",
         "frame-ancestors 'none'",

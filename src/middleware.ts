@@ -26,6 +26,8 @@ export const onRequest: MiddlewareHandler = async (context, next) => {
   locals.user = null
   locals.organisation = null
   locals.db = null
+  const before = sessionIn(context)
+  const answered = (response: Response): Response => secure(sessionIn(context) === before ? response : forgetKeptPages(response))
   try {
     if (!isSignedLink(url) && isCrossSite(context.request, processConfig().baseUrl)) {
       throw new AppError('forbidden', 'This request came from another site and was refused. Nothing was changed.')
@@ -36,13 +38,22 @@ export const onRequest: MiddlewareHandler = async (context, next) => {
     const response = await next()
     // A route of /api that is not there, or not for this method, is a problem document like every other.
     const unanswered = isApi(context) && response.status === 404 && !response.headers.get('content-type')?.includes('json')
-    return secure(unanswered ? toResponse(notFound('address'), url.pathname) : response)
+    return answered(unanswered ? toResponse(notFound('address'), url.pathname) : response)
   } catch (error) {
-    return secure(await refuse(context, error))
+    return answered(await refuse(context, error))
   }
 }
 
 const secure = (response: Response): Response => secured(response, { https: processConfig().baseUrl.startsWith('https:') })
+
+const sessionIn = ({ cookies }: APIContext): string => cookies.get(lucia().sessionCookieName)?.value ?? ''
+
+/** Whoever signs in or out of a shared phone leaves none of the pages that it keeps to the next (W3C Clear Site Data). */
+function forgetKeptPages(response: Response): Response {
+  const headers = new Headers(response.headers)
+  headers.set('clear-site-data', '"storage"')
+  return new Response(response.body, { status: response.status, statusText: response.statusText, headers })
+}
 
 /** Reads the session cookie; a session in the second half of its life is prolonged, a dead one's cookie is cleared. */
 async function recognise({ cookies }: APIContext): Promise<App.Locals['user']> {

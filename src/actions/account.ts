@@ -75,7 +75,7 @@ export const account = {
         const accepted = await acceptInvitation(database(), { token: input.token ?? '', signedIn: locals.user, input, nowMs: locals.nowMs })
         // Whoever else was signed in here is signed out: the next page belongs to the one who accepted.
         if (locals.user?.id !== accepted.personId) await startSession(cookies, accepted.personId)
-        return { slug: accepted.slug }
+        return { next: accepted.opensShowers ? `/o/${accepted.slug}/my/showers` : `/o/${accepted.slug}/` }
       }),
   }),
 }

@@ -36,7 +36,7 @@ export const hasAccount = (person: Person | undefined): boolean =>
 export async function acceptInvitation(
   db: Connection,
   { token, signedIn, input, nowMs }: Acceptance,
-): Promise<{ readonly personId: PersonId; readonly slug: string }> {
+): Promise<{ readonly personId: PersonId; readonly slug: string; readonly opensShowers: boolean }> {
   const open = await readInvitation(db, token, nowMs)
   if (!open) throw gone()
   // Hashing takes its time, so it comes before the transaction, which holds the one connection.
@@ -52,7 +52,8 @@ export async function acceptInvitation(
       await addAccess(scoped, { personId, propertyId: found.propertyId, role: found.role }, nowMs)
     if (found.tenancyId) await changeTenancyPerson(scoped, found.tenancyId, personId)
     await addAudit(scoped, { atMs: nowMs, action: 'accept', subjectKind: 'invitation', subjectId: found.id, after: { role: found.role } })
-    return { personId, slug: found.organisationSlug }
+    // A tenant's first page asks when they shower.
+    return { personId, slug: found.organisationSlug, opensShowers: found.role === 'tenant' && found.tenancyId !== null }
   })
 }
 
