@@ -9,7 +9,7 @@ import { type RunningProduct, startProduct } from './support/server.ts'
 const HOME = '/o/brindlecross'
 const HOUSE = `${HOME}/p/cinder-wharf`
 const PAGES = [
-  { email: null, paths: ['/', '/sign-in', '/sign-up', '/reset', '/no-such-page'] },
+  { email: null, paths: ['/', '/sign-in', '/sign-up', '/reset', '/offline', '/no-such-page'] },
   {
     email: LANDLORD.email,
     paths: [
@@ -33,7 +33,12 @@ const PAGES = [
       '/account',
     ],
   },
-  { email: TENANT.email, paths: [`${HOME}/my`, `${HOME}/my/showers`] },
+  {
+    email: TENANT.email,
+    paths: ['', '/showers', '/showers?mode=days', '/week', '/calendar', '/wall', '/wall?size=a5', '/history', '/kept'].map(
+      (page) => `${HOME}/my${page}`,
+    ),
+  },
   { email: ELECTRICIAN.email, paths: [`${HOME}/visits`] },
   { email: OWNER.email, paths: [`${HOME}/digests`] },
 ] as const
