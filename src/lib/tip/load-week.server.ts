@@ -4,7 +4,7 @@ import { listUnitEvaluations } from '#db/queries/evaluation.ts'
 import { listOpenFlags } from '#db/queries/flag.ts'
 import { currentHardware } from '#db/queries/hardware.ts'
 import { tenancyCovers } from '#db/queries/tenancy.ts'
-import { addDays } from '#lib/core/time/civil.ts'
+import { addDays, weekdayOf } from '#lib/core/time/civil.ts'
 import { formatDay } from '#lib/format.ts'
 import { stripDayOf } from '#lib/unit/strip-day.ts'
 import { cautionsFor, isPressed } from './cautions.ts'
@@ -32,7 +32,11 @@ export async function loadWeek(db: OrgDb, choice: TenancyChoice) {
       tip: tipOf({ evaluation, pressed, when: '' }),
       strip: stripDayOf(evaluation),
     })),
-    lines: weekLines(evaluations, pressed),
+    // A line names its days in the order of the week, whatever day it is today.
+    lines: weekLines(
+      [...evaluations].sort((one, other) => weekdayOf(one.day) - weekdayOf(other.day)),
+      pressed,
+    ),
     cautions: cautionsFor({ installation: record?.installation ?? null, flags: await listOpenFlags(db, { unitId: unit.id }) }),
     landlords: await landlordsOf(db),
   }
