@@ -1,4 +1,4 @@
-/** How figures are said everywhere: local times with their zone, money in its currency, plain durations. */
+/** How figures are said everywhere: local times with their zone, plain durations. */
 import { TZDate } from '@date-fns/tz'
 import { format } from 'date-fns'
 
@@ -19,13 +19,6 @@ export const formatDay = (day: string, pattern = 'EEEE d MMMM'): string => forma
 export function formatMinuteOfDay(minuteOfDay: number): string {
   const minute = Math.round(minuteOfDay)
   return `${String(Math.floor(minute / 60)).padStart(2, '0')}:${String(minute % 60).padStart(2, '0')}`
-}
-
-/** Minor units -> "£12.34". `minorMinor` never leaves the core unrounded. */
-export function formatMoney(amountMinor: number, currency: string): string {
-  const format = new Intl.NumberFormat('en', { style: 'currency', currency })
-  const digits = format.resolvedOptions().maximumFractionDigits ?? 2
-  return format.format(amountMinor / 10 ** digits)
 }
 
 /** "1 h 35 min", "50 min". */

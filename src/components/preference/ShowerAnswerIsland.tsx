@@ -2,7 +2,7 @@
 import { useDeferredValue, useEffect, useMemo, useState } from 'react'
 import { type Answer, answersOf, type Heater } from '#lib/preference/answers.ts'
 import { readWeekForm, type WeekForm, weekOf } from '#lib/preference/form-fields.ts'
-import { weekSchema } from '#lib/preference/schemas.ts'
+import { weekProblems } from '#lib/preference/week.ts'
 
 interface Props {
   readonly heater: Heater
@@ -42,7 +42,7 @@ export function ShowerAnswerIsland({ heater, formId, first }: Props) {
 }
 
 function answersTo(heater: Heater, form: WeekForm): readonly Answer[] {
-  const week = weekSchema.safeParse(weekOf(form, null))
-  if (week.success) return answersOf(heater, week.data)
-  return [{ label: 'Check', words: week.error.issues[0]?.message ?? 'A figure is outside its limits.', bad: true }]
+  const week = weekOf(form, null)
+  const [problem] = weekProblems(week)
+  return problem ? [{ label: 'Check', words: problem.message, bad: true }] : answersOf(heater, week)
 }

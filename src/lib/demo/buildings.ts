@@ -2,7 +2,7 @@
 import type { Controller } from '#lib/core/controller/types.ts'
 import type { Installation, ProfileId } from '#lib/core/hardware/types.ts'
 import type { InletClimate } from '#lib/core/tank/types.ts'
-import type { Week } from '#lib/preference/schemas.ts'
+import type { Week } from '#lib/preference/week.ts'
 import { american, british, daily, dial, fixed, ONE_SHOT_THAT_MAY_NEVER_STOP, oneShot, timeSwitch } from './installations.ts'
 import { PORT_ALDANE_RATE, WEXHOLT_RATE } from './rates.ts'
 import { at, shower, week } from './weeks.ts'

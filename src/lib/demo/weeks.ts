@@ -1,5 +1,5 @@
 /** Weeks of showers for the demo's tenants, built from a morning, a weekend morning and some evenings. */
-import { DEFAULT_FLOW_L_PER_MIN, DEFAULT_GAP_MIN, DEFAULT_USE_TEMPERATURE_C, type Shower, type Week } from '#lib/preference/schemas.ts'
+import { DEFAULT_FLOW_L_PER_MIN, DEFAULT_GAP_MIN, DEFAULT_USE_TEMPERATURE_C, type Shower, type Week } from '#lib/preference/week.ts'
 
 export const at = (hour: number, minute = 0): number => hour * 60 + minute
 

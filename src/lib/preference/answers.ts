@@ -5,9 +5,12 @@ import { assessReadiness, assessWeek } from '#lib/core/tank/week.ts'
 import { MIN_PER_DAY } from '#lib/core/units.ts'
 import { energyCost } from '#lib/evaluation/energy-cost.ts'
 import type { PriceTable } from '#lib/evaluation/types.ts'
-import { formatMinuteOfDay, formatMoney } from '#lib/format.ts'
+import { formatMoney } from '#lib/money.ts'
+import { clockWords } from '#lib/strip/clock.ts'
 import { daysLabel } from './form-fields.ts'
-import type { Shower, Week } from './schemas.ts'
+import type { Shower, Week } from './week.ts'
+
+const clockOf = (minuteOfDay: number): string => clockWords(minuteOfDay, null)
 
 /** A tenant's own heater as the browser is told it: ordinary days of the coming week, Monday first. */
 export interface Heater {
@@ -98,13 +101,13 @@ function meanCost(cases: readonly DayCase[]): DayCost | null {
 }
 
 function needWords(need: NeedOutcome, pressed: boolean): string {
-  const at = formatMinuteOfDay(need.need.readyByMin)
+  const at = clockOf(need.need.readyByMin)
   const start = need.startByMin === null || !pressed ? '' : ` Press the timer by ${startWords(need.startByMin)}.`
   if (need.status === 'ready') return `works at ${at}.${start}`
   if (need.status === 'impossible') return need.reason
   const better =
     need.nextBestReadyByMin.length > 0
-      ? ` Works at ${need.nextBestReadyByMin.map(formatMinuteOfDay).join(', ')}.`
+      ? ` Works at ${need.nextBestReadyByMin.map(clockOf).join(', ')}.`
       : ' A shorter or a single shower may work.'
   return `at ${at} the run is ${need.shortfallMin} min too short: warm for ${Math.floor(need.minutesServed)} of ${need.minutesWanted} minutes.${better}`
 }
@@ -114,7 +117,7 @@ const START_STEP_MIN = 5
 
 function startWords(startByMin: number): string {
   const minute = Math.floor(startByMin / START_STEP_MIN) * START_STEP_MIN
-  return minute < 0 ? `${formatMinuteOfDay(minute + MIN_PER_DAY)} the evening before` : formatMinuteOfDay(minute)
+  return minute < 0 ? `${clockOf(minute + MIN_PER_DAY)} the evening before` : clockOf(minute)
 }
 
 interface DayCost {
@@ -136,7 +139,7 @@ function costWords(heater: Heater, one: DayCase, cost: DayCost | null): string {
   if (cost.peakMinor <= 0) return `Costs about ${money(cost.costMinor)} a day, none of it on-peak.`
   const said = `Costs about ${money(cost.costMinor)} a day, ${money(cost.peakMinor)} of it on-peak.`
   const better = one.readiness.status === 'ready' ? cheaperTime(heater, one) : null
-  return better ? `${said} At ${formatMinuteOfDay(better.readyByMin)} instead: ${money(better.costMinor)}.` : said
+  return better ? `${said} At ${clockOf(better.readyByMin)} instead: ${money(better.costMinor)}.` : said
 }
 
 const STEP_MIN = 30

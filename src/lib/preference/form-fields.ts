@@ -1,7 +1,7 @@
 /** A week as the plain form sends it: workdays and weekend together, or each day by itself; each with a few times, how many and how long. */
 import type { Weekday } from '#lib/core/time/types.ts'
-import { formatMinuteOfDay } from '#lib/format.ts'
-import { DEFAULT_FLOW_L_PER_MIN, DEFAULT_GAP_MIN, DEFAULT_USE_TEMPERATURE_C, SHOWER_LIMITS, type Shower, type Week } from './schemas.ts'
+import { clockWords } from '#lib/strip/clock.ts'
+import { DEFAULT_FLOW_L_PER_MIN, DEFAULT_GAP_MIN, DEFAULT_USE_TEMPERATURE_C, SHOWER_LIMITS, type Shower, type Week } from './week.ts'
 
 export type FormMode = 'groups' | 'days'
 export interface Slot {
@@ -53,7 +53,7 @@ const isGrouped = (week: Week): boolean =>
   GROUPS.groups.every(({ days }) => days.every((day) => JSON.stringify(week[day]) === JSON.stringify(week[days[0] ?? 0])))
 
 const slotOf = ({ readyByMinuteOfDay, count, minutesEach }: Shower): Slot => ({
-  time: formatMinuteOfDay(readyByMinuteOfDay),
+  time: clockWords(readyByMinuteOfDay, null),
   count,
   minutesEach,
 })

@@ -10,7 +10,7 @@ import { durationOf, unitDayOf } from '#lib/evaluation/unit-day.ts'
 import { openTenancy, type TenancyChoice } from '#lib/tip/own-tenancy.server.ts'
 import type { Heater } from './answers.ts'
 import { type FormMode, formOf } from './form-fields.ts'
-import type { Week } from './schemas.ts'
+import type { Week } from './week.ts'
 
 export async function loadShowers(db: OrgDb, { tenancyId, mode, nowMs }: TenancyChoice & { readonly mode: FormMode | null }) {
   const { tenancy, unit, property, today } = await openTenancy(db, { tenancyId, nowMs })

@@ -1,7 +1,7 @@
 /** Hours and showers as people write them in a table: `05:00-06:30 daily; 17:00-18:00 Mon-Fri`, `06:45 2x8 Mon-Fri; 08:00 1x10 Sat-Sun`. */
 import type { SwitchStep } from '#lib/core/controller/types.ts'
 import type { Weekday } from '#lib/core/time/types.ts'
-import { DEFAULT_FLOW_L_PER_MIN, DEFAULT_GAP_MIN, DEFAULT_USE_TEMPERATURE_C, type Shower, type Week } from '#lib/preference/schemas.ts'
+import { DEFAULT_FLOW_L_PER_MIN, DEFAULT_GAP_MIN, DEFAULT_USE_TEMPERATURE_C, type Shower, type Week } from '#lib/preference/week.ts'
 import { MIN_PER_DAY } from '#lib/core/units.ts'
 
 const DAYS = ['mon', 'tue', 'wed', 'thu', 'fri', 'sat', 'sun']

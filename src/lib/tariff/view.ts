@@ -1,7 +1,7 @@
 /** A tariff version in words and bands for one month. */
 import { periodPrice } from '#lib/core/tariff/price.ts'
 import type { TariffVersion } from '#lib/core/tariff/types.ts'
-import { formatMoney } from '#lib/format.ts'
+import { formatMoney } from '#lib/money.ts'
 
 export interface HourBand {
   readonly fromHour: number

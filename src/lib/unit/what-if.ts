@@ -1,7 +1,8 @@
 /** What one tries in a unit: the fields with their limits, and how now and then compare, in words. Pure. */
 import type { ModelAnswer, UnitModel } from './model.ts'
 import { stateWords } from './view.ts'
-import { formatEnergy, formatMoney } from '#lib/format.ts'
+import { formatEnergy } from '#lib/format.ts'
+import { formatMoney } from '#lib/money.ts'
 import { clockWords } from '#lib/strip/clock.ts'
 import { chanceWords } from './outlook-words.ts'
 import type { Change } from './model.ts'
