@@ -7,6 +7,9 @@ import type { OrgDb, OrgTrx } from '../org-db.ts'
 export interface StoredVersion {
   readonly id: TariffVersionId
   readonly effectiveFrom: string
+  readonly edition: number
+  readonly reason: string | null
+  readonly createdAtMs: number
   readonly version: TariffVersion
   readonly record: unknown
   readonly source: string
@@ -15,8 +18,12 @@ export interface StoredTariff {
   readonly id: TariffId
   readonly name: string
   readonly tariff: Tariff
-  /** Oldest first. */
+  /** Oldest first; of corrected versions, the last edition. */
   readonly stored: readonly StoredVersion[]
+  /** Editions that were corrected, oldest first. */
+  readonly corrected: readonly StoredVersion[]
+  /** Grows with every version: whoever saves says which one they have seen. */
+  readonly revision: number
 }
 
 export async function findStoredTariff(db: OrgDb, id: TariffId): Promise<StoredTariff | null> {
@@ -27,15 +34,27 @@ export async function findStoredTariff(db: OrgDb, id: TariffId): Promise<StoredT
     .where('tariff_version.tariff_id', '=', id)
     .selectAll('tariff_version')
     .orderBy('tariff_version.effective_from')
+    .orderBy('tariff_version.edition')
     .execute()
-  const stored = rows.map((row) => ({
+  const all = rows.map((row) => ({
     id: row.id,
     effectiveFrom: row.effective_from,
+    edition: row.edition,
+    reason: row.reason,
+    createdAtMs: row.created_at_ms,
     version: { ...fromJson<TariffVersion>(row.version), effectiveFrom: row.effective_from },
     record: row.record === null ? null : fromJson<unknown>(row.record),
     source: row.source,
   }))
-  return { id: head.id, name: head.name, tariff: { zone: head.zone, versions: stored.map((one) => one.version) }, stored }
+  const stored = all.filter((one, index) => all[index + 1]?.effectiveFrom !== one.effectiveFrom)
+  return {
+    id: head.id,
+    name: head.name,
+    tariff: { zone: head.zone, versions: stored.map((one) => one.version) },
+    stored,
+    corrected: all.filter((one) => !stored.includes(one)),
+    revision: all.length,
+  }
 }
 
 /** The tariff as the core reads it, or `null`. */
@@ -53,6 +72,9 @@ export async function addTariff(
 export interface NewVersion {
   readonly tariffId: TariffId
   readonly effectiveFrom: string
+  /** 1 unless it corrects. */
+  readonly edition?: number
+  readonly reason?: string | null
   readonly version: TariffVersion
   readonly record: unknown
   readonly source: string
@@ -60,14 +82,18 @@ export interface NewVersion {
 }
 
 export async function addTariffVersion(db: OrgTrx, fields: NewVersion): Promise<void> {
+  const { actor } = db.scope
   await db
     .insertInto('tariff_version', {
       id: newId<TariffVersionId>(),
       tariff_id: fields.tariffId,
       effective_from: fields.effectiveFrom,
+      edition: fields.edition ?? 1,
       version: toJson(fields.version),
       record: fields.record === null ? null : toJson(fields.record),
       source: fields.source,
+      reason: fields.reason ?? null,
+      person_id: actor.kind === 'person' ? actor.personId : null,
       created_at_ms: fields.createdAtMs,
     })
     .execute()

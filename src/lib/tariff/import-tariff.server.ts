@@ -9,6 +9,7 @@ import { civilOf } from '#lib/core/time/civil.ts'
 import { readUrdb } from '#lib/core/tariff/urdb-import.ts'
 import { AppError, invalid, notFound } from '#lib/http/app-error.ts'
 import { parseInput } from '#lib/http/parse.ts'
+import { minorPerMajorOf } from './money.ts'
 import { RATE_RECORD_BYTES, tariffImportSchema } from './schemas.ts'
 
 export interface ImportTariff {
@@ -28,8 +29,7 @@ export async function importTariff(
   return inTransaction(db, async (trx) => {
     const property = await findProperty(trx, propertyId)
     if (!property) throw notFound('property')
-    const minorPerMajor =
-      10 ** (new Intl.NumberFormat('en', { style: 'currency', currency: property.currency }).resolvedOptions().maximumFractionDigits ?? 2)
+    const minorPerMajor = minorPerMajorOf(property.currency)
     const outcome = readUrdb(record, { currency: property.currency, minorPerMajor, effectiveFrom: civilOf(nowMs, property.zone).day })
     if (outcome.status === 'refused')
       throw invalid(

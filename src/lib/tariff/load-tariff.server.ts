@@ -7,9 +7,11 @@ import { findStoredTariff, type StoredVersion } from '#db/queries/tariff.ts'
 import { requireRole } from '#lib/auth/permission.ts'
 import { billMonth } from '#lib/core/tariff/bill.ts'
 import { versionOn } from '#lib/core/tariff/price.ts'
+import { writeUrdb } from '#lib/core/tariff/urdb-export.ts'
 import { readUrdb } from '#lib/core/tariff/urdb-import.ts'
 import { addDays, civilOf, dayBounds, monthOf } from '#lib/core/time/civil.ts'
 import { billView } from './bill-view.ts'
+import { differencesOf } from './differences.ts'
 import { monthLoad } from './month-load.ts'
 import { tariffView } from './view.ts'
 
@@ -28,7 +30,12 @@ export async function loadTariff(db: OrgDb, property: Property, nowMs: number) {
     versions: stored.stored.map((one) => ({
       effectiveFrom: one.effectiveFrom,
       source: one.source,
+      reason: one.reason,
+      notCarried: one.record === null ? writeUrdb(one.version).notCarried : [],
       inForce: one.version.effectiveFrom === current?.effectiveFrom,
+      corrected: stored.corrected
+        .filter((other) => other.effectiveFrom === one.effectiveFrom)
+        .map((other) => ({ source: other.source, enteredAtMs: other.createdAtMs, changes: differencesOf(other.version, one.version) })),
     })),
     current: current && tariffView(current, day),
     warnings: now ? warningsOf(now) : [],

@@ -31,6 +31,22 @@ describe('monthLoad', () => {
     const first = (instantOf('2026-11-10', 390, zone) - load.startsAtMs) / (15 * 60_000)
     expect(load.energyKwh.slice(first - 1, first + 4)).toEqual([0, 1, 1, 1, 0])
   })
+  it('keeps to the clock on the day on which it changes, and loses nothing of a missing hour', () => {
+    // Sunday 1 November 2026 has an hour twice before 06:30; on Sunday 8 March 2026 02:30 is missing.
+    const autumn = monthLoad({ month: '2026-11', zone, baseLoadW: 0, runs, evaluations })
+    const slot = (instantOf('2026-11-01', 390, zone) - autumn.startsAtMs) / (15 * 60_000)
+    expect(slot).toBe((6.5 + 1) * 4)
+    expect(autumn.energyKwh.slice(slot - 1, slot + 4)).toEqual([0, 1, 1, 1, 0])
+    const night = days.map((day) => ({
+      unitId,
+      day,
+      startsAtMs: instantOf(day, 150, zone),
+      endsAtMs: instantOf(day, 165, zone),
+      powerW: 4_000,
+    }))
+    const spring = monthLoad({ month: '2026-03', zone, baseLoadW: 0, runs: night, evaluations: [] })
+    expect(sum(spring.energyKwh)).toBeCloseTo(31, 9)
+  })
   it('carries a run over midnight into the day after', () => {
     const startsAtMs = instantOf('2026-11-02', 1_430, zone)
     const late = [{ unitId, day: '2026-11-03', startsAtMs, endsAtMs: startsAtMs + HOUR_MS, powerW: 3_000 }]
