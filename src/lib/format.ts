@@ -2,6 +2,8 @@
 import { TZDate } from '@date-fns/tz'
 import { format } from 'date-fns'
 
+export { counted, formatMinuteOfDay, formatMoney } from './figures.ts'
+
 /** `Europe/London` -> `London`. */
 export const zoneCity = (zone: string): string => (zone.split('/').at(-1) ?? zone).replaceAll('_', ' ')
 
@@ -15,12 +17,6 @@ export const formatInstant = (instantMs: number, zone: string, pattern: string):
 /** A civil day, `2026-12-02`, by a date-fns pattern, e.g. "Wednesday 2 December". */
 export const formatDay = (day: string, pattern = 'EEEE d MMMM'): string => format(new TZDate(`${day}T12:00:00Z`, 'UTC'), pattern)
 
-/** Wall-clock minute of day -> "06:05"; 1,440 -> "24:00". */
-export function formatMinuteOfDay(minuteOfDay: number): string {
-  const minute = Math.round(minuteOfDay)
-  return `${String(Math.floor(minute / 60)).padStart(2, '0')}:${String(minute % 60).padStart(2, '0')}`
-}
-
 /** "1 h 35 min", "50 min". */
 export function formatDuration(durationMin: number): string {
   const minutes = Math.round(durationMin)
@@ -30,5 +26,3 @@ export function formatDuration(durationMin: number): string {
 }
 
 export const formatEnergy = (energyKwh: number): string => `${energyKwh.toFixed(energyKwh < 100 ? 1 : 0)} kWh`
-/** "1 unit", "3 units". */
-export const counted = (count: number, one: string, many = `${one}s`): string => `${count} ${count === 1 ? one : many}`

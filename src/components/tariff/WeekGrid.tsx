@@ -1,5 +1,5 @@
 /** The week of every season as a grid to paint periods on, hours downwards: by mouse, by keyboard, or by the form below it. */
-import { counted } from '#lib/format.ts'
+import { counted } from '#lib/figures.ts'
 import { type Draft, type Layer, letterOf } from '#lib/tariff/draft.ts'
 import { periodNamesOf } from '#lib/tariff/draft-shape.ts'
 import { areaWords, columnsOf, dayTypesOf, dayTypeWords, periodAt, type Rectangle, slotCount, slotTime } from '#lib/tariff/paint.ts'

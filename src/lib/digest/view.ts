@@ -1,7 +1,7 @@
 /** A digest in words: every saving with its baseline and its range, and nothing claimed that an older edition did not account for. */
 import type { DigestFigures, DigestVisit } from '#db/queries/digest.ts'
 import { counted, formatDay } from '#lib/format.ts'
-import { formatMoney } from '#lib/money.ts'
+import { formatMoney } from '#lib/figures.ts'
 
 export interface DigestView {
   readonly headline: string

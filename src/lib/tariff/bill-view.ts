@@ -1,6 +1,6 @@
 /** A bill as lines to read: quantities with their unit, money in its currency, what is not in it. Pure. */
 import type { Bill } from '#lib/core/tariff/types.ts'
-import { formatMoney } from '#lib/money.ts'
+import { formatMoney } from '#lib/figures.ts'
 
 export interface BillView {
   readonly lines: readonly { readonly label: string; readonly quantity: string; readonly price: string; readonly amount: string }[]

@@ -3,7 +3,7 @@ import { versionOn } from '#lib/core/tariff/price.ts'
 import { energyGrid, demandGrid, type GridOf, rowIndexOf } from '#lib/core/tariff/schedule.ts'
 import type { TariffVersion } from '#lib/core/tariff/types.ts'
 import { MIN_PER_DAY } from '#lib/core/units.ts'
-import { formatMinuteOfDay } from '#lib/format.ts'
+import { formatMinuteOfDay } from '#lib/figures.ts'
 import { draftOf } from './draft.ts'
 
 /** Days are compared in five minutes, the finest step that is kept. */

@@ -1,7 +1,7 @@
 /** Painting periods on a draft's week: which columns there are, what a cell holds, and a rectangle given another period. Pure. */
 import type { ScheduleGrid } from '#lib/core/tariff/types.ts'
 import { MIN_PER_DAY } from '#lib/core/units.ts'
-import { formatMinuteOfDay } from '#lib/format.ts'
+import { formatMinuteOfDay } from '#lib/figures.ts'
 import { type Draft, type Layer, mapGrids, stepped } from './draft.ts'
 
 /** One kind of day in one season. */

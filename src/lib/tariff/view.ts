@@ -3,7 +3,7 @@ import { periodPrice } from '#lib/core/tariff/price.ts'
 import { monthIndexOf, rowIndexOf } from '#lib/core/tariff/schedule.ts'
 import type { TariffVersion } from '#lib/core/tariff/types.ts'
 import { formatDay } from '#lib/format.ts'
-import { formatMoney } from '#lib/money.ts'
+import { formatMoney } from '#lib/figures.ts'
 
 export interface HourBand {
   readonly fromHour: number

@@ -2,7 +2,7 @@
 import type { ModelAnswer, UnitModel } from './model.ts'
 import { stateWords } from './view.ts'
 import { formatEnergy } from '#lib/format.ts'
-import { formatMoney } from '#lib/money.ts'
+import { formatMoney } from '#lib/figures.ts'
 import { clockWords } from '#lib/strip/clock.ts'
 import { chanceWords } from './outlook-words.ts'
 import type { Change } from './model.ts'
