@@ -21,6 +21,7 @@ interface Props {
 }
 /** Before any day that is billed: the rate is tried on the whole month, whenever it is to begin. */
 const ALWAYS = '0001-01-01'
+const MONTH_NAME = new Intl.DateTimeFormat('en', { month: 'long', year: 'numeric', timeZone: 'UTC' })
 const NO_HEATING: HeatingWeek = Array.from({ length: 7 }, () => [])
 
 export function PreviewBill({ draft, versions, zone, today, baseLoadW, week, isWrong }: Props) {
@@ -54,7 +55,9 @@ export function PreviewBill({ draft, versions, zone, today, baseLoadW, week, isW
           <span className="text-small">Month</span>
           <select className="field w-auto" value={month} onChange={(event) => setMonth(event.target.value)}>
             {Array.from({ length: 13 }, (_, index) => addMonths(monthOf(today), index)).map((one) => (
-              <option key={one}>{one}</option>
+              <option key={one} value={one}>
+                {MONTH_NAME.format(new Date(`${one}-15T00:00:00Z`))}
+              </option>
             ))}
           </select>
         </label>
