@@ -24,6 +24,7 @@ const PAGES = [
       `${HOUSE}/clock-change?outage=200`,
       `${HOUSE}/flags`,
       `${HOUSE}/tariff`,
+      `${HOUSE}/tariff/edit`,
       `${HOUSE}/settings`,
       `${HOME}/people`,
       `${HOME}/post`,

@@ -112,7 +112,7 @@ describe('the rate editor', () => {
     expect(await second.page.locator('main').innerText()).toMatch(/Both of us wrote it/)
     for (const { context } of [first, second]) await context.close()
   })
-  it('is read, imported and exported without script, and says so on the editor’s page', async () => {
+  it('needs script and says so; reading and exporting do not', async () => {
     const context = await browser.newContext({ baseURL: product.baseUrl, javaScriptEnabled: false })
     const page = await context.newPage()
     await page.goto('/sign-in')
@@ -121,6 +121,9 @@ describe('the rate editor', () => {
     await page.getByRole('button', { name: 'Sign in' }).click()
     await page.goto(EDIT)
     expect(await page.locator('noscript').innerText()).toMatch(/Painting needs JavaScript/)
+    await page.goto(`${HOUSE}/tariff`)
+    expect(await page.locator('main').innerText()).toMatch(/07:00–10:00 \$0\.2936\/kWh\s+on-peak/)
+    expect(await page.getByRole('button', { name: /Import|Look/ }).count()).toBe(1)
     const answer = await page.request.get(`/api${HOUSE}/tariff`)
     expect(answer.headers()['content-disposition']).toMatch(/attachment; filename="cinder-wharf-tariff/)
     expect(await answer.json()).toHaveProperty('energyratestructure')
