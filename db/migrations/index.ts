@@ -5,10 +5,10 @@ import * as buildings from './0002-buildings.ts'
 import * as work from './0003-work.ts'
 import * as postAndJobs from './0004-post-and-jobs.ts'
 import * as accountEvents from './0005-account-events.ts'
-import * as tariffEditions from './0008-tariff-editions.ts'
 import * as mailComplete from './0009-mail-complete.ts'
 import * as currentFigures from './0010-current-figures.ts'
 import * as tenantFeeds from './0011-tenant-feeds.ts'
+import * as tariffEditions from './0012-tariff-editions.ts'
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0001-accounts': accounts,
@@ -16,8 +16,8 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0003-work': work,
   '0004-post-and-jobs': postAndJobs,
   '0005-account-events': accountEvents,
-  '0008-tariff-editions': tariffEditions,
   '0009-mail-complete': mailComplete,
   '0010-current-figures': currentFigures,
   '0011-tenant-feeds': tenantFeeds,
+  '0012-tariff-editions': tariffEditions,
 }
