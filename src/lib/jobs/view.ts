@@ -25,8 +25,9 @@ export function periodLabel(period: string): string {
   return again ? `${label}, run again` : label
 }
 
-/** `{ flagsOpened: 2, units: 24 }` -> "flags opened 2, units 24". */
+/** `{ flagsOpened: 2, units: 24, cold: 0 }` -> "flags opened 2, units 24"; what there was none of is left out. */
 export const countsLabel = (counts: Readonly<Record<string, number>> | null): string =>
   Object.entries(counts ?? {})
+    .filter(([, count]) => count !== 0)
     .map(([name, count]) => `${name.replaceAll(/[A-Z]/g, (letter) => ` ${letter.toLowerCase()}`)} ${count}`)
     .join(', ')
