@@ -75,7 +75,9 @@ describe('the answer while one chooses', () => {
     await page.locator('[name=weekdays-minutes]').fill('9')
     await expect
       .poll(() => answer.innerText())
-      .toMatch(/at 06:45 the run is \d+ min too short: warm for \d+ of 18 minutes\. (Works at \d\d:\d\d|A shorter or a single shower may work)/)
+      .toMatch(
+        /at 06:45 the run is \d+ min too short: warm for \d+ of 18 minutes\. (Works at \d\d:\d\d|A shorter or a single shower may work)/,
+      )
     await context.close()
   })
   it('says what the peak costs and the cheaper time nearest to it', async () => {

@@ -65,8 +65,7 @@ describe('saveProperty', () => {
 
 describe('the choices', () => {
   it('say whose guidance each is', () => {
-    for (const { value, label } of hygieneChoices())
-      expect(label).toContain(HYGIENE_POLICIES[value as keyof typeof HYGIENE_POLICIES].whose)
+    for (const { value, label } of hygieneChoices()) expect(label).toContain(HYGIENE_POLICIES[value as keyof typeof HYGIENE_POLICIES].whose)
     expect(hygieneChoicesWithUsual().map(({ value }) => value)).toEqual([USUAL_IN_COUNTRY, ...Object.keys(HYGIENE_POLICIES)])
   })
 })
