@@ -15,7 +15,10 @@ const FILES_MAX = 60
 const ACCESS_ENDED = [401, 403, 404, 410]
 
 self.addEventListener('install', (event) => event.waitUntil(keepFallback().then(() => self.skipWaiting())))
-self.addEventListener('activate', (event) => event.waitUntil(self.clients.claim().then(keepOpenPages)))
+self.addEventListener('activate', (event) => event.waitUntil(self.clients.claim()))
+self.addEventListener('message', (event) => {
+  if (event.data === 'keep' && event.source) event.waitUntil(keepOpenPage(event.source.url))
+})
 self.addEventListener('fetch', (event) => {
   const { request } = event
   const url = new URL(request.url)
@@ -102,15 +105,12 @@ async function keepFiles(html) {
   for (const request of kept.slice(0, Math.max(0, kept.length - FILES_MAX))) await files.delete(request)
 }
 
-/** The page from which this worker was registered was loaded before it: it is asked for once more. */
-async function keepOpenPages() {
-  const windows = await self.clients.matchAll({ type: 'window', includeUncontrolled: true })
-  for (const { url } of windows) {
-    if (!url.startsWith(self.registration.scope)) continue
-    try {
-      await remember(url, await fetch(url, { redirect: 'manual' }))
-    } catch {
-      // The connection went meanwhile: the page is kept the next time it is opened.
-    }
+/** A page that was loaded before this worker began asks to be kept: it is fetched once more. */
+async function keepOpenPage(url) {
+  if (!url.startsWith(self.registration.scope)) return
+  try {
+    await remember(url, await fetch(url, { redirect: 'manual' }))
+  } catch {
+    // The connection went meanwhile: the page is kept the next time it is opened.
   }
 }
