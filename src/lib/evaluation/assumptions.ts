@@ -2,11 +2,12 @@
 import type { Assumption } from '#db/queries/evaluation.ts'
 import { describeController } from '#lib/core/controller/describe.ts'
 import type { DurationOutcome } from '#lib/core/controller/types.ts'
-import { SHARE_ABOVE_UPPER_FRACTION } from '#lib/core/tank/defaults.ts'
+import { HEIGHT_TO_DIAMETER, NODES, SHARE_ABOVE_UPPER_FRACTION, SHARE_BELOW_LOWER_FRACTION } from '#lib/core/tank/defaults.ts'
 import { lossWPerK } from '#lib/core/tank/loss.ts'
 import { actualVolumeL, tankPowerW } from '#lib/core/tank/model.ts'
 import { recoveryGalPerH } from '#lib/core/tank/recovery.ts'
 import { fFromC, lFromUsGal, usGalFromL } from '#lib/core/units.ts'
+import { DEFAULT_TANK } from '#lib/hardware/defaults.ts'
 import { clockOffsetMin } from './unit-day.ts'
 import type { DayContext, Site, UnitHardware } from './types.ts'
 
@@ -45,11 +46,26 @@ export function assumptionsOf({ site, context, hardware, duration }: Given): rea
       value: tank.shareAboveUpperFraction.toFixed(2),
       from: Math.abs(tank.shareAboveUpperFraction - SHARE_ABOVE_UPPER_FRACTION) < 1e-9 ? 'default' : 'entered',
     },
+    {
+      name: 'Share below the lower element',
+      value: (tank.shareBelowLowerFraction ?? SHARE_BELOW_LOWER_FRACTION).toFixed(2),
+      from: tank.shareBelowLowerFraction === undefined ? 'default' : 'entered',
+    },
+    {
+      name: 'Height of the water',
+      value: tank.heightM === null ? `${HEIGHT_TO_DIAMETER} times its width` : `${tank.heightM.toFixed(2)} m`,
+      from: tank.heightM === null ? 'default' : 'entered',
+    },
+    { name: 'Thermostat’s dead band', value: `${tank.deadBandK.toFixed(1)} K`, from: defaultOr(tank.deadBandK === DEFAULT_TANK.deadBandK) },
+    { name: 'Room around the tank', value: bothC(tank.ambientC), from: defaultOr(tank.ambientC === DEFAULT_TANK.ambientC) },
+    { name: 'Layers of water reckoned with', value: String(NODES), from: 'default' },
     { name: 'Cold water', value: bothC(context.inletC), from: site.climate.kind === 'months' ? 'measured' : 'computed' },
     { name: 'Controller', value: describeController(hardware.installation.controller), from: 'entered' },
     ...runAssumptions({ site, context, hardware, duration }),
   ]
 }
+
+const defaultOr = (isDefault: boolean): Assumption['from'] => (isDefault ? 'default' : 'entered')
 
 /** The trade's recovery rate at this supply, through the rise from today's cold water to the set point. */
 const recoverySaid = (powerW: number, riseK: number): string =>

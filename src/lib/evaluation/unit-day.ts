@@ -5,6 +5,7 @@ import type { DurationOutcome, RunSource } from '#lib/core/controller/types.ts'
 import type { ShowerNeed, UnitDay } from '#lib/core/tank/types.ts'
 import { elapsedOf, offsetMin } from '#lib/core/time/civil.ts'
 import type { MinuteInterval } from '#lib/core/time/types.ts'
+import { MIN_PER_DAY } from '#lib/core/units.ts'
 import type { Preference } from '#db/queries/preference.ts'
 import type { DayContext, Site, UnitHardware, Wants } from './types.ts'
 
@@ -65,5 +66,7 @@ export const unitDayOf = ({ site, context, hardware, duration, week, willing }: 
   runs: runsOf(hardware, duration, { site, context }),
   needs: needsOf(week, { site, context }),
   willing: willingOf(willing, { site, context }),
+  // Left out of ordinary days, so that equal days are equal to the memo too.
+  ...(context.dayMin === MIN_PER_DAY ? {} : { lengthMin: context.dayMin }),
   start: { kind: 'periodic' },
 })

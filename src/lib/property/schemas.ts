@@ -32,8 +32,13 @@ const isZone = (zone: string): boolean => {
 }
 
 export const climateSchema = z.discriminatedUnion('kind', [
-  z.strictObject({ kind: z.literal('climate'), meanAirC: z.number(), swingAirK: z.number(), hemisphere: z.enum(['north', 'south']) }),
-  z.strictObject({ kind: z.literal('months'), inletC: z.array(z.number()).length(12) }),
+  z.strictObject({
+    kind: z.literal('climate'),
+    meanAirC: z.number().min(-20).max(35),
+    swingAirK: z.number().min(0).max(60),
+    hemisphere: z.enum(['north', 'south']),
+  }),
+  z.strictObject({ kind: z.literal('months'), inletC: z.array(z.number().min(0).max(40)).length(12) }),
 ]) satisfies z.ZodType<InletClimate>
 
 /** As a form sends it: flat fields, numbers as text. */

@@ -5,8 +5,10 @@ import type { Unit } from '#db/queries/unit.ts'
 import { requireRole } from '#lib/auth/permission.ts'
 import { unitInputs } from '#lib/evaluation/load-inputs.server.ts'
 import type { PriceTable } from '#lib/evaluation/types.ts'
+import { requireUnitAccess } from '#lib/hardware/record-hardware.server.ts'
 import { durationOf, unitDayOf, wantedOf } from '#lib/evaluation/unit-day.ts'
 import type { UnitModel } from './model.ts'
+import { otherClockOf } from './other-clock.ts'
 
 const DAYS = 7
 
@@ -16,10 +18,12 @@ export async function loadUnitModel(
   { property, unit, nowMs }: { readonly property: Property; readonly unit: Unit; readonly nowMs: number },
 ): Promise<UnitModel | null> {
   requireRole(db, ['landlord', 'electrician'], 'see a unit’s model')
-  const { site, contexts, units } = await unitInputs(db, { property, nowMs, days: DAYS }, unit)
-  const [inputs] = units
-  if (!inputs?.hardware) return null
-  const { hardware, wants } = inputs
+  await requireUnitAccess(db, unit.id)
+  const inputs = await unitInputs(db, { property, nowMs, days: DAYS }, unit)
+  const { site, contexts, units } = inputs
+  const [own] = units
+  if (!own?.hardware) return null
+  const { hardware, wants } = own
   const duration = durationOf(hardware)
   const tables: PriceTable[] = []
   const known = new Map<string, number>()
@@ -39,6 +43,7 @@ export async function loadUnitModel(
       table: indexOf(context.prices),
       unit: unitDayOf({ site, context, hardware, duration, ...wantedOf(wants[index]) }),
     })),
+    otherClock: otherClockOf(inputs),
     tables,
     currency: property.currency,
     climate: site.climate,

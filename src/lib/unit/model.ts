@@ -4,7 +4,7 @@ import { assessHygiene } from '#lib/core/hygiene/assess-hygiene.ts'
 import { assessScald } from '#lib/core/hygiene/scald.ts'
 import type { HygieneFinding, HygienePolicyId, ScaldFinding } from '#lib/core/hygiene/types.ts'
 import { type Chance, chancesOf } from '#lib/core/tank/chance.ts'
-import { type Outlook, seasonOutlook } from '#lib/core/tank/outlook.ts'
+import { type OtherClock, type Outlook, seasonOutlook } from '#lib/core/tank/outlook.ts'
 import type { HeatingElement, InletClimate, Readiness, UnitDay } from '#lib/core/tank/types.ts'
 import { assessWeek } from '#lib/core/tank/week.ts'
 import type { MinuteInterval } from '#lib/core/time/types.ts'
@@ -25,6 +25,8 @@ export interface ModelDay {
 /** Seven local days from today on: plain data, so that the browser can compute them again. */
 export interface UnitModel {
   readonly days: readonly ModelDay[]
+  /** `null` where no clock change changes the week. */
+  readonly otherClock: OtherClock | null
   readonly tables: readonly PriceTable[]
   readonly currency: string
   readonly climate: InletClimate
@@ -50,7 +52,7 @@ export interface ModelAnswer {
 /** The same seed every time: the same records have the same chance. */
 const SEED = 1
 
-export function answerOf({ days, tables, climate, policy }: UnitModel): ModelAnswer {
+export function answerOf({ days, otherClock, tables, climate, policy }: UnitModel): ModelAnswer {
   const units = days.map(({ unit }) => unit)
   const readiness = assessWeek(units)
   const chances = chancesOf({ days: units, readiness, seed: SEED })
@@ -63,7 +65,7 @@ export function answerOf({ days, tables, climate, policy }: UnitModel): ModelAns
   const [first] = readiness
   return {
     days: answered,
-    outlook: seasonOutlook({ days: units, climate, fromDay: days[0]!.day }),
+    outlook: seasonOutlook({ days: units, otherClock, climate, fromDay: days[0]!.day }),
     hygiene: assessHygiene({
       days: readiness.map(({ trace }) => ({ coldestC: trace.coldestC, hottestC: trace.outletC })),
       sampleMin: first!.trace.sampleMin,
@@ -102,6 +104,7 @@ export const NO_CHANGE: Change = {
 export const changed = (model: UnitModel, change: Change): UnitModel => ({
   ...model,
   days: model.days.map((day) => ({ ...day, unit: changedDay(day.unit, change) })),
+  otherClock: model.otherClock && { ...model.otherClock, days: model.otherClock.days.map((day) => changedDay(day, change)) },
 })
 
 function changedDay(

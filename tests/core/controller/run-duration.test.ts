@@ -35,6 +35,14 @@ describe('runDuration', () => {
     expect(outcome.source).toBe('measured')
     expect(outcome.guaranteed).toEqual({ minMin: 58, maxMin: 61 })
   })
+  it('does not take two readings that happen to agree for certainty, and trusts more of them more', () => {
+    const widths = [1, 2, 3, 6].map((count) => {
+      const { minMin, maxMin } = runDuration(TIMER, Array.from({ length: count }, () => ({ durationMin: 60, measuredAtMs: 0 }))).guaranteed
+      return (maxMin ?? Infinity) - minMin
+    })
+    widths.forEach((width, index) => expect(width).toBeLessThan(widths[index - 1] ?? Infinity))
+    expect(Math.min(...widths)).toBeGreaterThan(0)
+  })
 })
 
 const leakages = fc.oneof<fc.Arbitrary<CapacitorLeakage>[]>(

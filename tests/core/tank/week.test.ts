@@ -231,7 +231,7 @@ describe('chancesOf', () => {
 describe('seasonOutlook', () => {
   const climate: InletClimate = { kind: 'climate', meanAirC: 10, swingAirK: 25, hemisphere: 'north' }
   const outlook = (minutes: number, site: InletClimate = climate, fromDay = '2026-07-01') =>
-    seasonOutlook({ days: week(() => ({ runs: pressedFor(minutes) })), climate: site, fromDay })
+    seasonOutlook({ days: week(() => ({ runs: pressedFor(minutes) })), otherClock: null, climate: site, fromDay })
   const readyOn = (minutes: number, day: string, site = climate) =>
     assessWeek(week(() => ({ runs: pressedFor(minutes), inletC: inletC(site, day) }))).every((one) => one.status === 'ready')
 
@@ -265,6 +265,6 @@ describe('seasonOutlook', () => {
     expect(middle.slice(5) > '06-15' && middle.slice(5) < '10-15').toBe(true)
   })
   it('has nothing to say where nobody showers', () => {
-    expect(seasonOutlook({ days: week(() => ({ needs: [] })), climate, fromDay: '2026-07-01' }).status).toBe('no-need')
+    expect(seasonOutlook({ days: week(() => ({ needs: [] })), otherClock: null, climate, fromDay: '2026-07-01' }).status).toBe('no-need')
   })
 })

@@ -117,6 +117,9 @@ export const IC_FAMILIES: Readonly<Record<IcFamily, FamilyLimits>> = { bipolar: 
 
 /**
  * Initial error of the interval, 3 % at most (TI SLFS022A p. 5; TLC555 SLFS043C p. 9). The makers give it against the mean of a
- * production run, with resistors to 100 kΩ; nothing better is published for large ones.
+ * production run, with resistors to 100 kΩ; nothing better is published for large ones. The same sheets allow the threshold itself
+ * 8.8 to 11.2 V of 15 V (TI SLFS022 p. 5), which by itself would be −19.6 / +25 % of the interval. The narrower figure is chosen: it
+ * is the maximum of the interval as a whole, and what it says of the threshold does not depend on the resistor; what does, leakage
+ * and bias, is reckoned apart. A stop-watch reading overrides both.
  */
 export const IC_TOLERANCE_FRACTION = 0.03

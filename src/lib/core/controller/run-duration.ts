@@ -2,8 +2,11 @@
 import { rcOutcome } from './rc-outcome.ts'
 import type { Controller, DialController, DurationOutcome, MeasuredDuration, OneShotFixedController } from './types.ts'
 
-/** One stop-watch reading says nothing about spread; 3 % stands in for it (common practice, no source). */
-export const SINGLE_READING_SPREAD_FRACTION = 0.03
+/**
+ * Few readings say little about spread: from their mean on, the run is taken to differ by at least this over how many there are,
+ * so that two that happen to agree do not pass for certain (common practice, no source).
+ */
+export const READING_SPREAD_FRACTION = 0.03
 
 /** Clocked controllers have no duration of their own: their nominal is `null` and `runSource` gives their hours. */
 export function runDuration(controller: Controller, measured: readonly MeasuredDuration[]): DurationOutcome {
@@ -14,8 +17,8 @@ export function runDuration(controller: Controller, measured: readonly MeasuredD
 function measuredDuration(measured: readonly MeasuredDuration[], computed: DurationOutcome): DurationOutcome {
   const minutes = measured.map((reading) => reading.durationMin)
   const mean = minutes.reduce((sum, value) => sum + value, 0) / minutes.length
-  const spread = minutes.length === 1 ? mean * SINGLE_READING_SPREAD_FRACTION : 0
-  const range = { minMin: Math.min(...minutes) - spread, maxMin: Math.max(...minutes) + spread }
+  const leastMin = (mean * READING_SPREAD_FRACTION) / minutes.length
+  const range = { minMin: Math.min(...minutes, mean - leastMin), maxMin: Math.max(...minutes, mean + leastMin) }
   return {
     source: 'measured',
     nominalMin: computed.nominalMin,

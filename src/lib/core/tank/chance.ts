@@ -4,7 +4,7 @@
  */
 import type { RunSource } from '../controller/types.ts'
 import type { MinuteInterval } from '../time/types.ts'
-import { chainOf } from './chain.ts'
+import { chainOf, tailOf } from './chain.ts'
 import { type Cycle, firstState, run, servedByNeed, servesAll } from './cycle.ts'
 import { lowDiscrepancy, triangular } from './low-discrepancy.ts'
 import { actualVolumeL } from './model.ts'
@@ -48,7 +48,7 @@ export interface Chance {
 export interface ChanceCase {
   readonly days: readonly UnitDay[]
   /** Of those same days: the starts that the tenant is told. */
-  readonly readiness: readonly Pick<Readiness, 'needs' | 'startNodesC'>[]
+  readonly readiness: readonly Pick<Readiness, 'needs' | 'runs' | 'startNodesC'>[]
   readonly seed: number
   readonly spread?: Spread
 }
@@ -56,9 +56,12 @@ export interface ChanceCase {
 /** Of each day; `null` on one without needs. */
 export function chancesOf({ days, readiness, seed, spread = DEFAULT_SPREAD }: ChanceCase): readonly (Chance | null)[] {
   const starts = readiness.map(({ needs }) => needs.flatMap(({ run: own }) => (own ? [own.startMin] : [])))
-  const states = readiness.map(({ startNodesC }): TankState => ({ nodesC: startNodesC, upperCalls: true, lowerCalls: true }))
+  const expected = readiness.map(({ startNodesC, runs }): Expected => ({
+    state: { nodesC: startNodesC, upperCalls: true, lowerCalls: true },
+    on: runs,
+  }))
   const points = lowDiscrepancy(seed, { count: SAMPLES, dimensions: 5 })
-  const worlds = points.map((point) => servedIn({ days, starts, states, spread, point }))
+  const worlds = points.map((point) => servedIn({ days, starts, expected, spread, point }))
   return days.map(({ needs }, index) => {
     if (needs.length === 0) return null
     const outcomes = worlds.map((world) => world[index] ?? [])
@@ -74,21 +77,26 @@ export function chancesOf({ days, readiness, seed, spread = DEFAULT_SPREAD }: Ch
   })
 }
 
+/** A cycle when nothing deviates: the state that it starts from, and its on-intervals. */
+interface Expected {
+  readonly state: TankState
+  readonly on: readonly MinuteInterval[]
+}
+
 interface World {
   readonly days: readonly UnitDay[]
   /** Of each day. */
   readonly starts: readonly (readonly number[])[]
-  /** State at each cycle's start when nothing deviates. */
-  readonly states: readonly TankState[]
+  readonly expected: readonly Expected[]
   readonly spread: Spread
   readonly point: readonly number[]
 }
 
-/** Days lived before the first in the same world, from the state that is expected: they carry its deviations into the tank. */
-const DAYS_BEFORE = 2
+/** Days lived before the first in the same world, from the state that is expected: they carry its deviations into the tank. A second one changed no more. */
+const DAYS_BEFORE = 1
 
 /** Of each day, whether each need is served in one of the possible worlds. */
-function servedIn({ days, starts, states, spread, point }: World): readonly (readonly boolean[])[] {
+function servedIn({ days, starts, expected, spread, point }: World): readonly (readonly boolean[])[] {
   const [timer = MIDDLE, inlet = MIDDLE, voltage = MIDDLE, flow = MIDDLE, volume = MIDDLE] = point
   const around = (u: number, halfWidth: number): number => 1 + triangular(u) * halfWidth
   const { cycles, period } = chainOf(
@@ -102,13 +110,19 @@ function servedIn({ days, starts, states, spread, point }: World): readonly (rea
   )
   const before = cycles[0]?.start.kind === 'periodic' ? DAYS_BEFORE : 0
   const at = (turn: number): number => (turn < 0 ? ((turn % period) + period) % period : turn)
-  let state = states[at(-before)] as TankState
+  let { state } = expected[at(-before)] as Expected
+  let stillOn = tailOf(cycles[at(-before - 1)] as Cycle, expected[at(-before - 1)]?.on ?? [])
   const served: (readonly boolean[])[] = []
   for (let turn = -before; turn < days.length; turn++) {
     const cycle = cycles[at(turn)] as Cycle
-    if (cycle.start.kind !== 'periodic') state = firstState(cycle)
-    const simulation = run(cycle, state, runsIn((days[at(turn)] as UnitDay).runs, starts[at(turn)] ?? [], timer))
+    if (cycle.start.kind !== 'periodic') {
+      state = firstState(cycle)
+      stillOn = []
+    }
+    const on = [...stillOn, ...runsIn((days[at(turn)] as UnitDay).runs, starts[at(turn)] ?? [], timer)]
+    const simulation = run(cycle, state, on)
     state = simulation.end
+    stillOn = tailOf(cycle, on)
     const minutes = servedByNeed(cycle, simulation)
     if (turn >= 0) served.push(cycle.needs.map((need, index) => servesAll(need, minutes[index] ?? 0)))
   }

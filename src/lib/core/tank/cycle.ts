@@ -14,6 +14,8 @@ export interface Cycle extends MinuteInterval {
   readonly needs: readonly ShowerNeed[]
   readonly draws: readonly MixedDraw[]
   readonly start: UnitDay['start']
+  /** Of its day, midnight to midnight. */
+  readonly lengthMin: number
 }
 
 /** The draws of a need, one a shower. */
@@ -26,20 +28,26 @@ export const drawsOf = (need: ShowerNeed): readonly MixedDraw[] =>
 export const needEndMin = (need: ShowerNeed): number => need.readyByMin + need.count * need.minutesEach + (need.count - 1) * need.gapMin
 export const minutesWanted = (need: ShowerNeed): number => need.count * need.minutesEach
 
-/** Minute at which a day's cycle ends: with its last need, or at midnight. */
-export const cycleEndMin = ({ needs }: UnitDay): number => (needs.length === 0 ? MIN_PER_DAY : Math.max(...needs.map(needEndMin)))
+const lengthOf = ({ lengthMin = MIN_PER_DAY }: UnitDay): number => lengthMin
 
-/** A day after one that ended at a minute of its own count. */
-export function cycleOf(day: UnitDay, beforeEndMin: number): Cycle {
+/** Minute at which a day's cycle ends: with its last need, or at midnight. */
+const cycleEndMin = (day: UnitDay): number => (day.needs.length === 0 ? lengthOf(day) : Math.max(...day.needs.map(needEndMin)))
+
+/** Minute of the day after at which that cycle ended. */
+export const leftOverMin = (before: UnitDay): number => cycleEndMin(before) - lengthOf(before)
+
+/** A day whose cycle begins at a minute of its own count, at or before midnight. */
+export function cycleOf(day: UnitDay, startMin: number): Cycle {
   const needs = [...day.needs].sort((one, other) => one.readyByMin - other.readyByMin)
   const tank = tankModel(day.tank, { supplyVoltageV: day.supplyVoltageV, inletC: day.inletC })
   return {
     tank,
     needs,
     draws: needs.flatMap(drawsOf),
-    startMin: beforeEndMin - MIN_PER_DAY,
+    startMin,
     endMin: cycleEndMin(day),
     start: day.start,
+    lengthMin: lengthOf(day),
   }
 }
 

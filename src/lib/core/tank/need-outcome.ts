@@ -3,39 +3,45 @@ import type { MinuteInterval } from '../time/types.ts'
 import { MIN_PER_HOUR } from '../units.ts'
 import { type Cycle, drawsOf, earliestMin, minutesWanted, needEndMin, servesAll } from './cycle.ts'
 import { LONGEST_RUN_MIN, SERVED_MARGIN_K } from './defaults.ts'
+import { cannotEver } from './cannot-ever.ts'
+import type { Week } from './kept.ts'
 import { nextBestReadyBy } from './next-best.ts'
-import type { Plan } from './plan.ts'
+import type { Plan, WeekPlans } from './plan.ts'
 import type { RunShape } from './required-run.ts'
 import { simulate } from './simulate.ts'
 import type { StartChoice } from './start-by.ts'
 import type { NeedOutcome, ShowerNeed, UnitDay } from './types.ts'
 
 interface NeedCase {
-  readonly day: UnitDay
-  readonly cycle: Cycle
+  readonly week: Week
+  readonly plans: WeekPlans
+  readonly dayIndex: number
+  /** In the order of the cycle. */
   readonly index: number
-  readonly need: ShowerNeed
-  readonly served: number
   /** Shortest sufficient run, or `null`. */
   readonly shape: RunShape | null
-  readonly plan: Plan
 }
 
-export function needOutcome({ day, cycle, index, need, served, shape, plan }: NeedCase): NeedOutcome {
+export function needOutcome({ week, plans, dayIndex, index, shape }: NeedCase): NeedOutcome {
+  const day = week.days[dayIndex] as UnitDay
+  const cycle = week.chain.cycles[dayIndex] as Cycle
+  const plan = plans.promised[dayIndex] as Plan
+  const need = cycle.needs[index] as ShowerNeed
+  const served = plan.served[index] ?? 0
   const wanted = minutesWanted(need)
   const ready = servesAll(need, served)
   const impossible = cannotEver(day, need)
-  const required = impossible || !shape ? null : Math.ceil(shape.durationMin)
+  const required = requiredMin(day, { ready, shape: impossible ? null : shape })
   const chosenRunMin = day.runs.kind === 'pressed' ? day.runs.guaranteedMin : clockedMin({ cycle, index, need, on: day.runs.onIntervals })
   const own = runOf({ day, cycle, index, need, choice: plan.choices[index] })
   const status = ready ? 'ready' : impossible || required === null ? 'impossible' : 'short'
-  // A short clocked run may be long enough and yet come at the wrong hour: it is short by at least a minute.
+  // A short run may be long enough and yet come at the wrong hour: it is short by at least a minute.
   const shortfallMin = status === 'short' && required !== null ? Math.max(1, Math.ceil(required - chosenRunMin)) : 0
   const longestMin = day.runs.kind === 'pressed' ? (day.runs.longestMin ?? day.runs.expectedMin) : 0
   return {
     need,
     status,
-    reason: reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked: day.runs.kind === 'clocked' }),
+    reason: reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked: day.runs.kind === 'clocked', hours: day.willing.length > 0 }),
     minutesWanted: wanted,
     minutesServed: ready ? wanted : served,
     requiredRunMin: required,
@@ -49,19 +55,15 @@ export function needOutcome({ day, cycle, index, need, served, shape, plan }: Ne
     },
     run: own,
     readyAtMin: ready && own ? readyAt({ cycle, need, own, plan }) : null,
-    nextBestReadyByMin:
-      status === 'short' ? nextBestReadyBy({ day, cycle, state: plan.state, need, endFraction: shape?.endFraction ?? 0 }) : [],
+    nextBestReadyByMin: status === 'short' ? nextBestReadyBy({ week, plans, dayIndex, index, endFraction: shape?.endFraction ?? 0 }) : [],
   }
 }
 
-/** Why no run whatever could serve the need, or `null`. */
-export function cannotEver({ tank }: UnitDay, need: ShowerNeed): string | null {
-  if (!tank.upperElement && !tank.lowerElement) return 'The tank has no element on record.'
-  if (tank.setPointC < need.useTemperatureC - SERVED_MARGIN_K)
-    return `The thermostat is set to ${tank.setPointC} °C, below the ${need.useTemperatureC} °C wanted.`
-  if (tank.mixingValveC !== null && tank.mixingValveC < need.useTemperatureC - SERVED_MARGIN_K)
-    return `The mixing valve is set to ${tank.mixingValveC} °C, below the ${need.useTemperatureC} °C wanted.`
-  return null
+/** A run that serves is long enough, even where only with the week's other runs so; `null` when none serves. */
+function requiredMin({ runs }: UnitDay, { ready, shape }: { readonly ready: boolean; readonly shape: RunShape | null }): number | null {
+  const enough = ready && runs.kind === 'pressed' ? runs.guaranteedMin : Infinity
+  const durationMin = Math.min(shape?.durationMin ?? Infinity, enough)
+  return durationMin === Infinity ? null : Math.ceil(durationMin)
 }
 
 interface Reason {
@@ -71,15 +73,19 @@ interface Reason {
   readonly chosenRunMin: number
   readonly shortfallMin: number
   readonly clocked: boolean
+  /** Whether it is pressed in some hours only. */
+  readonly hours: boolean
 }
 
-function reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked }: Reason): string {
+function reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked, hours }: Reason): string {
   if (status === 'ready') return ''
   if (impossible) return impossible
   if (required === null)
     return `No run of up to ${LONGEST_RUN_MIN / MIN_PER_HOUR} hours serves this: the tank is too small for it, or the need before it too near.`
   const chosen = Math.floor(chosenRunMin)
   if (clocked && chosen >= required) return `The switch is on for ${chosen} min before the need, but not at the right hours.`
+  if (chosen >= required && hours) return `A run of ${required} min would do, but not at the hours in which somebody is there to start it.`
+  if (chosen >= required) return `A run of ${required} min would do, but runs of ${chosen} min for the needs before it leave it no time.`
   return `Needs a run of ${required} min; ${clocked ? 'the switch is on for' : 'the timer can be counted on for'} ${chosen} min: ${shortfallMin} min short.`
 }
 

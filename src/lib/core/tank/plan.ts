@@ -1,8 +1,10 @@
 /** The runs of a week: what is counted on, for promises, and what is expected, for energy and temperature. */
 import type { MinuteInterval } from '../time/types.ts'
-import { type Chain, type Course, settle } from './chain.ts'
-import { type Cycle, drawsOf, earliestMin, needEndMin } from './cycle.ts'
-import { type RequiredRuns, type RunShape, runsOf } from './required-run.ts'
+import { type Course, settle } from './chain.ts'
+import { type Cycle, drawsOf, earliestMin, needEndMin, servesAll } from './cycle.ts'
+import { type Kept, keep, servedNeeds, servesEvery, type Week } from './kept.ts'
+import { type RequiredRuns, type RunShape, runsByNeed, runsOf } from './required-run.ts'
+import { countedShape, servingShape } from './serves-week.ts'
 import { simulate, type TankState } from './simulate.ts'
 import { latestStart, type StartChoice } from './start-by.ts'
 import type { UnitDay } from './types.ts'
@@ -11,7 +13,9 @@ import type { UnitDay } from './types.ts'
 export interface Plan {
   readonly state: TankState
   readonly on: readonly MinuteInterval[]
-  readonly choices: readonly (StartChoice | undefined)[]
+  readonly choices: Choices
+  /** Minutes served of each need when the whole week's runs are kept. */
+  readonly served: readonly number[]
 }
 
 export interface WeekPlans {
@@ -19,65 +23,116 @@ export interface WeekPlans {
   readonly expected: Course
 }
 
-interface WeekCase {
-  readonly days: readonly UnitDay[]
-  readonly chain: Chain
-  readonly required: RequiredRuns
+type Choices = readonly (StartChoice | undefined)[]
+interface Told {
+  /** Of each day. */
+  readonly choices: readonly Choices[]
+  readonly kept: Kept
 }
 
-/**
- * Pressed runs are promised from the coldest state that still works: the tank as the shortest sufficient run leaves it. What
- * a longer run heats after the shower is a bonus that the promise does not lean on, so skipping a day cannot break it.
- */
-export function plansOf({ days, chain, required }: WeekCase): WeekPlans {
-  const counted = settle(chain, (cycle, index) => {
-    const { runs } = days[index] as UnitDay
-    return runs.kind === 'clocked' ? runs.onIntervals : countedRuns(cycle, required, runs.guaranteedMin)
-  })
-  const promised = chain.cycles.map((cycle, index): Plan => {
-    const { runs } = days[index] as UnitDay
-    const state = counted.before[index] as TankState
-    if (runs.kind === 'clocked') return { state, on: counted.on[index] ?? [], choices: cycle.needs.map(() => undefined) }
-    const choices = chooseStarts({ cycle, state, durationMin: runs.guaranteedMin })
-    return { state, on: pressed(choices, runs.guaranteedMin), choices }
-  })
+export function plansOf(week: Week, required: RequiredRuns): WeekPlans {
+  const { days, chain } = week
+  const told = tell(week, required)
+  const { before, on } = told.kept.course
+  const promised = chain.cycles.map((_, day): Plan => ({
+    state: before[day] as TankState,
+    on: on[day] ?? [],
+    choices: told.choices[day] ?? [],
+    served: told.kept.served[day] ?? [],
+  }))
   const expected = settle(
     chain,
     (_, index) => {
       const { runs } = days[index] as UnitDay
-      return runs.kind === 'clocked' ? runs.onIntervals : pressed(promised[index]?.choices ?? [], runs.expectedMin)
+      return runs.kind === 'clocked' ? runs.onIntervals : pressed(told.choices[index] ?? [], runs.expectedMin)
     },
-    counted.before[0],
+    before[0],
   )
   return { promised, expected }
 }
 
-/** The runs that leave the promised state: the longest of the required ones, or the run that can be counted on if that is less. */
-function countedRuns(cycle: Cycle, required: RequiredRuns, guaranteedMin: number): readonly MinuteInterval[] {
+/** How often starts are chosen anew from the tank that the last choice left. */
+const MOST_CHOICES = 3
+
+/**
+ * Pressed runs are chosen for the coldest state that still works: the tank as the shortest sufficient run leaves it. What a longer
+ * run heats after the shower is a bonus that a start does not lean on, so skipping a day seldom breaks it. What is then promised
+ * is what those very starts serve when they are kept all week; where that is not all, other starts are tried.
+ */
+function tell(week: Week, required: RequiredRuns): Told {
+  const first = chosenFrom(week, sufficient(week, required))
+  if (servesEvery(week, first.kept) || week.days.every(({ runs }) => runs.kind === 'clocked')) return first
+  const shape = servingShape(week, first.kept.course.before[0])
+  if (shape) return { choices: shapedChoices(week, shape.endFraction), kept: shape.kept }
+  let best = first
+  for (let again = 1; again < MOST_CHOICES && breaksItsWord(week, best); again++) {
+    const other = chosenFrom(week, best.kept.course.before)
+    if (servedNeeds(week, other.kept) <= servedNeeds(week, best.kept)) break
+    best = other
+  }
+  return best
+}
+
+/** State at each cycle's start as the longest of the required runs leaves it, or the run that can be counted on if that is less. */
+function sufficient({ days, chain }: Week, required: RequiredRuns): readonly TankState[] {
+  return settle(chain, (cycle, index) => {
+    const { runs } = days[index] as UnitDay
+    return runs.kind === 'clocked' ? runs.onIntervals : runsOf(cycle, longestRequired(required, runs.guaranteedMin))
+  }).before
+}
+
+function longestRequired(required: RequiredRuns, guaranteedMin: number): RunShape {
   let longest: RunShape = { durationMin: 0, endFraction: 0 }
   for (const shape of required.flat()) {
     const { durationMin, endFraction } = shape ?? { durationMin: guaranteedMin, endFraction: 0 }
     if (durationMin > longest.durationMin) longest = { durationMin, endFraction }
   }
-  return runsOf(cycle, { ...longest, durationMin: Math.min(guaranteedMin, longest.durationMin) })
+  return { ...longest, durationMin: Math.min(guaranteedMin, longest.durationMin) }
 }
 
-const pressed = (choices: readonly (StartChoice | undefined)[], durationMin: number): readonly MinuteInterval[] =>
+function chosenFrom(week: Week, states: readonly TankState[]): Told {
+  const durationMin = (index: number): number => countedShape(week.days[index] as UnitDay, 0).durationMin
+  const choices = week.chain.cycles.map((cycle, index) => {
+    if (week.days[index]?.runs.kind === 'clocked') return cycle.needs.map(() => undefined)
+    const { willing } = week.days[index] as UnitDay
+    return chooseStarts({ cycle, state: states[index] as TankState, durationMin: durationMin(index), willing })
+  })
+  return { choices, kept: keep(week, (_, index) => pressed(choices[index] ?? [], durationMin(index)), states[0]) }
+}
+
+/** Whether a start was chosen that serves its need, and does not in the week as those starts leave it. */
+const breaksItsWord = ({ chain }: Week, { choices, kept }: Told): boolean =>
+  choices.some((day, index) =>
+    day.some((choice, at) => choice?.serves && !servesAll(chain.cycles[index]!.needs[at]!, kept.served[index]?.[at] ?? 0)),
+  )
+
+/** The starts of runs that are shaped alike; how much earlier each may be is not known. */
+const shapedChoices = ({ days, chain }: Week, endFraction: number): readonly Choices[] =>
+  chain.cycles.map((cycle, index) =>
+    runsByNeed(cycle, countedShape(days[index] as UnitDay, endFraction)).map(
+      (own, at) => own && { startMin: own.startMin, servedMin: servedWhole(cycle, at), serves: true, earliestStartMin: () => own.startMin },
+    ),
+  )
+
+const servedWhole = (cycle: Cycle, at: number): number => (cycle.needs[at]?.count ?? 0) * (cycle.needs[at]?.minutesEach ?? 0)
+
+const pressed = (choices: Choices, durationMin: number): readonly MinuteInterval[] =>
   choices.flatMap((choice) => (choice ? [{ startMin: choice.startMin, endMin: choice.startMin + durationMin }] : []))
 
 interface Starts {
   readonly cycle: Cycle
   readonly state: TankState
   readonly durationMin: number
+  readonly willing: readonly MinuteInterval[]
 }
 
-/** The latest start of each need in turn, each from the state that the one before leaves; `undefined` when a run still on covers it. */
-function chooseStarts({ cycle, state: first, durationMin }: Starts): readonly (StartChoice | undefined)[] {
+/** The latest start of each need in turn, each from the state that the one before leaves; `undefined` when a run still on covers it, or nobody presses. */
+function chooseStarts({ cycle, state: first, durationMin, willing }: Starts): Choices {
   let state = first
   let earlier: readonly MinuteInterval[] = []
   return cycle.needs.map((need, index) => {
     const covered = earlier.some((on) => on.endMin >= needEndMin(need))
-    const choice = covered ? undefined : latestStart({ cycle, index, state, durationMin, earlier })
+    const choice = covered ? undefined : latestStart({ cycle, index, state, durationMin, earlier, willing })
     const on = choice ? [...earlier, ...pressed([choice], durationMin)] : earlier
     if (index < cycle.needs.length - 1) {
       state = simulate(cycle.tank, state, { startMin: earliestMin(cycle, index), endMin: needEndMin(need), on, draws: drawsOf(need) }).end

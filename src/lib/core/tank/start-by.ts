@@ -3,6 +3,7 @@
  * on during the shower; and how much earlier the same run may be started. Inside that window no start serves less.
  */
 import type { MinuteInterval } from '../time/types.ts'
+import { MIN_PER_DAY } from '../units.ts'
 import { type Cycle, drawsOf, earliestMin, needEndMin, servesAll } from './cycle.ts'
 import { WINDOW_LENGTH_MIN } from './defaults.ts'
 import { END_FRACTIONS, endOfRun } from './required-run.ts'
@@ -26,12 +27,15 @@ interface Before {
   readonly durationMin: number
   /** Runs pressed before that may still be on: yesterday's last, or the one for the need before. */
   readonly earlier: readonly MinuteInterval[]
+  /** Hours in which a person presses, the same every day; at any hour if empty. */
+  readonly willing: readonly MinuteInterval[]
 }
 
 /** A shower short by less than a second is not short. */
 const SAME_SERVED_MIN = 1 / 60
 
-export function latestStart({ cycle, index, state, durationMin, earlier }: Before): StartChoice {
+/** `undefined` when nobody presses between the need before and the end of this one. */
+export function latestStart({ cycle, index, state, durationMin, earlier, willing }: Before): StartChoice | undefined {
   const need = cycle.needs[index] as ShowerNeed
   const from = earliestMin(cycle, index)
   const firstStart = Math.max(from, ...earlier.map((on) => on.endMin))
@@ -48,9 +52,50 @@ export function latestStart({ cycle, index, state, durationMin, earlier }: Befor
     return minutes
   }
   const outlastsMin = Math.ceil(needEndMin(need) - durationMin)
-  const chosen = steady(choose({ need, firstStart, durationMin, served }), { firstStart, outlastsMin, served })
-  return { ...chosen, earliestStartMin: () => earliest(chosen, { firstStart, outlastsMin, served }) }
+  const best = steady(choose({ need, firstStart, durationMin, served }), { firstStart, outlastsMin, served })
+  const hours = hoursAround(best.startMin, { willing, firstStart, lastStart: Math.ceil(needEndMin(need)) - 1 })
+  if (!hours) return undefined
+  const chosen = hours.startMin === best.startMin ? best : chosenAt(need, hours.startMin, served)
+  return { ...chosen, earliestStartMin: () => earliest(chosen, { firstStart: Math.max(firstStart, hours.fromMin), outlastsMin, served }) }
 }
+
+const chosenAt = (need: ShowerNeed, startMin: number, served: Search['served']): Chosen => {
+  const servedMin = served(startMin)
+  return { startMin, servedMin, serves: servesAll(need, servedMin) }
+}
+
+interface Hours {
+  readonly willing: readonly MinuteInterval[]
+  readonly firstStart: number
+  readonly lastStart: number
+}
+
+/** The last minute at or before a start at which a person presses, or failing that the first after it, and from when on they do. */
+function hoursAround(
+  bestMin: number,
+  { willing, firstStart, lastStart }: Hours,
+): { readonly startMin: number; readonly fromMin: number } | null {
+  if (willing.length === 0) return { startMin: bestMin, fromMin: -Infinity }
+  const spans = [-MIN_PER_DAY, 0, MIN_PER_DAY].flatMap((by) =>
+    willing.map(({ startMin, endMin }) => ({
+      fromMin: Math.max(firstStart, startMin + by),
+      lastMin: Math.min(lastStart, endMin + by - 1),
+    })),
+  )
+  const open = spans.filter(({ fromMin, lastMin }) => fromMin <= lastMin)
+  const before = open
+    .filter(({ fromMin }) => fromMin <= bestMin)
+    .map((span) => ({ fromMin: span.fromMin, startMin: Math.min(bestMin, span.lastMin) }))
+  const after = open.filter(({ fromMin }) => fromMin > bestMin).map(({ fromMin }) => ({ fromMin, startMin: Math.ceil(fromMin) }))
+  const nearest =
+    before.sort((one, other) => other.startMin - one.startMin)[0] ?? after.sort((one, other) => one.startMin - other.startMin)[0]
+  return nearest ?? null
+}
+
+/** Whether a person presses at a minute of the day or of the days next to it. */
+export const isWilling = (willing: readonly MinuteInterval[], startMin: number): boolean =>
+  willing.length === 0 ||
+  [-MIN_PER_DAY, 0, MIN_PER_DAY].some((by) => willing.some((hours) => hours.startMin + by <= startMin && startMin < hours.endMin + by))
 
 interface Search {
   readonly need: ShowerNeed

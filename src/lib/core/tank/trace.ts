@@ -28,9 +28,11 @@ export function sampled(cycle: Cycle, state: TankState, on: readonly MinuteInter
  */
 export function traceOf(cycles: readonly Sampled[], day: number): Readiness['trace'] {
   const found: (TankState | undefined)[] = Array.from({ length: SAMPLES })
+  let laterBy = 0
   for (let later = 0; later <= Math.min(2, cycles.length); later++) {
-    const { states } = cycles[(day + later) % cycles.length] as Sampled
-    for (const { slot, state } of states) if (inDay(slot + later * SAMPLES)) found[slot + later * SAMPLES] ??= state
+    const { states, cycle } = cycles[(day + later) % cycles.length] as Sampled
+    for (const { slot, state } of states) if (inDay(slot + laterBy)) found[slot + laterBy] ??= state
+    laterBy += cycle.lengthMin / SAMPLE_MIN
   }
   const { tank } = (cycles[day] as Sampled).cycle
   const { inletC, setPointC } = tank

@@ -63,6 +63,8 @@ export interface UnitDay {
   readonly needs: readonly ShowerNeed[]
   /** Hours in which a tenant is willing to press; whole day if empty. */
   readonly willing: readonly MinuteInterval[]
+  /** Minutes from this local midnight to the next: 1,380 or 1,500 where the clock changes; 1,440 if left out. */
+  readonly lengthMin?: number
   /** Where the day starts from: what the days before it leave, a cold tank, or given node temperatures. */
   readonly start: { readonly kind: 'periodic' } | { readonly kind: 'cold' } | { readonly kind: 'nodes'; readonly nodesC: readonly number[] }
 }

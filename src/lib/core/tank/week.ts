@@ -4,7 +4,6 @@
  */
 import { kwhFromJ } from '../units.ts'
 import { chainOf } from './chain.ts'
-import { run, servedByNeed } from './cycle.ts'
 import { needOutcome } from './need-outcome.ts'
 import { plansOf } from './plan.ts'
 import { requiredRuns } from './required-run.ts'
@@ -18,13 +17,13 @@ import type { NeedOutcome, Readiness, UnitDay } from './types.ts'
 export function assessWeek(days: readonly UnitDay[]): readonly Readiness[] {
   const chain = chainOf(days)
   const required = requiredRuns(days, chain)
-  const { promised, expected } = plansOf({ days, chain, required })
+  const plans = plansOf({ days, chain }, required)
+  const { expected } = plans
   const curves = chain.cycles.map((cycle, index) => sampled(cycle, expected.before[index]!, expected.on[index]!))
-  return days.map((day, index) => {
-    const [cycle, plan, simulation] = [chain.cycles[index]!, promised[index]!, expected.simulations[index]!]
-    const served = servedByNeed(cycle, run(cycle, plan.state, plan.on))
-    const needs = cycle.needs.map((need, at) =>
-      needOutcome({ day, cycle, index: at, need, served: served[at] ?? 0, shape: required[index]?.[at] ?? null, plan }),
+  return days.map((_, index) => {
+    const [cycle, simulation] = [chain.cycles[index]!, expected.simulations[index]!]
+    const needs = cycle.needs.map((__, at) =>
+      needOutcome({ week: { days, chain }, plans, dayIndex: index, index: at, shape: required[index]?.[at] ?? null }),
     )
     return {
       status: statusOf(needs),
