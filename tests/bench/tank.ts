@@ -78,7 +78,12 @@ function weekFigures() {
     atMs.push(coreMs())
     chancesOf({ days, readiness: week, seed: unit })
     atMs.push(coreMs())
-    seasonOutlook({ days, otherClock: null, climate: { kind: 'climate', meanAirC: 10, swingAirK: 25, hemisphere: 'north' }, fromDay: '2026-07-01' })
+    seasonOutlook({
+      days,
+      otherClock: null,
+      climate: { kind: 'climate', meanAirC: 10, swingAirK: 25, hemisphere: 'north' },
+      fromDay: '2026-07-01',
+    })
     atMs.push(coreMs())
     parts.week.push(atMs[1]! - atMs[0]!)
     parts.chance.push(atMs[2]! - atMs[1]!)

@@ -37,7 +37,10 @@ describe('runDuration', () => {
   })
   it('does not take two readings that happen to agree for certainty, and trusts more of them more', () => {
     const widths = [1, 2, 3, 6].map((count) => {
-      const { minMin, maxMin } = runDuration(TIMER, Array.from({ length: count }, () => ({ durationMin: 60, measuredAtMs: 0 }))).guaranteed
+      const { minMin, maxMin } = runDuration(
+        TIMER,
+        Array.from({ length: count }, () => ({ durationMin: 60, measuredAtMs: 0 })),
+      ).guaranteed
       return (maxMin ?? Infinity) - minMin
     })
     widths.forEach((width, index) => expect(width).toBeLessThan(widths[index - 1] ?? Infinity))

@@ -41,7 +41,15 @@ export function needOutcome({ week, plans, dayIndex, index, shape }: NeedCase): 
   return {
     need,
     status,
-    reason: reasonOf({ status, impossible, required, chosenRunMin, shortfallMin, clocked: day.runs.kind === 'clocked', hours: day.willing.length > 0 }),
+    reason: reasonOf({
+      status,
+      impossible,
+      required,
+      chosenRunMin,
+      shortfallMin,
+      clocked: day.runs.kind === 'clocked',
+      hours: day.willing.length > 0,
+    }),
     minutesWanted: wanted,
     minutesServed: ready ? wanted : served,
     requiredRunMin: required,
