@@ -16,7 +16,7 @@ const SLOT_MIN = 5
 const SLOTS = 288
 const at = (hour: number) => Math.round((hour * 60) / SLOT_MIN)
 /** Room for runs as a multiple of what the busiest four hours of the morning would load if spread evenly over them. */
-const ROOM = { slack: 3, tight: 1.12, 'over-full': 0.75 } as const
+const ROOM = { slack: 3, tight: 1.12, 'over-full': 0.55 } as const
 
 export function familyProblem({ units, service, periods, demand }: Member, seed: number): PlanProblem {
   const random = seededRandom(seed * 7_919 + units)

@@ -1,5 +1,5 @@
 /** Who can be served: everybody if there is a way, otherwise as many as the search finds, and how many no plan can serve. */
-import { ascend, beginAscent } from './ascend.ts'
+import { advance, openBalance } from './balance.ts'
 import { alike, cheapestChoice, unitBlocks, type Block } from './blocks.ts'
 import { copyLoads, fits, noLoads, place, takeOff, type Loads } from './loads.ts'
 import type { Model } from './model.ts'
@@ -27,9 +27,10 @@ export function chooseServed(model: Model, random: () => number, effort: number)
   if (everyBlockPlaced(search) && repair(search, 40)) return { isIn, blocks, loads: search.loads, unservedAtLeast: impossible, excluded }
 
   const question: Question = { blocks: alike(model, blocks), costShare: 0, skipCost: 1 }
-  const ascent = ascend(model, question, beginAscent(model, question), { rounds: Math.ceil(250 * effort), target: blocks.length / 10, enoughFraction: 0 })
-  serveMore(search, serveCheapestFirst(search, ascent.prices))
-  const bound = Math.max(0, Math.ceil(ascent.bound - 1e-6))
+  const balance = openBalance({ model, blocks, question, loads: noLoads(model), random })
+  for (let phase = 0; phase < 25 * effort; phase++) advance(balance)
+  serveMore(search, serveCheapestFirst(search, balance.best.prices))
+  const bound = Math.max(0, Math.ceil(balance.best.bound - 1e-6))
   const served = unitBlocks(model, (need) => isIn[need] === 1)
   return { isIn, blocks: served, loads: search.loads, unservedAtLeast: impossible + bound, excluded }
 }

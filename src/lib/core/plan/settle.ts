@@ -1,14 +1,13 @@
 /**
- * The cheapest starts for needs that are known to fit together, and the bound that no such starts beat. Prices from the
- * ascent say where load is dear; starts are laid out by them, repaired, and polished at the charges' true maxima.
+ * The cheapest starts for needs that are known to fit together, and the bound that no such starts beat. Starts and
+ * prices are balanced; what that leaves over a limit is repaired, and the best is polished at the charges' true maxima.
  */
-import { ascend, beginAscent, fitsUnpriced, type Ascent } from './ascend.ts'
+import { advance, openBalance } from './balance.ts'
 import { alike, type Block } from './blocks.ts'
 import { copyLoads, noLoads, totalCost, type Loads } from './loads.ts'
 import type { Model } from './model.ts'
-import { sumPrices, type Question } from './prices.ts'
+import { answer, priceCount, type Question } from './prices.ts'
 import { beginSearch, forgetPenalties, peaks, reinsert, repair, sweep, type Search } from './search.ts'
-import { shuffle } from './random.ts'
 
 export interface Settling {
   readonly model: Model
@@ -29,30 +28,33 @@ export interface Settled {
 
 /** Slots looked at by the search for each unit of effort: about a third of a second. */
 const STEPS = 60_000_000
-const ASCENT_ROUNDS = [30, 40, 60, 80, 100, 150, 200, 250]
+const PHASES = 32
+/** The bound has settled when a phase adds less than this share of it. */
+const STILL = 2e-6
 const KEEP = { sums: null, mayPass: false } as const
 
 export function settle(settling: Settling): Settled {
   const { model, blocks, isIn, random, targetGapFraction, effort } = settling
   const question: Question = { blocks: alike(model, blocks), costShare: 1, skipCost: Infinity }
-  let ascent = beginAscent(model, question)
   const search = beginSearch({ model, blocks, isIn, loads: noLoads(model), random, mostSteps: STEPS * effort })
-  if (fitsUnpriced(ascent)) {
+  const unpriced = answer(model, question, new Float64Array(priceCount(model, question)))
+  if (unpriced.excess.every((excess) => excess <= 1e-9)) {
     for (const block of blocks) reinsert(search, block, KEEP)
-    return { loads: search.loads, cost: totalCost(model, search.loads), bound: ascent.bound }
+    return { loads: search.loads, cost: totalCost(model, search.loads), bound: unpriced.bound }
   }
+  const balance = openBalance({ model, blocks, question, loads: settling.loads, random })
   search.loads = copyLoads(settling.loads)
   let best = improved(search)
-  const near = () => best.cost - ascent.bound <= targetGapFraction * Math.abs(best.cost)
-  for (const rounds of ASCENT_ROUNDS) {
-    ascent = ascend(model, question, ascent, { rounds: Math.ceil(rounds * effort), target: best.cost, enoughFraction: targetGapFraction / 2 })
-    if (near()) break
-    best = cheaper(best, layOut(search, ascent))
-    if (near()) break
-    best = cheaper(best, polish(search, best))
-    if (near() || search.steps >= search.mostSteps) break
+  const near = () => best.cost - balance.best.bound <= targetGapFraction * Math.abs(best.cost)
+  for (let phase = 0; phase < PHASES * effort && search.steps < search.mostSteps && !near(); phase++) {
+    const before = balance.best.bound
+    advance(balance)
+    if (phase < 3) continue
+    best = cheaper(best, finished(search, balance.loads))
+    if (phase > 12 && balance.best.bound - before < STILL * Math.abs(before)) break
   }
-  return { ...best, bound: Math.min(ascent.bound, best.cost) }
+  if (!near()) best = polish(search, best)
+  return { ...best, bound: Math.min(balance.best.bound, best.cost) }
 }
 
 interface Found {
@@ -76,41 +78,12 @@ function improved(search: Search): Found {
   return { loads: copyLoads(search.loads), cost: totalCost(model, search.loads) }
 }
 
-/** Lays everything out anew by the prices, at the lowest maxima that can be reached from what the fractional plan has. */
-function layOut(search: Search, ascent: Ascent): Found | null {
-  const { model } = search
-  const sums = sumPrices(model, ascent.prices)
-  const estimate = Float64Array.from(model.terms, ({ floorW, firstWindow, windowCount }) => {
-    let over = 0
-    for (let window = firstWindow; window < firstWindow + windowCount; window++) over = Math.max(over, ascent.excess[model.roomW.length + window]!)
-    return floorW + over
-  })
-  let best: Found | null = null
-  let low = 1
-  let high = Infinity
-  let factor = 1.01
-  const order = bySize(search)
-  for (let attempt = 0; attempt < 6 && search.steps < search.mostSteps; attempt++) {
-    model.terms.forEach(({ floorW }, term) => (search.targetW[term] = floorW + (estimate[term]! - floorW) * factor))
-    forgetPenalties(search)
-    search.loads = noLoads(model)
-    for (const block of order) reinsert(search, block, { sums, mayPass: true })
-    if (repair(search, 25)) {
-      best = cheaper(improved(search), best)
-      high = factor
-    } else low = factor
-    if (model.terms.length === 0) break
-    if (high - low < 0.003) break
-    factor = high < Infinity ? (low + high) / 2 : 1 + (factor - 1) * 2.5
-  }
-  return best
-}
-
-/** Long and strong ones first: they are the hardest to fit later. */
-function bySize({ model, blocks, random }: Search): Block[] {
-  const size = (block: Block) => block.needs.flat().reduce((sum, run) => sum + model.runs[run]!.powerW * model.runs[run]!.worst, 0)
-  const sized = shuffle([...blocks], random).map((block) => ({ block, size: size(block) }))
-  return sized.sort((one, other) => other.size - one.size).map(({ block }) => block)
+/** Repairs starts that pass limits, without raising any maximum, and lets them improve; `null` when they cannot be repaired. */
+function finished(search: Search, loads: Loads): Found | null {
+  search.loads = copyLoads(loads)
+  search.targetW.set(peaks(search.model, loads.windowW))
+  forgetPenalties(search)
+  return repair(search, 12) ? improved(search) : null
 }
 
 /** Shaves each maximum a little, or lets it rise a little, as long as that pays. */
