@@ -16,7 +16,7 @@ const SLOT_MIN = 5
 const SLOTS = 288
 const at = (hour: number) => Math.round((hour * 60) / SLOT_MIN)
 /** Room for runs as a multiple of what the busiest four hours of the morning would load if spread evenly over them. */
-const ROOM = { slack: 3, tight: 1.12, 'over-full': 0.55 } as const
+const ROOM = { slack: 3, tight: 1.12, 'over-full': 0.4 } as const
 
 export function familyProblem({ units, service, periods, demand }: Member, seed: number): PlanProblem {
   const random = seededRandom(seed * 7_919 + units)
@@ -60,7 +60,7 @@ export function familyProblem({ units, service, periods, demand }: Member, seed:
   })
   const morning = needs.flatMap(({ runs }) => runs).filter(({ readyBySlot }) => readyBySlot < at(12))
   const evenKw = morning.reduce((sum, { powerKw, worstSlots }) => sum + powerKw * worstSlots, 0) / at(4)
-  const limitKw = Math.round(Math.max(...baseKw.slice(at(4), at(9))) + Math.max(6, ROOM[service] * evenKw))
+  const limitKw = Math.round(Math.max(...baseKw.slice(at(4), at(9))) + Math.max(8, ROOM[service] * evenKw))
   const price = { flat: () => 15, 'two-period': twoPeriods, 'three-period': threePeriods }[periods]
   return {
     slotMin: SLOT_MIN,

@@ -37,7 +37,8 @@ export function unitBlocks(model: Model, isIn: (need: number) => boolean): Block
   return blocks
 }
 
-function asBlock(model: Model, needs: readonly (readonly number[])[]): Block {
+/** Needs of one unit as a block, whether their times touch or not. */
+export function asBlock(model: Model, needs: readonly (readonly number[])[]): Block {
   const runs = needs.flat().map((run) => model.runs[run]!)
   const from = Math.min(...runs.map((run) => run.starts[0]!))
   const to = Math.max(...runs.map((run) => run.starts.at(-1)! + run.worst))

@@ -1,9 +1,10 @@
 /** Who can be served: everybody if there is a way, otherwise as many as the search finds, and how many no plan can serve. */
 import { advance, openBalance } from './balance.ts'
-import { alike, cheapestChoice, unitBlocks, type Block } from './blocks.ts'
-import { copyLoads, fits, noLoads, place, takeOff, type Loads } from './loads.ts'
+import { alike, unitBlocks, type Block } from './blocks.ts'
+import { excludedNeeds, type Excluded } from './excluded.ts'
+import { copyLoads, fits, noLoads, place, type Loads } from './loads.ts'
 import type { Model } from './model.ts'
-import { loadPrice, sumPrices, type Question } from './prices.ts'
+import { loadPrice, sumPrices, type PriceSums, type Question } from './prices.ts'
 import { shuffle } from './random.ts'
 import { beginSearch, forgetPenalties, reinsert, repair, type Search } from './search.ts'
 
@@ -12,107 +13,107 @@ export interface Service {
   readonly blocks: readonly Block[]
   readonly loads: Loads
   readonly unservedAtLeast: number
-  /** Needs that no plan at all can serve, or whose pin cannot be kept. */
-  readonly excluded: ReadonlyMap<number, 'no-allowed-start' | 'pin-not-allowed' | 'pin-over-limit' | 'too-large-alone'>
+  readonly excluded: Excluded
 }
 
+/** Slots looked at for each unit of effort: about a quarter of a second. */
 const STEPS = 40_000_000
+const PHASES = 24
+const PASS = { sums: null, mayPass: true } as const
 
 export function chooseServed(model: Model, random: () => number, effort: number): Service {
   const excluded = excludedNeeds(model)
   const isIn = Uint8Array.from(model.runsOfNeed, (_, need) => (excluded.has(need) ? 0 : 1))
   const blocks = unitBlocks(model, (need) => isIn[need] === 1)
   const search = beginSearch({ model, blocks, isIn, loads: noLoads(model), random, mostSteps: STEPS * effort })
+  // A pin that clashes with other pins could be served by a plan that drops those: it does not count here.
   const impossible = [...excluded.values()].filter((reason) => reason === 'no-allowed-start' || reason === 'too-large-alone').length
-  if (everyBlockPlaced(search) && repair(search, 40)) return { isIn, blocks, loads: search.loads, unservedAtLeast: impossible, excluded }
+  const everybody = (): Service => ({ isIn, blocks, loads: search.loads, unservedAtLeast: impossible, excluded })
+  const bySize = [...blocks].sort((one, other) => sizeOf(model, other.needs.flat()) - sizeOf(model, one.needs.flat()))
+  if (bySize.every((block) => reinsert(search, block, PASS)) && repair(search, 20)) return everybody()
 
   const question: Question = { blocks: alike(model, blocks), costShare: 0, skipCost: 1 }
   const balance = openBalance({ model, blocks, question, loads: noLoads(model), random })
-  for (let phase = 0; phase < 25 * effort; phase++) advance(balance)
-  serveMore(search, serveCheapestFirst(search, balance.best.prices))
-  const bound = Math.max(0, Math.ceil(balance.best.bound - 1e-6))
-  const served = unitBlocks(model, (need) => isIn[need] === 1)
-  return { isIn, blocks: served, loads: search.loads, unservedAtLeast: impossible + bound, excluded }
+  for (let phase = 0; phase < PHASES * effort; phase++) {
+    advance(balance)
+    if (balance.best.bound > 1e-6 || phase % 4 !== 3) continue
+    // Nothing is proven yet against serving everybody: put in who was left out, and try.
+    search.loads = copyLoads(balance.loads)
+    forgetPenalties(search)
+    if (blocks.every((block) => isPlaced(search, block) || reinsert(search, block, PASS)) && repair(search, 60)) return everybody()
+  }
+  serveMany(search, balance.loads, sumPrices(model, balance.best.prices))
+  return {
+    isIn,
+    blocks: unitBlocks(model, (need) => isIn[need] === 1),
+    loads: search.loads,
+    unservedAtLeast: impossible + Math.max(0, Math.ceil(balance.best.bound - 1e-6)),
+    excluded,
+  }
 }
 
-function excludedNeeds(model: Model): Map<number, 'no-allowed-start' | 'pin-not-allowed' | 'pin-over-limit' | 'too-large-alone'> {
-  const excluded: ReturnType<typeof excludedNeeds> = new Map()
-  const empty = noLoads(model)
-  const pins = noLoads(model)
-  model.runsOfNeed.forEach((runs, need) => {
-    const pinned = runs.some((run) => model.runs[run]!.pinned)
-    const block = runs.every((run) => model.runs[run]!.starts.length > 0) ? unitBlocks(model, (other) => other === need)[0] : undefined
-    const way = (loads: Loads | null) =>
-      block !== undefined &&
-      cheapestChoice(model, block, (run, at) => (loads && !fits(model, loads, model.runs[run]!, model.runs[run]!.starts[at]!) ? Infinity : 0), Infinity).chosen.every(
-        (candidate) => candidate >= 0,
-      )
-    if (!way(null)) excluded.set(need, pinned ? 'pin-not-allowed' : 'no-allowed-start')
-    else if (!way(empty)) excluded.set(need, 'too-large-alone')
-  })
-  return keepPins(model, pins, excluded)
-}
+const sizeOf = (model: Model, runs: readonly number[]): number =>
+  runs.reduce((sum, run) => sum + model.runs[run]!.powerW * model.runs[run]!.worst, 0)
 
-/** Pinned runs come first, in their order; one that does not fit beside those before it is out. */
-function keepPins(model: Model, pins: Loads, excluded: ReturnType<typeof excludedNeeds>): typeof excluded {
-  model.runsOfNeed.forEach((runs, need) => {
-    const pinned = runs.map((run) => model.runs[run]!).filter((run) => run.pinned)
-    if (pinned.length === 0 || excluded.has(need)) return
-    const placed: typeof pinned = []
-    for (const run of pinned) {
-      if (!fits(model, pins, run, run.starts[0]!)) break
-      place(model, pins, run, 0)
-      placed.push(run)
-    }
-    if (placed.length === pinned.length && !overlapsInUnit(model, pins, need)) return
-    for (const run of placed) takeOff(model, pins, run)
-    excluded.set(need, placed.length === pinned.length ? 'pin-not-allowed' : 'pin-over-limit')
-  })
-  return excluded
-}
+const isPlaced = ({ loads }: Search, block: Block): boolean => block.needs.every((need) => need.every((run) => loads.chosen[run]! >= 0))
 
-/** Whether the placed runs of the need's unit overlap or stand in another order than theirs. */
-function overlapsInUnit(model: Model, loads: Loads, need: number): boolean {
-  let over = 0
-  for (const other of model.needsOfUnit[model.unitOfNeed[need]!]!)
-    for (const index of model.runsOfNeed[other]!) {
-      const candidate = loads.chosen[index]!
-      if (candidate < 0) continue
-      const run = model.runs[index]!
-      if (run.starts[candidate]! < over) return true
-      over = run.starts[candidate]! + run.worst
-    }
-  return false
-}
-
-function everyBlockPlaced(search: Search): boolean {
-  const bySize = [...search.blocks].sort((one, other) => watts(search.model, other) - watts(search.model, one))
-  return bySize.every((block) => reinsert(search, block, { sums: null, mayPass: true }))
-}
-
-const watts = (model: Model, block: Block): number => block.needs.flat().reduce((sum, run) => sum + model.runs[run]!.powerW * model.runs[run]!.worst, 0)
-
-/** Those first that ask least of what is scarce; pinned ones before all. */
-function serveCheapestFirst(search: Search, prices: Float64Array): number[] {
+/** Two ways to fill up, the better of them filled further. */
+function serveMany(search: Search, balanced: Loads, sums: PriceSums): void {
   const { model, isIn } = search
-  const sums = sumPrices(model, prices)
-  const asked = model.runsOfNeed.map((runs, need) => ({
-    need,
-    pinned: runs.some((run) => model.runs[run]!.pinned),
-    price: runs.reduce((sum, run) => sum + [...model.runs[run]!.starts].reduce((least, slot) => Math.min(least, loadPrice(model, sums, run, slot)), Infinity), 0),
-    size: runs.reduce((sum, run) => sum + model.runs[run]!.powerW * model.runs[run]!.worst, 0),
-  }))
-  asked.sort((one, other) => Number(other.pinned) - Number(one.pinned) || one.price - other.price || one.size - other.size)
-  const wanted = isIn.slice()
-  isIn.fill(0)
+  const wanted = [...isIn.keys()].filter((need) => isIn[need] === 1)
+  const isPinned = (need: number) => model.runsOfNeed[need]!.some((run) => model.runs[run]!.pinned)
+  const cheapest = (run: number) => model.runs[run]!.starts.reduce((least, slot) => Math.min(least, loadPrice(model, sums, run, slot)), Infinity)
+  const asked = wanted.map((need) => {
+    const runs = model.runsOfNeed[need]!
+    const price = runs.reduce((sum, run) => sum + cheapest(run), 0)
+    return { need, price, pinned: Number(isPinned(need)), in: Number(runs.every((run) => balanced.chosen[run]! >= 0)), size: sizeOf(model, runs) }
+  })
+  asked.sort((one, other) => other.pinned - one.pinned || one.price - other.price || one.size - other.size)
+  const first = fill(
+    search,
+    asked.map(({ need }) => need),
+    null,
+    sums,
+  )
+  const firstIn = isIn.slice()
+  const firstLoads = search.loads
+  asked.sort((one, other) => other.pinned - one.pinned || other.in - one.in || one.price - other.price || one.size - other.size)
+  const second = fill(
+    search,
+    asked.map(({ need }) => need),
+    balanced,
+    sums,
+  )
+  if (first.length < second.length) {
+    isIn.set(firstIn)
+    search.loads = firstLoads
+  }
+  serveMore(search, first.length < second.length ? first : second)
+}
+
+/** Serves one need after the other, where a balanced plan has it if that fits, else at the price of what is scarce; returns who is left. */
+function fill(search: Search, order: readonly number[], balanced: Loads | null, sums: PriceSums): number[] {
+  const { model, isIn } = search
+  for (const need of order) isIn[need] = 0
   search.loads = noLoads(model)
   const blockOf = blocksByNeed(search)
-  for (const { need } of asked) {
-    if (wanted[need] === 0) continue
+  return order.filter((need) => {
     isIn[need] = 1
-    if (!reinsert(search, blockOf.get(need)!, { sums, mayPass: false })) isIn[need] = 0
-  }
-  return [...wanted.keys()].filter((need) => wanted[need] === 1 && isIn[need] === 0)
+    if (balanced && placeAsIn(search, need, balanced)) return false
+    if (reinsert(search, blockOf.get(need)!, { sums, mayPass: false })) return false
+    isIn[need] = 0
+    return true
+  })
+}
+
+function placeAsIn({ model, loads }: Search, need: number, balanced: Loads): boolean {
+  const runs = model.runsOfNeed[need]!.map((run) => model.runs[run]!)
+  const free = runs.every((run) => {
+    const candidate = balanced.chosen[run.index]!
+    return candidate >= 0 && fits(model, loads, run, run.starts[candidate]!)
+  })
+  if (free) for (const run of runs) place(model, loads, run, balanced.chosen[run.index]!)
+  return free
 }
 
 function blocksByNeed(search: Search): Map<number, Block> {
@@ -130,7 +131,7 @@ function serveMore(search: Search, left: number[]): void {
       const before = copyLoads(search.loads)
       search.isIn[need] = 1
       forgetPenalties(search)
-      if (reinsert(search, blockOf.get(need)!, { sums: null, mayPass: true }) && repair(search, 12)) {
+      if (reinsert(search, blockOf.get(need)!, PASS) && repair(search, 12)) {
         left.splice(left.indexOf(need), 1)
         continue
       }

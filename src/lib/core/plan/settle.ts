@@ -29,8 +29,8 @@ export interface Settled {
 /** Slots looked at by the search for each unit of effort: about a third of a second. */
 const STEPS = 60_000_000
 const PHASES = 32
-/** The bound has settled when a phase adds less than this share of it. */
-const STILL = 2e-6
+/** Enough when four phases in turn have each closed the gap by less than this share of the cost. */
+const STILL = 1e-5
 const KEEP = { sums: null, mayPass: false } as const
 
 export function settle(settling: Settling): Settled {
@@ -46,12 +46,14 @@ export function settle(settling: Settling): Settled {
   search.loads = copyLoads(settling.loads)
   let best = improved(search)
   const near = () => best.cost - balance.best.bound <= targetGapFraction * Math.abs(best.cost)
+  let still = 0
   for (let phase = 0; phase < PHASES * effort && search.steps < search.mostSteps && !near(); phase++) {
-    const before = balance.best.bound
+    const before = best.cost - balance.best.bound
     advance(balance)
     if (phase < 3) continue
     best = cheaper(best, finished(search, balance.loads))
-    if (phase > 12 && balance.best.bound - before < STILL * Math.abs(before)) break
+    still = before - (best.cost - balance.best.bound) < STILL * Math.abs(best.cost) ? still + 1 : 0
+    if (still === 4) break
   }
   if (!near()) best = polish(search, best)
   return { ...best, bound: Math.min(balance.best.bound, best.cost) }
@@ -83,7 +85,7 @@ function finished(search: Search, loads: Loads): Found | null {
   search.loads = copyLoads(loads)
   search.targetW.set(peaks(search.model, loads.windowW))
   forgetPenalties(search)
-  return repair(search, 12) ? improved(search) : null
+  return repair(search, 60) ? improved(search) : null
 }
 
 /** Shaves each maximum a little, or lets it rise a little, as long as that pays. */
