@@ -69,7 +69,11 @@ export function exactProgram(question: ExactQuestion): ExactProgram {
   for (const need of problem.needs) {
     cost.push(-question.unservedMinor)
     for (const run of need.runs)
-      rows.push({ lower: 0, upper: 0, at: new Map([...(columnsOf.get(run.id) ?? []).map((column) => [column, 1] as const), [served.get(need.id)!, -1]]) })
+      rows.push({
+        lower: 0,
+        upper: 0,
+        at: new Map([...(columnsOf.get(run.id) ?? []).map((column) => [column, 1] as const), [served.get(need.id)!, -1]]),
+      })
   }
   problem.limits.forEach((limit, place) => {
     for (let slot = 0; slot < problem.slots; slot++) {
@@ -84,8 +88,13 @@ export function exactProgram(question: ExactQuestion): ExactProgram {
   })
   addUnits(problem, columns, columnsOf, rows)
   const peaks = costShare === 0 ? [] : addPeaks(problem, columns, cost, rows)
-  const mark = (id: string) => (question.mustServe?.has(id) ? ([1, 1] as const) : question.mustLeave?.has(id) ? ([0, 0] as const) : ([0, 1] as const))
-  const bounds = [...columns.map(() => [0, 1] as const), ...problem.needs.map(({ id }) => mark(id)), ...peaks.map((floor) => [floor, inf] as const)]
+  const mark = (id: string) =>
+    question.mustServe?.has(id) ? ([1, 1] as const) : question.mustLeave?.has(id) ? ([0, 0] as const) : ([0, 1] as const)
+  const bounds = [
+    ...columns.map(() => [0, 1] as const),
+    ...problem.needs.map(({ id }) => mark(id)),
+    ...peaks.map((floor) => [floor, inf] as const),
+  ]
   let offset = question.unservedMinor * problem.needs.length
   peaks.forEach((floor, place) => (offset -= floor * cost[columns.length + problem.needs.length + place]!))
   return {
@@ -112,7 +121,9 @@ export function exactProgram(question: ExactQuestion): ExactProgram {
         rowLower: rows.map(({ lower }) => lower),
         rowUpper: rows.map(({ upper }) => upper),
         matrix: { format: 'csr', numRows: rows.length, numCols: cost.length, starts, indices, values },
-        integrality: bounds.map((_, column) => (column < columns.length + problem.needs.length ? variableType.integer : variableType.continuous)),
+        integrality: bounds.map((_, column) =>
+          column < columns.length + problem.needs.length ? variableType.integer : variableType.continuous,
+        ),
       })
     },
     starts: (values) => columns.flatMap(({ run, slot }, column) => (values[column]! > 0.5 ? [{ runId: run.id, startSlot: slot }] : [])),
@@ -130,7 +141,8 @@ function addUnits(problem: PlanProblem, columns: readonly Column[], columnsOf: R
         for (const slot of lateColumns.map((column) => columns[column]?.slot ?? NaN)) {
           const stillOn = earlyColumns.filter((column) => (columns[column]?.slot ?? NaN) + early.worstSlots > slot)
           const begun = lateColumns.filter((column) => (columns[column]?.slot ?? NaN) <= slot)
-          if (stillOn.length > 0) rows.push({ lower: -Infinity, upper: 1, at: new Map([...stillOn, ...begun].map((column) => [column, 1])) })
+          if (stillOn.length > 0)
+            rows.push({ lower: -Infinity, upper: 1, at: new Map([...stillOn, ...begun].map((column) => [column, 1])) })
         }
       }
     })
@@ -140,7 +152,12 @@ function addUnits(problem: PlanProblem, columns: readonly Column[], columnsOf: R
 /** A number for each charge and for evenness, above the mean of each of its windows; returns their floors. */
 function addPeaks(problem: PlanProblem, columns: readonly Column[], cost: number[], rows: Row[]): number[] {
   const floors: number[] = []
-  const add = (price: number, alreadyKw: number, windows: readonly { from: number; to: number }[], onMin: (column: Column, slot: number) => number) => {
+  const add = (
+    price: number,
+    alreadyKw: number,
+    windows: readonly { from: number; to: number }[],
+    onMin: (column: Column, slot: number) => number,
+  ) => {
     const peak = cost.push(price) - 1
     let floor = alreadyKw
     for (const { from, to } of windows) {
@@ -164,6 +181,8 @@ function addPeaks(problem: PlanProblem, columns: readonly Column[], cost: number
   for (const { priceMinorPerKw, alreadyKw, windows } of problem.demand) add(priceMinorPerKw, alreadyKw, windows, expected)
   const everySlot = Array.from({ length: problem.slots }, (_, slot) => ({ from: slot, to: slot + 1 }))
   if (problem.weights.evennessMinorPerKw > 0)
-    add(problem.weights.evennessMinorPerKw, 0, everySlot, ({ run, slot: start }, slot) => (slot >= start && slot < start + run.worstSlots ? slotMin : 0))
+    add(problem.weights.evennessMinorPerKw, 0, everySlot, ({ run, slot: start }, slot) =>
+      slot >= start && slot < start + run.worstSlots ? slotMin : 0,
+    )
   return floors
 }

@@ -82,4 +82,5 @@ export function familyProblem({ units, service, periods, demand }: Member, seed:
 
 const twoPeriods = (hour: number) => (hour < 7 || hour >= 23 ? 9 : 18)
 const threePeriods = (hour: number) => (hour < 6 || hour >= 22 ? 8 : (hour >= 7 && hour < 9) || (hour >= 17 && hour < 21) ? 31 : 15)
-const quarters = (from: number, to: number) => Array.from({ length: (to - from) / 3 }, (_, place) => ({ from: from + 3 * place, to: from + 3 * place + 3 }))
+const quarters = (from: number, to: number) =>
+  Array.from({ length: (to - from) / 3 }, (_, place) => ({ from: from + 3 * place, to: from + 3 * place + 3 }))

@@ -69,7 +69,8 @@ export function costByTheMinute(problem: PlanProblem, starts: readonly PlannedRu
     const meanKw = (withRuns: boolean) =>
       charge.windows.map(({ from, to }) => {
         let kwMin = 0
-        for (let slot = from; slot < to; slot++) kwMin += (problem.baseKw[slot] ?? NaN) * slotMin + (withRuns ? (expectedKwMin[slot] ?? NaN) : 0)
+        for (let slot = from; slot < to; slot++)
+          kwMin += (problem.baseKw[slot] ?? NaN) * slotMin + (withRuns ? (expectedKwMin[slot] ?? NaN) : 0)
         return kwMin / ((to - from) * slotMin)
       })
     const floorKw = Math.max(charge.alreadyKw, ...meanKw(false))

@@ -94,7 +94,7 @@ export function advance(balance: Balance): void {
 }
 
 function slopes(model: Model, blocks: readonly Block[], question: Question): Pick<Balance, 'limitSlope' | 'windowSlope'> {
-  const runs = blocks.flatMap(({ needs }) => needs.flat()).map((run) => model.runs[run]!)
+  const runs = blocks.flatMap((block) => block.runs)
   const count = Math.max(1, runs.length)
   const meanW = runs.reduce((sum, run) => sum + run.powerW, 0) / count
   const worth = ({ costs, byCost }: Model['runs'][number]) =>
@@ -138,7 +138,7 @@ function setLevels({ model, question, loads, prices, windowSlope, levelW }: Bala
 
 function settleBlock(balance: Balance, block: Block): void {
   const { model, loads, sums, question } = balance
-  const runs = block.needs.flat().map((run) => model.runs[run]!)
+  const { runs } = block
   for (const run of runs) takeOff(model, loads, run)
   priceBlock(balance, block, runs[0]!.powerW)
   const reducedCost = (run: number, candidate: number) => {
@@ -152,7 +152,11 @@ function settleBlock(balance: Balance, block: Block): void {
 }
 
 /** Sums the prices of the slots that the block can reach; half of its own load counts as being there. */
-function priceBlock({ model, loads, prices, limitSlope, windowSlope, levelW, sums, question }: Balance, block: Block, powerW: number): void {
+function priceBlock(
+  { model, loads, prices, limitSlope, windowSlope, levelW, sums, question }: Balance,
+  block: Block,
+  powerW: number,
+): void {
   const { slots, limitCount, reachableW, roomW } = model
   const { from } = block
   const to = Math.min(slots, from + block.span)
@@ -193,7 +197,8 @@ function priceBlock({ model, loads, prices, limitSlope, windowSlope, levelW, sum
 function livePrices({ model, loads, prices, limitSlope, windowSlope, levelW }: Balance): Prices {
   const live = prices.slice()
   const limits = model.roomW.length
-  for (let row = 0; row < limits; row++) live[row] = prices[row]! + limitSlope * (model.roomW[row]! - loads.leftW[row]! - model.reachableW[row]!)
+  for (let row = 0; row < limits; row++)
+    live[row] = prices[row]! + limitSlope * (model.roomW[row]! - loads.leftW[row]! - model.reachableW[row]!)
   for (let window = 0; limits + window < live.length; window++) {
     const term = model.windowTerm[window]!
     live[limits + window] = prices[limits + window]! + windowSlope[term]! * (loads.windowW[window]! - levelW[term]!)

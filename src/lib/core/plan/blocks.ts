@@ -2,11 +2,13 @@
  * The runs that cannot be chosen one by one: a unit's needs whose times may touch, in their order. Under given prices a block's
  * cheapest starts are exact, by one pass over its slots.
  */
-import type { Model } from './model.ts'
+import type { Model, ModelRun } from './model.ts'
 
 export interface Block {
   /** In their order; each need's runs in theirs. */
   readonly needs: readonly (readonly number[])[]
+  /** The same runs in one row. */
+  readonly runs: readonly ModelRun[]
   /** How many units have this very block. */
   readonly count: number
   readonly from: number
@@ -19,19 +21,21 @@ export type ReducedCost = (run: number, candidate: number) => number
 /** Every unit's blocks, of the needs that are in. */
 export function unitBlocks(model: Model, isIn: (need: number) => boolean): Block[] {
   const blocks: Block[] = []
-  for (const needs of model.needsOfUnit) {
+  for (const unitNeeds of model.needsOfUnit) {
+    const needs = unitNeeds.filter(isIn).map((need) => model.runsOfNeed[need]!)
+    // From each need on, the earliest start of all that follow: a cut is clean only where nothing later reaches back over it.
+    const earliest = needs.map((runs) => Math.min(...runs.map((run) => model.runs[run]!.starts[0]!)))
+    for (let place = needs.length - 2; place >= 0; place--) earliest[place] = Math.min(earliest[place]!, earliest[place + 1]!)
     let open: (readonly number[])[] = []
     let lastEnd = 0
-    for (const need of needs) {
-      if (!isIn(need)) continue
-      const runs = model.runsOfNeed[need]!
-      if (open.length > 0 && Math.min(...runs.map((run) => model.runs[run]!.starts[0]!)) >= lastEnd) {
+    needs.forEach((runs, place) => {
+      if (open.length > 0 && earliest[place]! >= lastEnd) {
         blocks.push(asBlock(model, open))
         open = []
       }
       open.push(runs)
       for (const run of runs) lastEnd = Math.max(lastEnd, model.runs[run]!.starts.at(-1)! + model.runs[run]!.worst)
-    }
+    })
     if (open.length > 0) blocks.push(asBlock(model, open))
   }
   return blocks
@@ -42,7 +46,7 @@ export function asBlock(model: Model, needs: readonly (readonly number[])[]): Bl
   const runs = needs.flat().map((run) => model.runs[run]!)
   const from = Math.min(...runs.map((run) => run.starts[0]!))
   const to = Math.max(...runs.map((run) => run.starts.at(-1)! + run.worst))
-  return { needs, count: 1, from, span: to - from }
+  return { needs, runs, count: 1, from, span: to - from }
 }
 
 /** Blocks that are the same but for their names, once each. */
@@ -69,26 +73,23 @@ function signature(model: Model, run: number): string {
 export interface BlockChoice {
   readonly value: number
   /** Candidate of each run of the block in order; -1 where its need is left out. */
-  readonly chosen: Int32Array
+  readonly chosen: ArrayLike<number>
 }
 
 /** The cheapest way through a block; a need may be left out for `skipCost`, or not at all when that is infinite. */
 export function cheapestChoice(model: Model, block: Block, reducedCost: ReducedCost, skipCost: number): BlockChoice {
-  const only = block.needs.length === 1 && block.needs[0]?.length === 1 ? block.needs[0][0]! : null
-  if (only !== null) {
-    let best = -1
-    let value = skipCost
-    const length = model.runs[only]!.starts.length
-    for (let candidate = 0; candidate < length; candidate++) {
-      const cost = reducedCost(only, candidate)
-      if (cost < value) {
-        value = cost
-        best = candidate
-      }
+  if (block.runs.length > 1) return cheapestChain(model, block, reducedCost, skipCost)
+  const { index, starts } = block.runs[0]!
+  let best = -1
+  let value = skipCost
+  for (let candidate = 0; candidate < starts.length; candidate++) {
+    const cost = reducedCost(index, candidate)
+    if (cost < value) {
+      value = cost
+      best = candidate
     }
-    return { value, chosen: Int32Array.of(best) }
   }
-  return cheapestChain(model, block, reducedCost, skipCost)
+  return { value, chosen: [best] }
 }
 
 /** `soFar[e]`: the least cost of what came before, all of it over by slot from + e. */

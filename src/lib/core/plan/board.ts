@@ -30,7 +30,8 @@ export function openBoard(problem: PlanProblem, starts: readonly PlannedRun[]): 
   return board
 }
 
-const isInHorizon = ({ model }: Board, run: ModelRun, slot: number): boolean => Number.isInteger(slot) && slot >= 0 && slot + run.worst <= model.slots
+const isInHorizon = ({ model }: Board, run: ModelRun, slot: number): boolean =>
+  Number.isInteger(slot) && slot >= 0 && slot + run.worst <= model.slots
 
 /** Puts a run at a slot, or takes it off; `false` when there is no such run or the slot is outside the horizon. */
 export function moveRun(board: Board, runId: string, toSlot: number | null): boolean {

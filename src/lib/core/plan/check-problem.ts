@@ -25,7 +25,8 @@ export function checkProblem(problem: PlanProblem, options: PlanOptions): Proble
   for (const charge of problem.demand) {
     if (!notNegative(charge.priceMinorPerKw)) say(`demand.${charge.id}.priceMinorPerKw`, 'must be 0 or more')
     if (!notNegative(charge.alreadyKw)) say(`demand.${charge.id}.alreadyKw`, 'must be 0 or more')
-    if (!ascendingWithin(charge.windows, problem.slots)) say(`demand.${charge.id}.windows`, 'must be whole, ascending, apart and inside the horizon')
+    if (!ascendingWithin(charge.windows, problem.slots))
+      say(`demand.${charge.id}.windows`, 'must be whole, ascending, apart and inside the horizon')
   }
   for (const [name, value] of Object.entries(problem.weights)) if (!notNegative(value)) say(`weights.${name}`, 'must be 0 or more')
   if (!whole(options.seed)) say('options.seed', 'must be a whole number')
@@ -64,7 +65,8 @@ function checkNeeds(problem: PlanProblem, say: Say): void {
 function checkRun(problem: PlanProblem, need: Need, run: NeededRun, say: Say): void {
   const at = (field: string) => `needs.${need.id}.${run.id}.${field}`
   if (!notNegative(run.powerKw)) say(at('powerKw'), 'must be 0 or more')
-  if (run.limitKw.length !== problem.limits.length) say(at('limitKw'), `has ${run.limitKw.length} values for ${problem.limits.length} limits`)
+  if (run.limitKw.length !== problem.limits.length)
+    say(at('limitKw'), `has ${run.limitKw.length} values for ${problem.limits.length} limits`)
   else if (!run.limitKw.every(notNegative)) say(at('limitKw'), 'must be 0 or more')
   if (!(whole(run.worstSlots) && run.worstSlots > 0)) say(at('worstSlots'), 'must be a whole number above 0')
   if (!(run.expectedMin > 0 && run.expectedMin <= run.worstSlots * problem.slotMin + 1e-9))
@@ -72,10 +74,12 @@ function checkRun(problem: PlanProblem, need: Need, run: NeededRun, say: Say): v
   if (!(whole(run.shortestWorstSlots) && run.shortestWorstSlots > 0 && run.shortestWorstSlots <= run.worstSlots))
     say(at('shortestWorstSlots'), 'must be a whole number from 1 to worstSlots')
   if (!(whole(run.startStep) && run.startStep > 0)) say(at('startStep'), 'must be a whole number above 0')
-  for (const field of ['startOffset', 'earliestStartSlot', 'latestStartSlot'] as const) if (!whole(run[field])) say(at(field), 'must be a whole number')
+  for (const field of ['startOffset', 'earliestStartSlot', 'latestStartSlot'] as const)
+    if (!whole(run[field])) say(at(field), 'must be a whole number')
   if (!Number.isFinite(run.readyBySlot)) say(at('readyBySlot'), 'must be a number')
   if (!notNegative(run.standingLossMinorPerH)) say(at('standingLossMinorPerH'), 'must be 0 or more')
   if (run.habitSlot !== null && !Number.isFinite(run.habitSlot)) say(at('habitSlot'), 'must be a number or null')
   if (run.pinnedSlot !== null && !whole(run.pinnedSlot)) say(at('pinnedSlot'), 'must be a whole number or null')
-  if (!run.startWindows.every(({ from, to }) => whole(from) && whole(to) && to >= from)) say(at('startWindows'), 'must be whole slots, from before to')
+  if (!run.startWindows.every(({ from, to }) => whole(from) && whole(to) && to >= from))
+    say(at('startWindows'), 'must be whole slots, from before to')
 }

@@ -39,7 +39,12 @@ export function evaluatePlan(problem: PlanProblem, starts: readonly PlannedRun[]
   const demandMinor = demand.reduce((sum, { costMinor }) => sum + costMinor, 0)
   const evennessMinor = problem.weights.evennessMinorPerKw * (highest(worstKw) - highest(problem.baseKw))
   return {
-    cost: { ...own, demandMinor, evennessMinor, totalMinor: own.energyMinor + own.standingLossMinor + own.habitMinor + demandMinor + evennessMinor },
+    cost: {
+      ...own,
+      demandMinor,
+      evennessMinor,
+      totalMinor: own.energyMinor + own.standingLossMinor + own.habitMinor + demandMinor + evennessMinor,
+    },
     limits: problem.limits.map((_, limit) => limitLoad(problem, limit, placed)),
     expectedKw: [...expectedKw],
     worstKw: [...worstKw],

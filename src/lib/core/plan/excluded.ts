@@ -1,6 +1,6 @@
 /** Needs that are out before any choice is made: no start, too large for a limit even alone, or a pin that cannot be kept. */
 import { asBlock, cheapestChoice } from './blocks.ts'
-import { fits, noLoads, place, takeOff, type Loads } from './loads.ts'
+import { fits, noLoads, overlapsInUnit, place, takeOff, type Loads } from './loads.ts'
 import type { Model } from './model.ts'
 import type { UnservedReason } from './types.ts'
 
@@ -24,7 +24,7 @@ function hasWay(model: Model, runs: readonly number[], loads: Loads | null): boo
     const run = model.runs[index]!
     return loads && !fits(model, loads, run, run.starts[candidate]!) ? Infinity : 0
   }
-  return cheapestChoice(model, asBlock(model, [runs]), price, Infinity).chosen.every((candidate) => candidate >= 0)
+  return cheapestChoice(model, asBlock(model, [runs]), price, Infinity).value < Infinity
 }
 
 /** Pinned runs come first, in their order; one that does not fit beside those before it is out. */
@@ -43,18 +43,4 @@ function keepPins(model: Model, excluded: Excluded): void {
     for (const run of placed) takeOff(model, pins, run)
     excluded.set(need, placed.length === pinned.length ? 'pin-not-allowed' : 'pin-over-limit')
   })
-}
-
-/** Whether the placed runs of the need's unit overlap or stand in another order than theirs. */
-function overlapsInUnit(model: Model, loads: Loads, need: number): boolean {
-  let over = 0
-  for (const other of model.needsOfUnit[model.unitOfNeed[need]!]!)
-    for (const index of model.runsOfNeed[other]!) {
-      const candidate = loads.chosen[index]!
-      if (candidate < 0) continue
-      const run = model.runs[index]!
-      if (run.starts[candidate]! < over) return true
-      over = run.starts[candidate]! + run.worst
-    }
-  return false
 }

@@ -67,24 +67,6 @@ export function fits(model: Model, loads: Loads, run: ModelRun, slot: number): b
   return true
 }
 
-/** Calls `visit` with each window of a charge that a start touches, and the mean that it adds there. */
-export function eachAdded(model: Model, term: number, run: ModelRun, slot: number, visit: (window: number, addedW: number) => void): void {
-  const { windowOfSlot, worstCase } = model.terms[term]!
-  const last = worstCase ? slot + run.worst : slot + run.full + (run.part > 0 ? 1 : 0)
-  let open = -1
-  let slotsIn = 0
-  for (let at = slot; at < last; at++) {
-    const window = windowOfSlot[at]!
-    if (window !== open) {
-      if (open >= 0) visit(open, run.powerW * slotsIn * model.windowShare[open]!)
-      open = window
-      slotsIn = 0
-    }
-    slotsIn += !worstCase && at === slot + run.full ? run.part : 1
-  }
-  if (open >= 0) visit(open, run.powerW * slotsIn * model.windowShare[open]!)
-}
-
 /** What the charges on maxima come to. */
 export function maximaCosts(model: Model, windowW: Float64Array): { readonly demandMinor: number; readonly evennessMinor: number } {
   let demandMinor = 0
@@ -107,4 +89,18 @@ export function totalCost(model: Model, loads: Loads): number {
     if (candidate >= 0) cost += run.costs[candidate]!
   }
   return cost
+}
+
+/** Whether the placed runs of the need's unit overlap or stand in another order than theirs. */
+export function overlapsInUnit(model: Model, loads: Loads, need: number): boolean {
+  let over = 0
+  for (const other of model.needsOfUnit[model.unitOfNeed[need]!]!)
+    for (const index of model.runsOfNeed[other]!) {
+      const candidate = loads.chosen[index]!
+      if (candidate < 0) continue
+      const run = model.runs[index]!
+      if (run.starts[candidate]! < over) return true
+      over = run.starts[candidate]! + run.worst
+    }
+  return false
 }

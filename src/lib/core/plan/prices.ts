@@ -56,7 +56,8 @@ export function loadPrice(model: Model, sums: PriceSums, runIndex: number, slot:
   const run = model.runs[runIndex]!
   const end = slot + run.worst
   const full = slot + run.full
-  let price = run.powerW * (sums.expected[full]! - sums.expected[slot]! + run.part * sums.expectedAt[full]! + sums.worst[end]! - sums.worst[slot]!)
+  let price =
+    run.powerW * (sums.expected[full]! - sums.expected[slot]! + run.part * sums.expectedAt[full]! + sums.worst[end]! - sums.worst[slot]!)
   for (let limit = 0; limit < run.limitW.length; limit++) {
     const before = sums.limit[limit]!
     price += run.limitW[limit]! * (before[end]! - before[slot]!)

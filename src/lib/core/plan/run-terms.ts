@@ -33,7 +33,8 @@ export function allowedStarts(problem: PlanProblem, run: NeededRun): number[] {
   for (const { from, to } of [...run.startWindows].sort((one, other) => one.from - other.from)) {
     const first = Math.max(lowest, from, (starts.at(-1) ?? -1) + 1)
     const misfit = (((first - run.startOffset) % run.startStep) + run.startStep) % run.startStep
-    for (let slot = misfit === 0 ? first : first + run.startStep - misfit; slot <= highest && slot < to; slot += run.startStep) starts.push(slot)
+    for (let slot = misfit === 0 ? first : first + run.startStep - misfit; slot <= highest && slot < to; slot += run.startStep)
+      starts.push(slot)
   }
   return starts
 }

@@ -3,7 +3,7 @@
  * target are least, and whatever stays passed grows dearer from round to round. Counts its steps, so that its time is bounded.
  */
 import { cheapestChoice, type Block } from './blocks.ts'
-import { eachAdded, place, takeOff, type Loads } from './loads.ts'
+import { place, takeOff, type Loads } from './loads.ts'
 import type { Model, ModelRun } from './model.ts'
 import { loadPrice, type PriceSums } from './prices.ts'
 import { shuffle } from './random.ts'
@@ -89,31 +89,63 @@ function judged(search: Search, run: ModelRun, candidate: number, judge: Judge, 
   for (let term = 0; term < model.terms.length; term++) {
     const target = search.targetW[term]!
     if (target === Infinity) continue
-    eachAdded(model, term, run, slot, (window, addedW) => {
-      const now = loads.windowW[window]!
-      const over = now + addedW - target
-      if (over <= 1e-6) return
-      cost += judge.mayPass ? search.windowPenalty[window]! * (now > target ? addedW : over) : Infinity
-    })
+    const pays = overTarget(search, term, run, slot)
+    if (pays > 0 && !judge.mayPass) return Infinity
+    cost += pays
   }
   return cost
+}
+
+/** What a start pays for means above a charge's target. The hot path of every round: no closure, windows follow each other. */
+function overTarget({ model, loads, targetW, windowPenalty }: Search, term: number, run: ModelRun, slot: number): number {
+  const { windowOfSlot, worstCase } = model.terms[term]!
+  const target = targetW[term]!
+  const partAt = worstCase ? -1 : slot + run.full
+  const last = worstCase ? slot + run.worst : slot + run.full + (run.part > 0 ? 1 : 0)
+  let pays = 0
+  let at = slot
+  while (at < last) {
+    const window = windowOfSlot[at]!
+    let slotsIn = 0
+    do {
+      slotsIn += at === partAt ? run.part : 1
+      at++
+    } while (at < last && windowOfSlot[at] === window)
+    if (window < 0) continue
+    const now = loads.windowW[window]!
+    const addedW = run.powerW * slotsIn * model.windowShare[window]!
+    const over = now + addedW - target
+    if (over > 1e-6) pays += windowPenalty[window]! * (now > target ? addedW : over)
+  }
+  return pays
 }
 
 /** Takes a block's runs up and puts them where they are cheapest; `false`, and nothing changed, when there is no such place. */
 export function reinsert(search: Search, block: Block, judge: Judge): boolean {
   const { model, loads, isIn } = search
+  if (block.runs.length === 1) return isIn[block.runs[0]!.need] === 0 || reinsertRun(search, block.runs[0]!, judge)
   const needs = block.needs.filter((need) => isIn[model.runs[need[0]!]!.need] === 1)
   if (needs.length === 0) return true
   const runs = needs.flat().map((index) => model.runs[index]!)
   const before = runs.map((run) => loads.chosen[run.index]!)
   for (const run of runs) takeOff(model, loads, run)
-  const after = runs.length === 1 ? [cheapestStart(search, runs[0]!, judge)] : cheapestStarts(search, { ...block, needs }, judge)
+  const after = cheapestStarts(search, { ...block, needs, runs }, judge)
   const found = after.every((candidate) => candidate >= 0)
   runs.forEach((run, at) => {
     const candidate = found ? after[at]! : before[at]!
     if (candidate >= 0) place(model, loads, run, candidate)
   })
   return found
+}
+
+function reinsertRun(search: Search, run: ModelRun, judge: Judge): boolean {
+  const { model, loads } = search
+  const before = loads.chosen[run.index]!
+  takeOff(model, loads, run)
+  const after = cheapestStart(search, run, judge)
+  const candidate = after >= 0 ? after : before
+  if (candidate >= 0) place(model, loads, run, candidate)
+  return after >= 0
 }
 
 function cheapestStart(search: Search, run: ModelRun, judge: Judge): number {
@@ -133,7 +165,7 @@ function cheapestStart(search: Search, run: ModelRun, judge: Judge): number {
 function cheapestStarts(search: Search, block: Block, judge: Judge): number[] {
   const reducedCost = (run: number, candidate: number) => judged(search, search.model.runs[run]!, candidate, judge, Infinity)
   search.steps += block.span * block.needs.length
-  return [...cheapestChoice(search.model, block, reducedCost, Infinity).chosen]
+  return Array.from(cheapestChoice(search.model, block, reducedCost, Infinity).chosen)
 }
 
 /** One round over all blocks, in a new order. */
@@ -164,25 +196,23 @@ function passesTarget({ model, loads, targetW }: Search): boolean {
 }
 
 function touchesPassed({ model, loads, targetW }: Search, block: Block): boolean {
-  for (const need of block.needs)
-    for (const index of need) {
-      const run = model.runs[index]!
-      const candidate = loads.chosen[index]!
-      if (candidate < 0) continue
-      const slot = run.starts[candidate]!
-      for (let limit = 0; limit < run.limitW.length; limit++) {
-        if (run.limitW[limit] === 0) continue
-        const first = limit * model.slots + slot
-        for (let row = first; row < first + run.worst; row++) if (loads.leftW[row]! < 0) return true
-      }
-      for (let term = 0; term < model.terms.length; term++) {
-        const { windowOfSlot } = model.terms[term]!
-        for (let at = slot; at < slot + run.worst; at++) {
-          const window = windowOfSlot[at]!
-          if (window >= 0 && loads.windowW[window]! > targetW[term]! + 1e-6) return true
-        }
+  for (const run of block.runs) {
+    const candidate = loads.chosen[run.index]!
+    if (candidate < 0) continue
+    const slot = run.starts[candidate]!
+    for (let limit = 0; limit < run.limitW.length; limit++) {
+      if (run.limitW[limit] === 0) continue
+      const first = limit * model.slots + slot
+      for (let row = first; row < first + run.worst; row++) if (loads.leftW[row]! < 0) return true
+    }
+    for (let term = 0; term < model.terms.length; term++) {
+      const { windowOfSlot } = model.terms[term]!
+      for (let at = slot; at < slot + run.worst; at++) {
+        const window = windowOfSlot[at]!
+        if (window >= 0 && loads.windowW[window]! > targetW[term]! + 1e-6) return true
       }
     }
+  }
   return false
 }
 

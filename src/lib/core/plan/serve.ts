@@ -2,8 +2,8 @@
 import { advance, openBalance } from './balance.ts'
 import { alike, unitBlocks, type Block } from './blocks.ts'
 import { excludedNeeds, type Excluded } from './excluded.ts'
-import { copyLoads, fits, noLoads, place, type Loads } from './loads.ts'
-import type { Model } from './model.ts'
+import { copyLoads, fits, noLoads, overlapsInUnit, place, takeOff, type Loads } from './loads.ts'
+import type { Model, ModelRun } from './model.ts'
 import { loadPrice, sumPrices, type PriceSums, type Question } from './prices.ts'
 import { shuffle } from './random.ts'
 import { beginSearch, forgetPenalties, reinsert, repair, type Search } from './search.ts'
@@ -16,8 +16,8 @@ export interface Service {
   readonly excluded: Excluded
 }
 
-/** Slots looked at for each unit of effort: about a quarter of a second. */
-const STEPS = 40_000_000
+/** Slots looked at for each unit of effort: about a sixth of a second. */
+const STEPS = 20_000_000
 const PHASES = 24
 const PASS = { sums: null, mayPass: true } as const
 
@@ -29,7 +29,7 @@ export function chooseServed(model: Model, random: () => number, effort: number)
   // A pin that clashes with other pins could be served by a plan that drops those: it does not count here.
   const impossible = [...excluded.values()].filter((reason) => reason === 'no-allowed-start' || reason === 'too-large-alone').length
   const everybody = (): Service => ({ isIn, blocks, loads: search.loads, unservedAtLeast: impossible, excluded })
-  const bySize = [...blocks].sort((one, other) => sizeOf(model, other.needs.flat()) - sizeOf(model, one.needs.flat()))
+  const bySize = [...blocks].sort((one, other) => sizeOf(other.runs) - sizeOf(one.runs))
   if (bySize.every((block) => reinsert(search, block, PASS)) && repair(search, 20)) return everybody()
 
   const question: Question = { blocks: alike(model, blocks), costShare: 0, skipCost: 1 }
@@ -52,21 +52,27 @@ export function chooseServed(model: Model, random: () => number, effort: number)
   }
 }
 
-const sizeOf = (model: Model, runs: readonly number[]): number =>
-  runs.reduce((sum, run) => sum + model.runs[run]!.powerW * model.runs[run]!.worst, 0)
+const sizeOf = (runs: readonly ModelRun[]): number => runs.reduce((sum, { powerW, worst }) => sum + powerW * worst, 0)
 
-const isPlaced = ({ loads }: Search, block: Block): boolean => block.needs.every((need) => need.every((run) => loads.chosen[run]! >= 0))
+const isPlaced = ({ loads }: Search, block: Block): boolean => block.runs.every(({ index }) => loads.chosen[index]! >= 0)
 
 /** Two ways to fill up, the better of them filled further. */
 function serveMany(search: Search, balanced: Loads, sums: PriceSums): void {
   const { model, isIn } = search
   const wanted = [...isIn.keys()].filter((need) => isIn[need] === 1)
   const isPinned = (need: number) => model.runsOfNeed[need]!.some((run) => model.runs[run]!.pinned)
-  const cheapest = (run: number) => model.runs[run]!.starts.reduce((least, slot) => Math.min(least, loadPrice(model, sums, run, slot)), Infinity)
+  const cheapest = (run: number) =>
+    model.runs[run]!.starts.reduce((least, slot) => Math.min(least, loadPrice(model, sums, run, slot)), Infinity)
   const asked = wanted.map((need) => {
     const runs = model.runsOfNeed[need]!
     const price = runs.reduce((sum, run) => sum + cheapest(run), 0)
-    return { need, price, pinned: Number(isPinned(need)), in: Number(runs.every((run) => balanced.chosen[run]! >= 0)), size: sizeOf(model, runs) }
+    return {
+      need,
+      price,
+      pinned: Number(isPinned(need)),
+      in: Number(runs.every((run) => balanced.chosen[run]! >= 0)),
+      size: sizeOf(runs.map((run) => model.runs[run]!)),
+    }
   })
   asked.sort((one, other) => other.pinned - one.pinned || one.price - other.price || one.size - other.size)
   const first = fill(
@@ -112,8 +118,12 @@ function placeAsIn({ model, loads }: Search, need: number, balanced: Loads): boo
     const candidate = balanced.chosen[run.index]!
     return candidate >= 0 && fits(model, loads, run, run.starts[candidate]!)
   })
-  if (free) for (const run of runs) place(model, loads, run, balanced.chosen[run.index]!)
-  return free
+  if (!free) return false
+  for (const run of runs) place(model, loads, run, balanced.chosen[run.index]!)
+  // A neighbour of the unit may stand elsewhere than in the balanced plan.
+  if (!overlapsInUnit(model, loads, need)) return true
+  for (const run of runs) takeOff(model, loads, run)
+  return false
 }
 
 function blocksByNeed(search: Search): Map<number, Block> {

@@ -26,10 +26,10 @@ export interface Settled {
   readonly bound: number
 }
 
-/** Slots looked at by the search for each unit of effort: about a third of a second. */
-const STEPS = 60_000_000
+/** Slots looked at by the search for each unit of effort: about a quarter of a second. */
+const STEPS = 30_000_000
 const PHASES = 32
-/** Enough when four phases in turn have each closed the gap by less than this share of the cost. */
+/** Enough when three trials in turn have each closed the gap by less than this share of the cost. */
 const STILL = 1e-5
 const KEEP = { sums: null, mayPass: false } as const
 
@@ -47,13 +47,15 @@ export function settle(settling: Settling): Settled {
   let best = improved(search)
   const near = () => best.cost - balance.best.bound <= targetGapFraction * Math.abs(best.cost)
   let still = 0
+  let before = Infinity
   for (let phase = 0; phase < PHASES * effort && search.steps < search.mostSteps && !near(); phase++) {
-    const before = best.cost - balance.best.bound
     advance(balance)
-    if (phase < 3) continue
+    if (phase < 5 || phase % 2 === 0) continue
     best = cheaper(best, finished(search, balance.loads))
-    still = before - (best.cost - balance.best.bound) < STILL * Math.abs(best.cost) ? still + 1 : 0
-    if (still === 4) break
+    const gap = best.cost - balance.best.bound
+    still = before - gap < STILL * Math.abs(best.cost) ? still + 1 : 0
+    before = gap
+    if (still === 3) break
   }
   if (!near()) best = polish(search, best)
   return { ...best, bound: Math.min(balance.best.bound, best.cost) }
