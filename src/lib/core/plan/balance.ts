@@ -64,7 +64,7 @@ export function openBalance({ model, blocks, question, loads, random }: OpenBala
       worst: new Float64Array(slots + 1),
     },
     phase: 0,
-    best: { prices: prices.slice(), bound: answer(model, question, prices).bound },
+    best: firstPrices(model, question),
   }
 }
 
@@ -91,6 +91,18 @@ export function advance(balance: Balance): void {
   if (balance.phase < 2) return
   balance.limitSlope *= FALL
   for (let term = 0; term < balance.windowSlope.length; term++) balance.windowSlope[term] = balance.windowSlope[term]! * FALL
+}
+
+/** No price at all, or every charge spread evenly over its windows: the mean load is a bound of its own. */
+function firstPrices(model: Model, question: Question): Balance['best'] {
+  const none = new Float64Array(priceCount(model, question))
+  const even = none.slice()
+  if (question.costShare === 1)
+    for (const { firstWindow, windowCount, priceMinorPerW } of model.terms)
+      even.fill(priceMinorPerW / windowCount, model.roomW.length + firstWindow, model.roomW.length + firstWindow + windowCount)
+  admit(model, even)
+  const bounds = [none, even].map((prices) => ({ prices, bound: answer(model, question, prices).bound }))
+  return bounds[0]!.bound >= bounds[1]!.bound ? bounds[0]! : bounds[1]!
 }
 
 function slopes(model: Model, blocks: readonly Block[], question: Question): Pick<Balance, 'limitSlope' | 'windowSlope'> {

@@ -96,6 +96,10 @@ function judged(search: Search, run: ModelRun, candidate: number, judge: Judge, 
   return cost
 }
 
+/** What a start costs as things stand; the run must not be placed at the time. */
+export const judgedAt = (search: Search, run: ModelRun, candidate: number, judge: Judge): number =>
+  judged(search, run, candidate, judge, Infinity)
+
 /** What a start pays for means above a charge's target. The hot path of every round: no closure, windows follow each other. */
 function overTarget({ model, loads, targetW, windowPenalty }: Search, term: number, run: ModelRun, slot: number): number {
   const { windowOfSlot, worstCase } = model.terms[term]!

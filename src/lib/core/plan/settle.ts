@@ -2,6 +2,7 @@
  * The cheapest starts for needs that are known to fit together, and the bound that no such starts beat. Starts and
  * prices are balanced; what that leaves over a limit is repaired, and the best is polished at the charges' true maxima.
  */
+import { anneal } from './anneal.ts'
 import { advance, openBalance } from './balance.ts'
 import { alike, type Block } from './blocks.ts'
 import { copyLoads, noLoads, totalCost, type Loads } from './loads.ts'
@@ -29,8 +30,13 @@ export interface Settled {
 /** Slots looked at by the search for each unit of effort: about a quarter of a second. */
 const STEPS = 30_000_000
 const PHASES = 32
+/** Up to so many blocks are shuffled one by one; more of them even out by themselves. */
+const FEW = 150
+const EPOCHS = 60
 /** Enough when three trials in turn have each closed the gap by less than this share of the cost. */
 const STILL = 1e-5
+const SHAVES = [0.03, 0.08, 0.15, 0.05, 0.01]
+const WARMS = [0.3, 1, 0.1]
 const KEEP = { sums: null, mayPass: false } as const
 
 export function settle(settling: Settling): Settled {
@@ -58,6 +64,8 @@ export function settle(settling: Settling): Settled {
     if (still === 3) break
   }
   if (!near()) best = polish(search, best)
+  for (let epoch = 0; epoch < EPOCHS && blocks.length <= FEW && search.steps < search.mostSteps && !near(); epoch++)
+    best = cheaper(best, annealed(search, best, epoch))
   return { ...best, bound: Math.min(balance.best.bound, best.cost) }
 }
 
@@ -111,4 +119,29 @@ function polish(search: Search, from: Found): Found {
       }
     }
   return best
+}
+
+/** Shuffles the best starts at a target a little below their maxima, warm or lukewarm by turns. */
+function annealed(search: Search, from: Found, epoch: number): Found | null {
+  const { model } = search
+  search.loads = copyLoads(from.loads)
+  const share = SHAVES[epoch % SHAVES.length]!
+  peaks(model, search.loads.windowW).forEach((peak, term) => {
+    const { floorW, priceMinorPerW } = model.terms[term]!
+    search.targetW[term] = floorW + (peak - floorW) * (1 - share)
+    // A stretch above the target is some windows long: each of them pays a part of the charge.
+    for (let window = 0; window < search.windowPenalty.length; window++)
+      if (model.windowTerm[window] === term) search.windowPenalty[window] = 0.4 * priceMinorPerW
+  })
+  search.limitPenalty.fill(4 * search.scale)
+  anneal(search, { moves: 300 * search.blocks.length + 4_000, warmMinor: WARMS[epoch % WARMS.length]! * warmth(search) })
+  return finished(search, search.loads)
+}
+
+/** What one block's worst start costs more than its best, with the charges it may raise; on the average. */
+function warmth({ model, blocks }: Search): number {
+  const runs = blocks.flatMap((block) => block.runs)
+  const spread = runs.reduce((sum, { costs, byCost }) => sum + costs[byCost.at(-1)!]! - costs[byCost[0]!]!, 0)
+  const charges = runs.reduce((sum, { powerW }) => sum + model.terms.reduce((price, term) => price + term.priceMinorPerW, 0) * powerW, 0)
+  return (0.1 * spread + 0.4 * charges) / Math.max(1, runs.length)
 }
