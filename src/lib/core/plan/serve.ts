@@ -1,4 +1,5 @@
 /** Who can be served: everybody if there is a way, otherwise as many as the search finds, and how many no plan can serve. */
+import { anneal } from './anneal.ts'
 import { advance, openBalance } from './balance.ts'
 import { alike, unitBlocks, type Block } from './blocks.ts'
 import { excludedNeeds, type Excluded } from './excluded.ts'
@@ -19,6 +20,8 @@ export interface Service {
 /** Slots looked at for each unit of effort: about a sixth of a second. */
 const STEPS = 20_000_000
 const PHASES = 24
+/** Up to so many blocks are shuffled one by one. */
+const FEW = 150
 const PASS = { sums: null, mayPass: true } as const
 
 export function chooseServed(model: Model, random: () => number, effort: number): Service {
@@ -141,11 +144,26 @@ function serveMore(search: Search, left: number[]): void {
       const before = copyLoads(search.loads)
       search.isIn[need] = 1
       forgetPenalties(search)
-      if (reinsert(search, blockOf.get(need)!, PASS) && repair(search, 12)) {
+      if (reinsert(search, blockOf.get(need)!, PASS) && (repair(search, 12) || shuffled(search))) {
         left.splice(left.indexOf(need), 1)
         continue
       }
       search.isIn[need] = 0
       search.loads = before
     }
+}
+
+/** For few blocks: shuffles what does not fit until it does, or gives up. */
+function shuffled(search: Search): boolean {
+  if (search.blocks.length > FEW) return false
+  const { scale, model, blocks } = search
+  // A heater over its limit for half an hour of slots is what the first moves may do.
+  const warmMinor = (scale * sizeOf(blocks.flatMap(({ runs }) => runs))) / Math.max(1, model.runs.length) / 2
+  for (let again = 0; again < 3; again++) {
+    search.limitPenalty.fill(scale)
+    anneal(search, { moves: 300 * blocks.length, warmMinor })
+    forgetPenalties(search)
+    if (repair(search, 30)) return true
+  }
+  return false
 }

@@ -28,14 +28,17 @@ export interface Settled {
 }
 
 /** Slots looked at by the search for each unit of effort: about a quarter of a second. */
-const STEPS = 30_000_000
+const STEPS = 35_000_000
 const PHASES = 32
 /** Up to so many blocks are shuffled one by one; more of them even out by themselves. */
 const FEW = 150
-const EPOCHS = 60
+const EPOCHS = 400
+/** A little dearer is good enough to go on from, for so many epochs. */
+const WANDER = 0.004
+const RETURN = 12
 /** Enough when three trials in turn have each closed the gap by less than this share of the cost. */
 const STILL = 1e-5
-const SHAVES = [0.03, 0.08, 0.15, 0.05, 0.01]
+const SHAVES = [0.03, 0.1, 0.3, 0.06, 0.15]
 const WARMS = [0.3, 1, 0.1]
 const KEEP = { sums: null, mayPass: false } as const
 
@@ -64,8 +67,12 @@ export function settle(settling: Settling): Settled {
     if (still === 3) break
   }
   if (!near()) best = polish(search, best)
-  for (let epoch = 0; epoch < EPOCHS && blocks.length <= FEW && search.steps < search.mostSteps && !near(); epoch++)
-    best = cheaper(best, annealed(search, best, epoch))
+  let here = best
+  for (let epoch = 0; epoch < EPOCHS && blocks.length <= FEW && search.steps < search.mostSteps && !near(); epoch++) {
+    const found = annealed(search, epoch % RETURN === 0 ? best : here, epoch)
+    if (found && found.cost < here.cost + WANDER * Math.abs(here.cost)) here = found
+    best = cheaper(best, found)
+  }
   return { ...best, bound: Math.min(balance.best.bound, best.cost) }
 }
 
@@ -131,10 +138,10 @@ function annealed(search: Search, from: Found, epoch: number): Found | null {
     search.targetW[term] = floorW + (peak - floorW) * (1 - share)
     // A stretch above the target is some windows long: each of them pays a part of the charge.
     for (let window = 0; window < search.windowPenalty.length; window++)
-      if (model.windowTerm[window] === term) search.windowPenalty[window] = 0.4 * priceMinorPerW
+      if (model.windowTerm[window] === term) search.windowPenalty[window] = 0.3 * priceMinorPerW
   })
   search.limitPenalty.fill(4 * search.scale)
-  anneal(search, { moves: 300 * search.blocks.length + 4_000, warmMinor: WARMS[epoch % WARMS.length]! * warmth(search) })
+  anneal(search, { moves: 300 * search.blocks.length, warmMinor: WARMS[epoch % WARMS.length]! * warmth(search) })
   return finished(search, search.loads)
 }
 
