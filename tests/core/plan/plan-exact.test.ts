@@ -60,7 +60,9 @@ describe('planRuns beside an exact solver', () => {
         expect(outcome.cost.totalMinor).toBeGreaterThanOrEqual(found.cheapest.value - slackMinor(found.cheapest.value))
         // The judge judges the same problem: its starts keep the rules and cost what it says.
         expect(brokenRules(problem, found.cheapest.starts)).toEqual([])
-        expect(Math.abs(costByTheMinute(problem, found.cheapest.starts) - found.cheapest.value)).toBeLessThan(slackMinor(found.cheapest.value))
+        expect(Math.abs(costByTheMinute(problem, found.cheapest.starts) - found.cheapest.value)).toBeLessThan(
+          slackMinor(found.cheapest.value),
+        )
         if (outcome.starts.length > 0) optima++
         served += problem.needs.length - outcome.unserved.length
         fewest += problem.needs.length - Math.round(found.fewest.value)
@@ -73,6 +75,5 @@ describe('planRuns beside an exact solver', () => {
     // Over all of them, what a heuristic may miss: one need in a hundred, and a hundredth of the cost.
     expect(served).toBeGreaterThanOrEqual(0.99 * fewest)
     expect(cost).toBeLessThanOrEqual(1.01 * optimum)
-    console.log({ optima, served, fewest, cost, optimum })
   })
 })

@@ -7,7 +7,7 @@ import type { Need, PlanOptions, PlanProblem, ServingChange } from '#lib/core/pl
 import { brokenRules, costByTheMinute } from '../../support/plan-rules.ts'
 import { problems } from './arbitrary.ts'
 
-const options: PlanOptions = { seed: 7, targetGapFraction: 0.002, effort: 0.3 }
+const options: PlanOptions = { seed: 7, targetGapFraction: 0.002, effort: 0.2 }
 const small = problems({ mostNeeds: 8, slots: 48 })
 const larger = problems({ mostNeeds: 40, slots: 96 })
 

@@ -45,13 +45,13 @@ function levelling({ width, rectangles }: (typeof fixture.instances)[number]): P
 describe.each(fixture.instances)('planRuns on rectangles cut without waste: $name', (instance) => {
   it('levels the load to within 2 % of the least, and proves it', () => {
     const problem = levelling(instance)
-    const outcome = planRuns(problem, { seed: 1, targetGapFraction: 0, effort: 4 })
+    const outcome = planRuns(problem, { seed: 1, targetGapFraction: 0.02, effort: 4 })
     if (outcome.status !== 'planned') throw new Error(JSON.stringify(outcome.faults))
     expect(outcome.unserved).toEqual([])
     expect(brokenRules(problem, outcome.starts)).toEqual([])
-    console.log(instance.name, instance.height, outcome.cost.totalMinor, outcome.bound.costAtLeastMinor)
     expect(outcome.bound.costAtLeastMinor).toBeLessThanOrEqual(instance.height * (1 + 1e-9))
-    expect(outcome.bound.costAtLeastMinor).toBeGreaterThan(0.999 * instance.height)
+    // The mean load is a bound of its own, up to rounding.
+    expect(outcome.bound.costAtLeastMinor).toBeGreaterThan(instance.height * (1 - 1e-9))
     expect(outcome.cost.totalMinor).toBeLessThanOrEqual(1.02 * instance.height)
   })
 })

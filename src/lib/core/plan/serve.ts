@@ -19,6 +19,7 @@ export interface Service {
 
 /** Slots looked at for each unit of effort: about a sixth of a second. */
 const STEPS = 20_000_000
+const STEPS_OF_A_PAIR = 20_000
 const PHASES = 24
 /** Up to so many blocks are shuffled one by one. */
 const FEW = 150
@@ -28,7 +29,14 @@ export function chooseServed(model: Model, random: () => number, effort: number)
   const excluded = excludedNeeds(model)
   const isIn = Uint8Array.from(model.runsOfNeed, (_, need) => (excluded.has(need) ? 0 : 1))
   const blocks = unitBlocks(model, (need) => isIn[need] === 1)
-  const search = beginSearch({ model, blocks, isIn, loads: noLoads(model), random, mostSteps: STEPS * effort })
+  const search = beginSearch({
+    model,
+    blocks,
+    isIn,
+    loads: noLoads(model),
+    random,
+    mostSteps: effort * Math.min(STEPS, STEPS_OF_A_PAIR * model.runs.length ** 2),
+  })
   // A pin that clashes with other pins could be served by a plan that drops those: it does not count here.
   const impossible = [...excluded.values()].filter((reason) => reason === 'no-allowed-start' || reason === 'too-large-alone').length
   const everybody = (): Service => ({ isIn, blocks, loads: search.loads, unservedAtLeast: impossible, excluded })

@@ -6,7 +6,7 @@ import { anneal } from './anneal.ts'
 import { advance, openBalance } from './balance.ts'
 import { alike, type Block } from './blocks.ts'
 import { copyLoads, noLoads, totalCost, type Loads } from './loads.ts'
-import type { Model } from './model.ts'
+import type { Model, ModelRun } from './model.ts'
 import { answer, priceCount, type Question } from './prices.ts'
 import { beginSearch, forgetPenalties, peaks, reinsert, repair, sweep, type Search } from './search.ts'
 
@@ -29,23 +29,33 @@ export interface Settled {
 
 /** Slots looked at by the search for each unit of effort: about a quarter of a second. */
 const STEPS = 35_000_000
+/** In a small building each pair of runs has so many to settle which of them goes first. */
+const STEPS_OF_A_PAIR = 40_000
 const PHASES = 32
 /** Up to so many blocks are shuffled one by one; more of them even out by themselves. */
 const FEW = 150
 const EPOCHS = 400
+const EPOCHS_OF_A_RUN = 12
 /** A little dearer is good enough to go on from, for so many epochs. */
 const WANDER = 0.004
 const RETURN = 12
 /** Enough when three trials in turn have each closed the gap by less than this share of the cost. */
 const STILL = 1e-5
-const SHAVES = [0.03, 0.1, 0.3, 0.06, 0.15]
+const SHAVES = [0.07, 0.25, 0.7, 0.15, 0.35]
 const WARMS = [0.3, 1, 0.1]
 const KEEP = { sums: null, mayPass: false } as const
 
 export function settle(settling: Settling): Settled {
   const { model, blocks, isIn, random, targetGapFraction, effort } = settling
   const question: Question = { blocks: alike(model, blocks), costShare: 1, skipCost: Infinity }
-  const search = beginSearch({ model, blocks, isIn, loads: noLoads(model), random, mostSteps: STEPS * effort })
+  const search = beginSearch({
+    model,
+    blocks,
+    isIn,
+    loads: noLoads(model),
+    random,
+    mostSteps: effort * Math.min(STEPS, STEPS_OF_A_PAIR * model.runs.length ** 2),
+  })
   const unpriced = answer(model, question, new Float64Array(priceCount(model, question)))
   if (unpriced.excess.every((excess) => excess <= 1e-9)) {
     for (const block of blocks) reinsert(search, block, KEEP)
@@ -68,8 +78,15 @@ export function settle(settling: Settling): Settled {
   }
   if (!near()) best = polish(search, best)
   let here = best
-  for (let epoch = 0; epoch < EPOCHS && blocks.length <= FEW && search.steps < search.mostSteps && !near(); epoch++) {
-    const found = annealed(search, epoch % RETURN === 0 ? best : here, epoch)
+  for (
+    let epoch = 0;
+    epoch < effort * Math.min(EPOCHS, EPOCHS_OF_A_RUN * model.runs.length) &&
+    blocks.length <= FEW &&
+    search.steps < search.mostSteps &&
+    !near();
+    epoch++
+  ) {
+    const found = annealed(search, epoch % RETURN === 0 ? best : here, epoch, effort)
     if (found && found.cost < here.cost + WANDER * Math.abs(here.cost)) here = found
     best = cheaper(best, found)
   }
@@ -128,20 +145,23 @@ function polish(search: Search, from: Found): Found {
   return best
 }
 
-/** Shuffles the best starts at a target a little below their maxima, warm or lukewarm by turns. */
-function annealed(search: Search, from: Found, epoch: number): Found | null {
+/** Shuffles starts at a target some part of a run's load below their maxima, warm or lukewarm by turns. */
+function annealed(search: Search, from: Found, epoch: number, effort: number): Found | null {
   const { model } = search
+  const runs = search.blocks.flatMap((block) => block.runs)
+  const mean = (of: (run: ModelRun) => number) => runs.reduce((sum, run) => sum + of(run), 0) / runs.length
   search.loads = copyLoads(from.loads)
-  const share = SHAVES[epoch % SHAVES.length]!
+  const lumpW = SHAVES[epoch % SHAVES.length]! * mean(({ powerW }) => powerW)
   peaks(model, search.loads.windowW).forEach((peak, term) => {
-    const { floorW, priceMinorPerW } = model.terms[term]!
-    search.targetW[term] = floorW + (peak - floorW) * (1 - share)
-    // A stretch above the target is some windows long: each of them pays a part of the charge.
-    for (let window = 0; window < search.windowPenalty.length; window++)
-      if (model.windowTerm[window] === term) search.windowPenalty[window] = 0.3 * priceMinorPerW
+    const { floorW, priceMinorPerW, firstWindow, windowCount } = model.terms[term]!
+    search.targetW[term] = Math.max(floorW, peak - lumpW)
+    // A run above the target touches several windows: together they pay about the charge.
+    const touched = Math.max(1, mean(({ worst }) => worst) * model.windowShare[firstWindow]!)
+    search.windowPenalty.fill((1.2 * priceMinorPerW) / touched, firstWindow, firstWindow + windowCount)
   })
   search.limitPenalty.fill(4 * search.scale)
-  anneal(search, { moves: 300 * search.blocks.length, warmMinor: WARMS[epoch % WARMS.length]! * warmth(search) })
+  const moves = Math.ceil(300 * Math.max(1, effort) * search.blocks.length)
+  anneal(search, { moves, warmMinor: WARMS[epoch % WARMS.length]! * warmth(search) })
   return finished(search, search.loads)
 }
 
