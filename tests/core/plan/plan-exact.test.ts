@@ -30,7 +30,7 @@ function exact(question: ExactQuestion): { readonly value: number; readonly star
 const slackMinor = (value: number) => 1e-5 * Math.max(1, Math.abs(value))
 
 function compare(problem: PlanProblem) {
-  const outcome = planRuns(problem, { seed: 3, targetGapFraction: 0, effort: 0.5 })
+  const outcome = planRuns(problem, { seed: 3, targetGapFraction: 0.0005, effort: 0.3 })
   if (outcome.status !== 'planned') throw new Error(JSON.stringify(outcome.faults))
   const left = new Set(outcome.unserved.map(({ needId }) => needId))
   const served = new Set(problem.needs.map(({ id }) => id).filter((id) => !left.has(id)))

@@ -27,6 +27,8 @@ export function anneal(search: Search, { moves, warmMinor }: Annealing): void {
   let warm = warmMinor
   for (let move = 0; move < moves && search.steps < search.mostSteps; move++) {
     const run = runs[Math.floor(random() * runs.length)]!
+    // Taking up and putting down count as well as looking.
+    search.steps += run.worst + 8
     if (runs.length > 1 && random() < 0.3) exchange(search, run, runs[Math.floor(random() * runs.length)]!, warm)
     else shiftOne(search, run, warm)
     warm *= fall

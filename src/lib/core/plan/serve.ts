@@ -53,12 +53,13 @@ export function chooseServed(model: Model, random: () => number, effort: number)
     forgetPenalties(search)
     if (blocks.every((block) => isPlaced(search, block) || reinsert(search, block, PASS)) && repair(search, 60)) return everybody()
   }
-  serveMany(search, balance.loads, sumPrices(model, balance.best.prices))
+  const leftAtLeast = Math.max(0, Math.ceil(balance.best.bound - 1e-6))
+  serveMany(search, balance.loads, sumPrices(model, balance.best.prices), leftAtLeast)
   return {
     isIn,
     blocks: unitBlocks(model, (need) => isIn[need] === 1),
     loads: search.loads,
-    unservedAtLeast: impossible + Math.max(0, Math.ceil(balance.best.bound - 1e-6)),
+    unservedAtLeast: impossible + leftAtLeast,
     excluded,
   }
 }
@@ -68,7 +69,7 @@ const sizeOf = (runs: readonly ModelRun[]): number => runs.reduce((sum, { powerW
 const isPlaced = ({ loads }: Search, block: Block): boolean => block.runs.every(({ index }) => loads.chosen[index]! >= 0)
 
 /** Two ways to fill up, the better of them filled further. */
-function serveMany(search: Search, balanced: Loads, sums: PriceSums): void {
+function serveMany(search: Search, balanced: Loads, sums: PriceSums, leftAtLeast: number): void {
   const { model, isIn } = search
   const wanted = [...isIn.keys()].filter((need) => isIn[need] === 1)
   const isPinned = (need: number) => model.runsOfNeed[need]!.some((run) => model.runs[run]!.pinned)
@@ -105,7 +106,7 @@ function serveMany(search: Search, balanced: Loads, sums: PriceSums): void {
     isIn.set(firstIn)
     search.loads = firstLoads
   }
-  serveMore(search, first.length < second.length ? first : second)
+  serveMore(search, first.length < second.length ? first : second, leftAtLeast)
 }
 
 /** Serves one need after the other, where a balanced plan has it if that fits, else at the price of what is scarce; returns who is left. */
@@ -143,12 +144,12 @@ function blocksByNeed(search: Search): Map<number, Block> {
   return blockOf
 }
 
-/** Forces one more in and repairs; keeps it where that ends well. */
-function serveMore(search: Search, left: number[]): void {
+/** Forces one more in and repairs; keeps it where that ends well. Stops where no more can be served. */
+function serveMore(search: Search, left: number[], leftAtLeast: number): void {
   const blockOf = blocksByNeed(search)
   for (let again = 0; again < 2; again++)
     for (const need of shuffle([...left], search.random)) {
-      if (search.steps >= search.mostSteps) return
+      if (search.steps >= search.mostSteps || left.length <= leftAtLeast) return
       const before = copyLoads(search.loads)
       search.isIn[need] = 1
       forgetPenalties(search)

@@ -28,7 +28,7 @@ export interface Settled {
 }
 
 /** Slots looked at by the search for each unit of effort: about a quarter of a second. */
-const STEPS = 35_000_000
+const STEPS = 45_000_000
 /** In a small building each pair of runs has so many to settle which of them goes first. */
 const STEPS_OF_A_PAIR = 40_000
 const PHASES = 32
