@@ -177,13 +177,20 @@ export function sweep(search: Search, judge: Judge): void {
   for (const block of shuffle([...search.blocks], search.random)) reinsert(search, block, judge)
 }
 
+/** Rounds without a new low in the blocks that pass something, after which a repair is given up. */
+const PATIENCE = 14
+
 /** Rounds over the blocks that pass something, until nothing does (`true`) or the rounds are over. */
 export function repair(search: Search, rounds: number): boolean {
   const judge: Judge = { sums: null, mayPass: true }
+  let fewest = Infinity
+  let still = 0
   for (let round = 0; round < rounds; round++) {
     const passing = blocksPassing(search)
     if (passing.length === 0) return true
-    if (search.steps >= search.mostSteps) return false
+    still = passing.length < fewest ? 0 : still + 1
+    fewest = Math.min(fewest, passing.length)
+    if (search.steps >= search.mostSteps || still === PATIENCE) return false
     raisePenalties(search)
     for (const block of shuffle(passing, search.random)) if (touchesPassed(search, block)) reinsert(search, block, judge)
   }

@@ -69,7 +69,7 @@ export function settle(settling: Settling): Settled {
   let before = Infinity
   for (let phase = 0; phase < PHASES * effort && search.steps < search.mostSteps && !near(); phase++) {
     advance(balance)
-    if (phase < 5 || phase % 2 === 0) continue
+    if (phase < 5 || phase % 3 !== 2) continue
     best = cheaper(best, finished(search, balance.loads))
     const gap = best.cost - balance.best.bound
     still = before - gap < STILL * Math.abs(best.cost) ? still + 1 : 0
