@@ -29,6 +29,7 @@ export type VisitId = Brand<string, 'VisitId'>
 export type MessageId = Brand<string, 'MessageId'>
 export type DigestId = Brand<string, 'DigestId'>
 export type FeedId = Brand<string, 'FeedId'>
+export type PlanId = Brand<string, 'PlanId'>
 
 export const parseOrganisationId = idParser<OrganisationId>()
 export const parsePersonId = idParser<PersonId>()
@@ -41,6 +42,7 @@ export const parseVisitId = idParser<VisitId>()
 export const parseMessageId = idParser<MessageId>()
 export const parseDigestId = idParser<DigestId>()
 export const parseFeedId = idParser<FeedId>()
+export const parsePlanId = idParser<PlanId>()
 
 /** A fresh random id of the type asked for, e.g. `newId<UnitId>()`. */
 export const newId = <Id extends string>(): Id => randomUUID() as string as Id

@@ -18,6 +18,8 @@ import type { TariffTable } from './tables/tariff.ts'
 import type { TariffVersionTable } from './tables/tariff-version.ts'
 import type { EvaluationTable } from './tables/evaluation.ts'
 import type { RunTable } from './tables/run.ts'
+import type { PlanTable } from './tables/plan.ts'
+import type { PlanStartTable } from './tables/plan-start.ts'
 import type { FlagTable } from './tables/flag.ts'
 import type { VisitTable } from './tables/visit.ts'
 import type { VisitFlagTable } from './tables/visit-flag.ts'
@@ -53,6 +55,8 @@ export interface Database {
   tariff_version: TariffVersionTable
   evaluation: EvaluationTable
   run: RunTable
+  plan: PlanTable
+  plan_start: PlanStartTable
   flag: FlagTable
   visit: VisitTable
   visit_flag: VisitFlagTable

@@ -9,6 +9,7 @@ import * as mailComplete from './0009-mail-complete.ts'
 import * as currentFigures from './0010-current-figures.ts'
 import * as tenantFeeds from './0011-tenant-feeds.ts'
 import * as tariffEditions from './0012-tariff-editions.ts'
+import * as plans from './0013-plans.ts'
 
 export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0001-accounts': accounts,
@@ -20,4 +21,5 @@ export const MIGRATIONS: Readonly<Record<string, Migration>> = {
   '0010-current-figures': currentFigures,
   '0011-tenant-feeds': tenantFeeds,
   '0012-tariff-editions': tariffEditions,
+  '0013-plans': plans,
 }

@@ -101,9 +101,10 @@ async function removeFeedback(trx: Transaction<Database>, endedBefore: string): 
   return Number(result.numAffectedRows ?? 0)
 }
 
-/** With the expected runs of the same days; planned and measured ones are records of what was done. */
+/** With the expected runs and the agreed starts of the same days; measured runs are records of what was done. */
 async function removeEvaluations(trx: Transaction<Database>, before: string): Promise<number> {
   await trx.deleteFrom('run').where('kind', '=', 'expected').where('day', '<', before).execute()
+  await trx.deleteFrom('plan_start').where('day', '<', before).execute()
   const result = await trx.deleteFrom('evaluation').where('day', '<', before).executeTakeFirst()
   return Number(result.numDeletedRows)
 }

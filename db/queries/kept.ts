@@ -71,6 +71,7 @@ export async function removeTraces(db: OrgTrx, traces: Traces): Promise<void> {
   await db.deleteFrom('preference').where('tenancy_id', '=', tenancyId).execute()
   await db.deleteFrom('feedback').where('tenancy_id', '=', tenancyId).execute()
   await db.deleteFrom('calendar_feed').where('tenancy_id', '=', tenancyId).execute()
+  await db.deleteFrom('plan_start').where('tenancy_id', '=', tenancyId).execute()
   await db
     .deleteFrom('message')
     .where('to_email', '=', email.toLowerCase())

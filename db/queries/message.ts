@@ -3,7 +3,7 @@ import type { Transaction } from 'kysely'
 import type { MessageKind } from '../enums.ts'
 import { type MessageId, newId, type PersonId, type PropertyId, type TenancyId, type UnitId } from '../ids.ts'
 import { toJson } from '../json.ts'
-import type { OrgTrx } from '../org-db.ts'
+import type { OrgDb, OrgTrx } from '../org-db.ts'
 import type { Database } from '../schema.ts'
 
 export interface Attachment {
@@ -114,4 +114,18 @@ export async function findLastCause(
     .limit(1)
     .executeTakeFirst()
   return row ? { cause: row.cause, queuedAtMs: row.queued_at_ms } : null
+}
+
+/** Whose tenancies a letter of this kind and cause was written to, whatever became of it. */
+export async function listToldTenancies(
+  db: OrgDb,
+  { kind, cause }: { readonly kind: MessageKind; readonly cause: string },
+): Promise<ReadonlySet<TenancyId>> {
+  const rows = await db
+    .selectFrom('message')
+    .where('message.kind', '=', kind)
+    .where('message.cause', '=', cause)
+    .select('message.tenancy_id')
+    .execute()
+  return new Set(rows.flatMap((row) => (row.tenancy_id ? [row.tenancy_id] : [])))
 }

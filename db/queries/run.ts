@@ -84,6 +84,28 @@ export async function removeExpectedRuns(db: OrgTrx, unitIds: readonly UnitId[],
     .execute()
 }
 
+/** Moves the expected runs of a need to another start, as long as before; a run that is no longer there moves nothing. */
+export async function moveExpectedRun(
+  db: OrgTrx,
+  need: { readonly unitId: UnitId; readonly day: string; readonly readyByAtMs: number },
+  startsAtMs: number,
+): Promise<void> {
+  const rows = await db
+    .selectFrom('run')
+    .where('run.unit_id', '=', need.unitId)
+    .where('run.day', '=', need.day)
+    .where('run.kind', '=', 'expected')
+    .where('run.ready_by_at_ms', '=', Math.round(need.readyByAtMs))
+    .select(['run.id', 'run.starts_at_ms', 'run.ends_at_ms', 'run.longest_ends_at_ms'])
+    .execute()
+  for (const row of rows) {
+    const laterMs = Math.round(startsAtMs) - row.starts_at_ms
+    const longest = row.longest_ends_at_ms === null ? null : row.longest_ends_at_ms + laterMs
+    const moved = { starts_at_ms: row.starts_at_ms + laterMs, ends_at_ms: row.ends_at_ms + laterMs, longest_ends_at_ms: longest }
+    await db.updateTable('run', moved).where('id', '=', row.id).execute()
+  }
+}
+
 export async function addRun(db: OrgTrx, run: Run): Promise<void> {
   await db
     .insertInto('run', {

@@ -4,6 +4,7 @@ import { clock } from './clock.ts'
 import { digest } from './digest.ts'
 import { flag } from './flag.ts'
 import { people } from './people.ts'
+import { plan } from './plan.ts'
 import { post } from './post.ts'
 import { property } from './property.ts'
 import { roster } from './roster.ts'
@@ -11,4 +12,4 @@ import { tariff } from './tariff.ts'
 import { tenancy } from './tenancy.ts'
 import { tenant } from './tenant.ts'
 
-export const server = { account, clock, digest, flag, people, post, property, roster, tariff, tenancy, tenant }
+export const server = { account, clock, digest, flag, people, plan, post, property, roster, tariff, tenancy, tenant }

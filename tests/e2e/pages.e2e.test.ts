@@ -16,6 +16,8 @@ const PAGES = [
       `${HOME}/`,
       `${HOUSE}/`,
       `${HOUSE}/calendar`,
+      `${HOUSE}/plan/`,
+      `${HOUSE}/plan/restart`,
       `${HOUSE}/units`,
       `${HOUSE}/units/5C`,
       `${HOUSE}/clock-change`,

@@ -1,8 +1,9 @@
-/** Reads what an evaluation needs: a whole property in seven statements whatever its size, or one unit alone. */
+/** Reads what an evaluation needs: a whole property in eight statements whatever its size, or one unit alone. */
 import type { TenancyId, UnitId } from '#db/ids.ts'
 import type { OrgDb } from '#db/org-db.ts'
 import { type AnsweredDay, listAnsweredDays } from '#db/queries/feedback.ts'
 import { currentHardware, type HardwareRecord, listCurrentHardware } from '#db/queries/hardware.ts'
+import { listStandingStarts, type PlanStart } from '#db/queries/plan.ts'
 import { currentPreferences, findPreference, type Preference } from '#db/queries/preference.ts'
 import type { Property } from '#db/queries/property.ts'
 import { findTariff } from '#db/queries/tariff.ts'
@@ -10,6 +11,7 @@ import { listTenancies, listTenanciesBetween, tenancyCovers, type Tenancy } from
 import { listUnits, type Unit } from '#db/queries/unit.ts'
 import { addDays, civilOf } from '#lib/core/time/civil.ts'
 import type { Day } from '#lib/core/time/types.ts'
+import { MS_PER_MIN } from '#lib/core/units.ts'
 import { dayContext } from './day-context.ts'
 import { DISAGREEMENT } from './disagreement.ts'
 import type { DayContext, Site, UnitHardware, Wants } from './types.ts'
@@ -71,6 +73,7 @@ export async function propertyInputs(db: OrgDb, asked: Horizon): Promise<Propert
   const hardware = await listCurrentHardware(db, id)
   const tenancies = await listTenanciesBetween(db, id, { fromDay: frame.fromDay, toDay: frame.toDay })
   const preferences = await currentPreferences(db, id)
+  const agreed = byTenancy(await listStandingStarts(db, id, frame))
   const answers = byTenancy(await listAnsweredDays(db, { propertyId: id }, addDays(frame.fromDay, -DISAGREEMENT.lookBackDays)))
   const byUnit = new Map<UnitId, Tenancy[]>()
   for (const tenancy of tenancies) byUnit.set(tenancy.unitId, [...(byUnit.get(tenancy.unitId) ?? []), tenancy])
@@ -79,7 +82,7 @@ export async function propertyInputs(db: OrgDb, asked: Horizon): Promise<Propert
     units: units.map((unit) => ({
       unit,
       hardware: toHardware(hardware.get(unit.id) ?? null),
-      wants: frame.contexts.map((context) => wantsOn(context.day, byUnit.get(unit.id) ?? [], preferences)),
+      wants: frame.contexts.map((context) => wantsOn(context, { tenancies: byUnit.get(unit.id) ?? [], preferences, agreed })),
       answers: answersOf(livingOn(frame.fromDay, byUnit.get(unit.id) ?? []), answers),
     })),
   }
@@ -94,7 +97,8 @@ export async function unitInputs(db: OrgDb, asked: Horizon, unit: Unit): Promise
     const preference = await findPreference(db, tenancy.id)
     if (preference) preferences.set(tenancy.id, preference)
   }
-  const wants = frame.contexts.map((context) => wantsOn(context.day, tenancies, preferences))
+  const agreed = byTenancy((await listStandingStarts(db, asked.property.id, frame)).filter((start) => start.unitId === unit.id))
+  const wants = frame.contexts.map((context) => wantsOn(context, { tenancies, preferences, agreed }))
   const said = byTenancy(await listAnsweredDays(db, { unitId: unit.id }, addDays(frame.fromDay, -DISAGREEMENT.lookBackDays)))
   return { ...frame, units: [{ unit, hardware, wants, answers: answersOf(livingOn(frame.fromDay, tenancies), said) }] }
 }
@@ -105,23 +109,40 @@ const toHardware = (record: HardwareRecord | null): UnitHardware | null =>
 const livingOn = (day: Day, tenancies: readonly Tenancy[]): Tenancy | null =>
   tenancies.find((tenancy) => tenancyCovers(tenancy, day)) ?? null
 
-type AnswersByTenancy = ReadonlyMap<TenancyId, readonly AnsweredDay[]>
+type ByTenancy<Row> = ReadonlyMap<TenancyId, readonly Row[]>
 
-function byTenancy(answers: readonly AnsweredDay[]): AnswersByTenancy {
-  const found = new Map<TenancyId, AnsweredDay[]>()
-  for (const answer of answers) {
-    const known = found.get(answer.tenancyId)
-    if (known) known.push(answer)
-    else found.set(answer.tenancyId, [answer])
+function byTenancy<Row extends { readonly tenancyId: TenancyId }>(rows: readonly Row[]): ByTenancy<Row> {
+  const found = new Map<TenancyId, Row[]>()
+  for (const row of rows) {
+    const known = found.get(row.tenancyId)
+    if (known) known.push(row)
+    else found.set(row.tenancyId, [row])
   }
   return found
 }
 
-const answersOf = (tenancy: Tenancy | null, answers: AnswersByTenancy): readonly AnsweredDay[] => (tenancy && answers.get(tenancy.id)) ?? []
+const answersOf = (tenancy: Tenancy | null, answers: ByTenancy<AnsweredDay>): readonly AnsweredDay[] =>
+  (tenancy && answers.get(tenancy.id)) ?? []
 
-function wantsOn(day: Day, tenancies: readonly Tenancy[], preferences: ReadonlyMap<TenancyId, Preference>): Wants {
+interface Known {
+  readonly tenancies: readonly Tenancy[]
+  readonly preferences: ReadonlyMap<TenancyId, Preference>
+  readonly agreed: ByTenancy<PlanStart>
+}
+
+function wantsOn({ day, startsAtMs }: DayContext, { tenancies, preferences, agreed }: Known): Wants {
   const tenancy = livingOn(day, tenancies)
   if (!tenancy) return { kind: 'nobody' }
   const preference = preferences.get(tenancy.id)
-  return preference ? { kind: 'week', week: preference.week, willing: preference.willing } : { kind: 'not-said' }
+  if (!preference) return { kind: 'not-said' }
+  const starts = (agreed.get(tenancy.id) ?? []).filter((start) => start.day === day)
+  const elapsed = (instantMs: number) => (instantMs - startsAtMs) / MS_PER_MIN
+  return {
+    kind: 'week',
+    week: preference.week,
+    willing: preference.willing,
+    ...(starts.length > 0
+      ? { agreed: starts.map((start) => ({ readyByMin: elapsed(start.readyByAtMs), startMin: elapsed(start.startsAtMs) })) }
+      : {}),
+  }
 }

@@ -47,9 +47,21 @@ export interface UnitHardware {
   readonly recordedAtMs: number
 }
 
+/** Elapsed minutes of the day. */
+export interface AgreedStart {
+  readonly readyByMin: number
+  readonly startMin: number
+}
+
 /** What a tenancy wants, or why nothing is known or wanted. */
 export type Wants =
-  | { readonly kind: 'week'; readonly week: Preference['week']; readonly willing: Preference['willing'] }
+  | {
+      readonly kind: 'week'
+      readonly week: Preference['week']
+      readonly willing: Preference['willing']
+      /** Starts that an accepted plan agreed with them for this day; left out where there is none. */
+      readonly agreed?: readonly AgreedStart[]
+    }
   | { readonly kind: 'nobody' }
   | { readonly kind: 'not-said' }
 

@@ -7,7 +7,7 @@ import { elapsedOf, offsetMin } from '#lib/core/time/civil.ts'
 import type { MinuteInterval } from '#lib/core/time/types.ts'
 import { MIN_PER_DAY } from '#lib/core/units.ts'
 import type { Preference } from '#db/queries/preference.ts'
-import type { DayContext, Site, UnitHardware, Wants } from './types.ts'
+import type { AgreedStart, DayContext, Site, UnitHardware, Wants } from './types.ts'
 
 interface Moment {
   readonly site: Pick<Site, 'zone' | 'supplyVoltageV'>
@@ -53,20 +53,31 @@ interface UnitCase extends Moment {
   readonly duration: DurationOutcome
   readonly week: Preference['week']
   readonly willing: Preference['willing']
+  readonly agreed?: readonly AgreedStart[]
 }
 
 /** Whose showers nobody has told, and who is not there, wants none. */
-export const wantedOf = (wants: Wants | undefined): Pick<UnitCase, 'week' | 'willing'> =>
-  wants?.kind === 'week' ? { week: wants.week, willing: wants.willing } : { week: [], willing: [] }
+export const wantedOf = (wants: Wants | undefined): Pick<UnitCase, 'week' | 'willing' | 'agreed'> =>
+  wants?.kind === 'week'
+    ? { week: wants.week, willing: wants.willing, ...(wants.agreed ? { agreed: wants.agreed } : {}) }
+    : { week: [], willing: [] }
 
-export const unitDayOf = ({ site, context, hardware, duration, week, willing }: UnitCase): UnitDay => ({
-  tank: hardware.installation.load.tank,
-  supplyVoltageV: site.supplyVoltageV,
-  inletC: context.inletC,
-  runs: runsOf(hardware, duration, { site, context }),
-  needs: needsOf(week, { site, context }),
-  willing: willingOf(willing, { site, context }),
-  // Left out of ordinary days, so that equal days are equal to the memo too.
-  ...(context.dayMin === MIN_PER_DAY ? {} : { lengthMin: context.dayMin }),
-  start: { kind: 'periodic' },
-})
+export function unitDayOf({ site, context, hardware, duration, week, willing, agreed }: UnitCase): UnitDay {
+  const needs = needsOf(week, { site, context })
+  return {
+    tank: hardware.installation.load.tank,
+    supplyVoltageV: site.supplyVoltageV,
+    inletC: context.inletC,
+    runs: runsOf(hardware, duration, { site, context }),
+    needs,
+    willing: willingOf(willing, { site, context }),
+    ...(agreed ? { agreedStartMin: needs.map((need) => agreedFor(agreed, need.readyByMin)) } : {}),
+    // Left out of ordinary days, so that equal days are equal to the memo too.
+    ...(context.dayMin === MIN_PER_DAY ? {} : { lengthMin: context.dayMin }),
+    start: { kind: 'periodic' },
+  }
+}
+
+/** A need at another time is another need: what was agreed does not hold for it. */
+const agreedFor = (agreed: readonly AgreedStart[], readyByMin: number): number | null =>
+  agreed.find((one) => one.readyByMin === readyByMin)?.startMin ?? null

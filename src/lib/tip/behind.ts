@@ -12,6 +12,7 @@ export function behindOf(needs: readonly NeedOutcome[], { at, pressed }: { reado
   if (!tightest) return ''
   if (!pressed) return switchWords(needs, at)
   const run = `Your timer runs at least ${Math.floor(tightest.chosenRunMin)} minutes`
+  if (needs.some((need) => need.agreed)) return 'The heaters of the house take turns: this is the start agreed for yours.'
   const spare = spareMin(tightest)
   const reach = spare < TIGHT_MIN ? 'that just reaches it' : `${spare} more than the showers need`
   // A start that could not be later than the shower itself leaves nothing to warn of.

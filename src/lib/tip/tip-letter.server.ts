@@ -24,7 +24,7 @@ export async function tipLetter(tipFor: TipFor, organisationId: OrganisationId) 
   const strip = await dayStripPng(stripDayOf(evaluation), STRIP_PX)
   const call = landlords.map(({ name, email }) => `${name} (${email})`).join(' or ') || 'your landlord'
   const { text, html } = letter({
-    title: tip.figure && pressed ? `Press the timer by ${tip.figure}.` : tip.subject,
+    title: tip.figure && pressed ? `Press the timer ${tip.agreed ? 'at' : 'by'} ${tip.figure}.` : tip.subject,
     paragraphs: [
       ...(pressed ? [] : [tip.action]),
       ...tip.lines,

@@ -25,6 +25,8 @@ export interface Tip {
   /** Why it is so, in one line; empty when there is nothing to say. */
   readonly behind: string
   readonly short: boolean
+  /** The figure is a start agreed on, not the latest one. */
+  readonly agreed?: true
 }
 
 /** Minute of day -> "06:05", with "the evening before" where it is so. */
@@ -79,17 +81,22 @@ function clockedTip({ needs, at, when, told }: Told): Tip {
 }
 
 function pressedTip({ needs, at, when, passedMin, told }: Told): Tip {
-  const startByMin = needs.find((need) => need.startByMin !== null)?.startByMin ?? null
-  if (startByMin === null)
+  const first = needs.find((need) => need.startByMin !== null)
+  const startByMin = first?.startByMin ?? null
+  if (!first || startByMin === null)
     return { ...told, subject: `No hot water for a shower ${when}`, figure: null, action: 'The heater cannot make it.' }
   const late = startByMin < passedMin
   return {
     ...told,
-    subject: `Press the timer by ${at(startByMin)} ${when}${told.short ? ': the water will be short' : ''}`,
+    subject: `Press the timer ${byOrAt(first)} ${at(startByMin)} ${when}${told.short ? ': the water will be short' : ''}`,
     figure: at(startByMin),
-    action: late ? 'That has passed: press now if it is not running; the end may turn cool.' : 'Press the timer by then.',
+    ...(first.agreed ? { agreed: true as const } : {}),
+    action: late ? 'That has passed: press now if it is not running; the end may turn cool.' : `Press the timer ${byOrAt(first)} then.`,
   }
 }
+
+/** Where heaters take turns, earlier is as wrong as later. */
+export const byOrAt = ({ agreed }: Pick<NeedOutcome, 'agreed'>): 'by' | 'at' => (agreed ? 'at' : 'by')
 
 interface Words {
   readonly at: At
@@ -102,7 +109,7 @@ const showers = (count: number, minutes: number): string =>
 
 function needLines(outcome: NeedOutcome, { at, pressed, several }: Words): readonly string[] {
   const { need } = outcome
-  const press = pressed && several && outcome.startByMin !== null ? `Press by ${at(outcome.startByMin)}. ` : ''
+  const press = pressed && several && outcome.startByMin !== null ? `Press ${byOrAt(outcome)} ${at(outcome.startByMin)}. ` : ''
   if (outcome.status === 'ready') {
     return [
       `${press}Hot from ${at(outcome.readyAtMin ?? need.readyByMin)} for ${showers(need.count, need.minutesEach)}, until ${at(needEndMin(need))}.`,

@@ -33,7 +33,8 @@ export function needOutcome({ week, plans, dayIndex, index, shape }: NeedCase): 
   const impossible = cannotEver(day, need)
   const required = requiredMin(day, { ready, shape: impossible ? null : shape })
   const chosenRunMin = day.runs.kind === 'pressed' ? day.runs.guaranteedMin : clockedMin({ cycle, index, need, on: day.runs.onIntervals })
-  const own = runOf({ day, cycle, index, need, choice: plan.choices[index] })
+  const choice = plan.choices[index]
+  const own = runOf({ day, cycle, index, need, choice })
   const status = ready ? 'ready' : impossible || required === null ? 'impossible' : 'short'
   // A short run may be long enough and yet come at the wrong hour: it is short by at least a minute.
   const shortfallMin = status === 'short' && required !== null ? Math.max(1, Math.ceil(required - chosenRunMin)) : 0
@@ -56,9 +57,10 @@ export function needOutcome({ week, plans, dayIndex, index, shape }: NeedCase): 
     chosenRunMin,
     shortfallMin,
     startByMin: own?.startMin ?? null,
+    ...(choice && choice.startMin < choice.latestStartMin ? { agreed: true as const } : {}),
     runWindow: own && {
-      earliestStartMin: plan.choices[index]?.earliestStartMin() ?? own.startMin,
-      latestStartMin: own.startMin,
+      earliestStartMin: Math.min(choice?.earliestStartMin() ?? own.startMin, own.startMin),
+      latestStartMin: choice?.latestStartMin ?? own.startMin,
       endMin: day.runs.kind === 'pressed' ? own.startMin + longestMin : own.endMin,
     },
     run: own,

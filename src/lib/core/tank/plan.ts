@@ -6,7 +6,7 @@ import { type Kept, keep, servedNeeds, servesEvery, type Week } from './kept.ts'
 import { type RequiredRuns, type RunShape, runsByNeed, runsOf } from './required-run.ts'
 import { countedShape, servingShape } from './serves-week.ts'
 import { simulate, type TankState } from './simulate.ts'
-import { latestStart, type StartChoice } from './start-by.ts'
+import { agreedStart, latestStart, type StartChoice } from './start-by.ts'
 import type { UnitDay } from './types.ts'
 
 /** The state at a cycle's start, the on-intervals, and each need's start where a person starts it. */
@@ -94,8 +94,8 @@ function chosenFrom(week: Week, states: readonly TankState[]): Told {
   const durationMin = (index: number): number => countedShape(week.days[index] as UnitDay, 0).durationMin
   const choices = week.chain.cycles.map((cycle, index) => {
     if (week.days[index]?.runs.kind === 'clocked') return cycle.needs.map(() => undefined)
-    const { willing } = week.days[index] as UnitDay
-    return chooseStarts({ cycle, state: states[index] as TankState, durationMin: durationMin(index), willing })
+    const { willing, agreedStartMin: agreed = [] } = week.days[index] as UnitDay
+    return chooseStarts({ cycle, state: states[index] as TankState, durationMin: durationMin(index), willing, agreed })
   })
   return { choices, kept: keep(week, (_, index) => pressed(choices[index] ?? [], durationMin(index)), states[0]) }
 }
@@ -110,7 +110,15 @@ const breaksItsWord = ({ chain }: Week, { choices, kept }: Told): boolean =>
 const shapedChoices = ({ days, chain }: Week, endFraction: number): readonly Choices[] =>
   chain.cycles.map((cycle, index) =>
     runsByNeed(cycle, countedShape(days[index] as UnitDay, endFraction)).map(
-      (own, at) => own && { startMin: own.startMin, servedMin: servedWhole(cycle, at), serves: true, earliestStartMin: () => own.startMin },
+      (own, at) =>
+        own && {
+          startMin: own.startMin,
+          latestStartMin: own.startMin,
+          servedMin: servedWhole(cycle, at),
+          serves: true,
+          earliestStartMin: () => own.startMin,
+          servesAsMuch: (startMin: number) => startMin === own.startMin,
+        },
     ),
   )
 
@@ -124,15 +132,18 @@ interface Starts {
   readonly state: TankState
   readonly durationMin: number
   readonly willing: readonly MinuteInterval[]
+  /** In step with the needs. */
+  readonly agreed: readonly (number | null)[]
 }
 
-/** The latest start of each need in turn, each from the state that the one before leaves; `undefined` when a run still on covers it, or nobody presses. */
-function chooseStarts({ cycle, state: first, durationMin, willing }: Starts): Choices {
+/** The agreed or latest start of each need in turn, each from the state that the one before leaves; `undefined` when a run still on covers it, or nobody presses. */
+function chooseStarts({ cycle, state: first, durationMin, willing, agreed }: Starts): Choices {
   let state = first
   let earlier: readonly MinuteInterval[] = []
   return cycle.needs.map((need, index) => {
     const covered = earlier.some((on) => on.endMin >= needEndMin(need))
-    const choice = covered ? undefined : latestStart({ cycle, index, state, durationMin, earlier, willing })
+    const latest = covered ? undefined : latestStart({ cycle, index, state, durationMin, earlier, willing })
+    const choice = latest && agreedStart(latest, agreed[index])
     const on = choice ? [...earlier, ...pressed([choice], durationMin)] : earlier
     if (index < cycle.needs.length - 1) {
       state = simulate(cycle.tank, state, { startMin: earliestMin(cycle, index), endMin: needEndMin(need), on, draws: drawsOf(need) }).end

@@ -12,12 +12,16 @@ import type { ShowerNeed } from './types.ts'
 
 export interface StartChoice {
   readonly startMin: number
+  /** Later than this it serves less; `startMin` itself unless an earlier one was agreed on. */
+  readonly latestStartMin: number
   readonly servedMin: number
   readonly serves: boolean
   /** How early the same run may be started; worked out when asked, since a week asks for its last turn only. */
   readonly earliestStartMin: () => number
+  /** Whether an earlier start serves as much, wherever it lies. */
+  readonly servesAsMuch: (startMin: number) => boolean
 }
-type Chosen = Omit<StartChoice, 'earliestStartMin'>
+type Chosen = Omit<StartChoice, 'earliestStartMin' | 'latestStartMin' | 'servesAsMuch'>
 
 interface Before {
   readonly cycle: Cycle
@@ -56,8 +60,19 @@ export function latestStart({ cycle, index, state, durationMin, earlier, willing
   const hours = hoursAround(best.startMin, { willing, firstStart, lastStart: Math.ceil(needEndMin(need)) - 1 })
   if (!hours) return undefined
   const chosen = hours.startMin === best.startMin ? best : chosenAt(need, hours.startMin, served)
-  return { ...chosen, earliestStartMin: () => earliest(chosen, { firstStart: Math.max(firstStart, hours.fromMin), outlastsMin, served }) }
+  const fromMin = Math.max(firstStart, hours.fromMin)
+  return {
+    ...chosen,
+    latestStartMin: chosen.startMin,
+    earliestStartMin: () => earliest(chosen, { firstStart: fromMin, outlastsMin, served }),
+    servesAsMuch: (startMin) =>
+      startMin >= firstStart && startMin <= chosen.startMin && served(startMin) >= chosen.servedMin - SAME_SERVED_MIN,
+  }
 }
+
+/** A start that was agreed on, while it serves as much: an agreement never leaves anybody cold. */
+export const agreedStart = (latest: StartChoice, agreedMin: number | null | undefined): StartChoice =>
+  agreedMin !== null && agreedMin !== undefined && latest.servesAsMuch(agreedMin) ? { ...latest, startMin: agreedMin } : latest
 
 const chosenAt = (need: ShowerNeed, startMin: number, served: Search['served']): Chosen => {
   const servedMin = served(startMin)

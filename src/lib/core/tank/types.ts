@@ -65,6 +65,11 @@ export interface UnitDay {
   readonly willing: readonly MinuteInterval[]
   /** Minutes from this local midnight to the next: 1,380 or 1,500 where the clock changes; 1,440 if left out. */
   readonly lengthMin?: number
+  /**
+   * In step with the needs: the start agreed with whoever presses, elapsed minutes. It holds while it serves as much as the
+   * latest start would; `null`, or one that no longer does, is the latest start.
+   */
+  readonly agreedStartMin?: readonly (number | null)[]
   /** Where the day starts from: what the days before it leave, a cold tank, or given node temperatures. */
   readonly start: { readonly kind: 'periodic' } | { readonly kind: 'cold' } | { readonly kind: 'nodes'; readonly nodesC: readonly number[] }
 }
@@ -82,8 +87,13 @@ export interface NeedOutcome {
   readonly chosenRunMin: number
   /** By how much the run is too short; 0 when ready. */
   readonly shortfallMin: number
-  /** Latest start that meets the need (or serves most of it when short); `null` when nothing helps. Elapsed minutes from midnight, may be negative. */
+  /**
+   * Start that meets the need (or serves most of it when short): the one agreed on while that holds, or the latest; `null` when
+   * nothing helps. Elapsed minutes from midnight, may be negative.
+   */
   readonly startByMin: number | null
+  /** The start is one that was agreed on, not the latest. */
+  readonly agreed?: true
   /** From the earliest to the latest sensible start, to its end. */
   readonly runWindow: { readonly earliestStartMin: number; readonly latestStartMin: number; readonly endMin: number } | null
   /** The run assumed in the simulation. */
