@@ -43,7 +43,7 @@ const unitDay = fc
   })
 
 describe('servedAt', () => {
-  it('serves all at the start-by, and less when nothing is pressed before the shower, of a tank that holds no second morning', () => {
+  it('serves all at the start-by, and as a rule less when nothing is pressed before the shower is over', () => {
     let ready = 0
     let colder = 0
     fc.assert(
@@ -53,15 +53,13 @@ describe('servedAt', () => {
         ready++
         const at = (startMin: number) => servedAt([day], { day: 0, need: 0, startMin })
         expect(at(outcome.run.startMin)?.servesAll).toBe(true)
-        const late = at(outcome.need.readyByMin + 60)
-        expect(late?.minutesServed ?? 0).toBeLessThanOrEqual(outcome.minutesWanted + 1e-9)
-        if (late?.servesAll === false) colder++
+        if (at(outcome.need.readyByMin + 60)?.servesAll === false) colder++
       }),
       { numRuns: 60 },
     )
     expect(ready).toBeGreaterThan(20)
-    // Most of these timers run long enough to leave the next morning's water too: a press that is late for one day is not felt.
-    expect(colder).toBeGreaterThan(5)
+    // Tanks that hold two mornings' water need no run on the day itself; most of these do not.
+    expect(colder).toBeGreaterThan(ready / 2)
   })
   it('has no answer where a clock switches, or for a need that is not there', () => {
     const [day] = fc.sample(unitDay, 1) as [UnitDay]

@@ -12,6 +12,8 @@ import type { UnitDay } from './types.ts'
 /** The state at a cycle's start, the on-intervals, and each need's start where a person starts it. */
 export interface Plan {
   readonly state: TankState
+  /** The coldest state for which its starts were chosen. */
+  readonly coldestState: TankState
   readonly on: readonly MinuteInterval[]
   readonly choices: Choices
   /** Minutes served of each need when the whole week's runs are kept. */
@@ -28,6 +30,8 @@ interface Told {
   /** Of each day. */
   readonly choices: readonly Choices[]
   readonly kept: Kept
+  /** At each cycle's start, where the choices were made from. */
+  readonly states: readonly TankState[]
 }
 
 export function plansOf(week: Week, required: RequiredRuns): WeekPlans {
@@ -36,6 +40,7 @@ export function plansOf(week: Week, required: RequiredRuns): WeekPlans {
   const { before, on } = told.kept.course
   const promised = chain.cycles.map((_, day): Plan => ({
     state: before[day] as TankState,
+    coldestState: told.states[day] as TankState,
     on: on[day] ?? [],
     choices: told.choices[day] ?? [],
     served: told.kept.served[day] ?? [],
@@ -63,7 +68,7 @@ function tell(week: Week, required: RequiredRuns): Told {
   const first = chosenFrom(week, sufficient(week, required))
   if (servesEvery(week, first.kept) || week.days.every(({ runs }) => runs.kind === 'clocked')) return first
   const shape = servingShape(week, first.kept.course.before[0])
-  if (shape) return { choices: shapedChoices(week, shape.endFraction), kept: shape.kept }
+  if (shape) return { choices: shapedChoices(week, shape.endFraction), kept: shape.kept, states: shape.kept.course.before }
   let best = first
   for (let again = 1; again < MOST_CHOICES && breaksItsWord(week, best); again++) {
     const other = chosenFrom(week, best.kept.course.before)
@@ -97,7 +102,7 @@ function chosenFrom(week: Week, states: readonly TankState[]): Told {
     const { willing, agreedStartMin: agreed = [] } = week.days[index] as UnitDay
     return chooseStarts({ cycle, state: states[index] as TankState, durationMin: durationMin(index), willing, agreed })
   })
-  return { choices, kept: keep(week, (_, index) => pressed(choices[index] ?? [], durationMin(index)), states[0]) }
+  return { choices, kept: keep(week, (_, index) => pressed(choices[index] ?? [], durationMin(index)), states[0]), states }
 }
 
 /** Whether a start was chosen that serves its need, and does not in the week as those starts leave it. */

@@ -1,7 +1,6 @@
-/** What any start of one need would serve, allowed or not: with the run that can be counted on, kept the whole week. */
+/** What any start of one need would serve, allowed or not: from the state that starts are chosen for, with the run that can be counted on. */
 import { chainOf } from './chain.ts'
-import { minutesWanted, servesAll } from './cycle.ts'
-import { keep } from './kept.ts'
+import { minutesWanted, run, servedByNeed, servesAll } from './cycle.ts'
 import { plansOf } from './plan.ts'
 import { requiredRuns } from './required-run.ts'
 import type { UnitDay } from './types.ts'
@@ -26,20 +25,12 @@ export function servedAt(days: readonly UnitDay[], { day, need, startMin }: Star
   const cycle = chain.cycles[day]
   const wanted = cycle?.needs[need]
   if (!cycle || !wanted || runs?.kind !== 'pressed') return null
-  const week = { days, chain }
-  const { promised } = plansOf(week, requiredRuns(days, chain))
-  const kept = keep(
-    week,
-    (_, index) => {
-      const own = days[index]?.runs
-      if (own?.kind !== 'pressed') return []
-      return (promised[index]?.choices ?? []).flatMap((choice, at) => {
-        const from = index === day && at === need ? startMin : choice?.startMin
-        return from === undefined ? [] : [{ startMin: from, endMin: from + own.guaranteedMin }]
-      })
-    },
-    promised[0]?.state,
-  )
-  const minutesServed = kept.served[day]?.[need] ?? 0
+  const plan = plansOf({ days, chain }, requiredRuns(days, chain)).promised[day]
+  if (!plan) return null
+  const on = plan.choices.flatMap((choice, index) => {
+    const at = index === need ? startMin : choice?.startMin
+    return at === undefined ? [] : [{ startMin: at, endMin: at + runs.guaranteedMin }]
+  })
+  const minutesServed = servedByNeed(cycle, run(cycle, plan.coldestState, on))[need] ?? 0
   return { servesAll: servesAll(wanted, minutesServed), minutesServed, minutesWanted: minutesWanted(wanted) }
 }
